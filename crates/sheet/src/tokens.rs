@@ -1,0 +1,111 @@
+//! Named inks, strokes and spacings, shared by paper and screen. No other place names a colour.
+
+/// What the drawing stands on.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Ground {
+    /// The window by day.
+    Light,
+    /// The window by night.
+    Dark,
+    /// White paper.
+    Paper,
+}
+
+/// A colour by its role.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+#[allow(missing_docs)] // The words say it.
+pub enum Ink {
+    /// What everything lies on.
+    Background,
+    /// Panels, table heads, boxes.
+    Panel,
+    /// A control at rest; a step off the panel.
+    Raised,
+    /// Text and the main lines.
+    Text,
+    /// Secondary text, rulers.
+    Faint,
+    /// Hairlines, grids, table rules.
+    Rule,
+    /// What is chosen or has the focus.
+    Chosen,
+    /// Earth below the site.
+    Earth,
+    /// Masts, trees, buildings.
+    Support,
+    Wire,
+    Rope,
+    /// Current: the ribbon, its numbers.
+    Current,
+    /// Voltage: the whiskers, their numbers.
+    Voltage,
+    /// First, second, third feed (also told apart by line style and letter).
+    FeedA,
+    FeedB,
+    FeedC,
+    /// Resistance and reactance curves.
+    Resistance,
+    Reactance,
+    /// The transmitter's limit in plots.
+    Limit,
+    /// Verdicts, from best to worst.
+    Works,
+    WorksWithUnit,
+    TooLossy,
+    Overstressed,
+    OutOfRange,
+    /// Cautions and warnings.
+    Caution,
+}
+
+impl Ink {
+    /// sRGB, 8 bits a channel.
+    #[must_use]
+    pub fn rgb(self, ground: Ground) -> [u8; 3] {
+        let (light, dark, paper) = self.hex();
+        let value = match ground {
+            Ground::Light => light,
+            Ground::Dark => dark,
+            Ground::Paper => paper,
+        };
+        [(value >> 16) as u8, (value >> 8) as u8, value as u8]
+    }
+
+    /// Light, dark, paper. Feeds are blue, ochre and green of different lightness, so that they stay apart in grey
+    /// and for colour-blind eyes.
+    fn hex(self) -> (u32, u32, u32) {
+        match self {
+            Self::Background => (0xf7_f5_f0, 0x15_1b_1f, 0xff_ff_ff),
+            Self::Panel => (0xec_e8_df, 0x1e_26_2b, 0xf0_ee_e9),
+            Self::Raised => (0xdf_da_ce, 0x2c_37_3d, 0xe4_e1_da),
+            Self::Text => (0x1c_26_2c, 0xea_e6_dc, 0x00_00_00),
+            Self::Faint => (0x5c_67_6c, 0x9c_a7_aa, 0x4a_4a_4a),
+            Self::Rule => (0xcb_c5_b8, 0x3a_46_4d, 0xa8_a8_a8),
+            Self::Chosen => (0x0f_6b_8f, 0x5c_b8_d6, 0x00_00_00),
+            Self::Earth => (0xd9_cf_b8, 0x33_2e_26, 0xe6_e2_d8),
+            Self::Support => (0x6b_57_42, 0xb4_9d_82, 0x3c_3c_3c),
+            Self::Wire => (0x26_2a_2c, 0xf2_ed_e2, 0x00_00_00),
+            Self::Rope => (0x8a_83_70, 0x8f_8b_7c, 0x70_70_70),
+            Self::Current => (0xb3_48_26, 0xf0_8a_5d, 0x9c_3a_1a),
+            Self::Voltage => (0x5b_45_a8, 0xa9_97_f0, 0x4a_36_92),
+            Self::FeedA => (0x1d_5f_a3, 0x6c_b0_f0, 0x14_4f_8c),
+            Self::FeedB => (0xb0_7a_05, 0xe8_b9_45, 0x9a_6a_00),
+            Self::FeedC => (0x3f_7d_52, 0x86_c8_98, 0x2f_66_40),
+            Self::Resistance => (0x2b_35_3a, 0xe0_db_cf, 0x10_10_10),
+            Self::Reactance => (0x7a_6f_8c, 0xb7_aa_cc, 0x6a_60_7a),
+            Self::Limit => (0xb4_1e_3c, 0xff_7a_90, 0xa0_10_30),
+            Self::Works => (0x24_7a_4d, 0x6c_cf_94, 0x1a_63_3c),
+            Self::WorksWithUnit => (0x2f_74_8a, 0x74_bf_d4, 0x22_5f_74),
+            Self::TooLossy => (0xa8_69_00, 0xe8_ab_4a, 0x8a_55_00),
+            Self::Overstressed => (0xb0_3c_1e, 0xff_8d_66, 0x94_2c_12),
+            Self::OutOfRange => (0xa0_1e_44, 0xff_80_9c, 0x86_12_34),
+            Self::Caution => (0xa8_52_00, 0xff_b2_5c, 0x8a_40_00),
+        }
+    }
+
+    /// The ink of a feed, by its index in the plan.
+    #[must_use]
+    pub fn feed(index: usize) -> Self {
+        [Self::FeedA, Self::FeedB, Self::FeedC][index % 3]
+    }
+}
