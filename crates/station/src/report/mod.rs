@@ -148,6 +148,10 @@ pub struct LinkReport {
     pub peak_v: f64,
     /// Highest RMS current in the link at the set power, A.
     pub rms_a: f64,
+    /// What the link shows toward the transmitter. The ratio of a line stands on its own nominal impedance; that of a
+    /// transformer or a matching unit on what follows: the next line's nominal impedance or the transmitter's
+    /// resistance.
+    pub toward_transmitter: Seen,
 }
 
 /// Which way round the L-network stands.
