@@ -1,6 +1,6 @@
 //! What the views ask for. Drawing returns commands; the document is the one place that changes the plan.
 
-use station::plan::{Band, ConductorChoice, Earth, Feed, LineChoice, Link, Plan, Point, Transmitter};
+use station::plan::{Band, ConductorChoice, Earth, Feed, LineChoice, Link, PathPoint, Plan, Point, Transmitter};
 use station::units::Units;
 
 /// Something a view or a key asks for.
@@ -31,6 +31,8 @@ pub enum Edit {
     WireSpan { wire: usize, start_m: f64, cut_length_m: f64 },
     /// Height of one path point over its support's foot (or over earth for a free point).
     PathHeight { wire: usize, point: usize, height_m: f64 },
+    /// Replace the whole path: points added, moved sideways, made fast to another support, or taken away.
+    PathPoints { wire: usize, path: Vec<PathPoint> },
     Conductor { wire: usize, conductor: ConductorChoice },
     FeedFraction(f64),
     /// Move a support; wires on it follow.

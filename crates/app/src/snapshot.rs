@@ -26,4 +26,6 @@ pub struct Snapshot<'a> {
     pub phase_deg: f64,
     /// Whether it moves.
     pub moving: bool,
+    /// Seconds on screen for one RF cycle.
+    pub period_s: f64,
 }
