@@ -109,3 +109,56 @@ impl Ink {
         [Self::FeedA, Self::FeedB, Self::FeedC][index % 3]
     }
 }
+
+/// How heavy a line is, by its role.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Pen {
+    /// Grids, rules, rims of boxes.
+    Hairline,
+    /// Curves of the second rank: voltage in a thumbnail, what the matching unit makes of it.
+    Fine,
+    /// Curves.
+    Curve,
+    /// What is chosen; the tip of a bar.
+    Bold,
+}
+
+impl Pen {
+    /// Width in points of the screen; a sheet scales it.
+    #[must_use]
+    pub fn width(self) -> f32 {
+        match self {
+            Self::Hairline => 1.0,
+            Self::Fine => 1.2,
+            Self::Curve => 1.7,
+            Self::Bold => 2.5,
+        }
+    }
+}
+
+/// Whether a line is drawn through, so that feeds stay apart without colour.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+#[allow(missing_docs)] // The words say it.
+pub enum Pattern {
+    Solid,
+    Dashed,
+    Dotted,
+}
+
+impl Pattern {
+    /// The pattern of a feed, by its index in the plan.
+    #[must_use]
+    pub fn feed(index: usize) -> Self {
+        [Self::Solid, Self::Dashed, Self::Dotted][index % 3]
+    }
+
+    /// Lengths of dash and gap in points of the screen; `None` for a line drawn through.
+    #[must_use]
+    pub fn dash_and_gap(self) -> Option<(f32, f32)> {
+        match self {
+            Self::Solid => None,
+            Self::Dashed => Some((6.0, 3.5)),
+            Self::Dotted => Some((1.5, 3.0)),
+        }
+    }
+}

@@ -152,6 +152,35 @@ pub fn decibels(value_db: f64) -> String {
     format!("{} dB", fixed(value_db, 2))
 }
 
+/// A frequency range without its unit, in MHz: "7.000–7.200"; one number where the edges are less than 1 Hz apart.
+#[must_use]
+pub fn megahertz_range(low_hz: f64, high_hz: f64) -> String {
+    if (high_hz - low_hz).abs() < 1.0 {
+        return fixed(low_hz / 1e6, 3);
+    }
+    format!("{}–{}", fixed(low_hz / 1e6, 3), fixed(high_hz / 1e6, 3))
+}
+
+/// A width of spectrum in kHz: "200 kHz", "12.5 kHz".
+#[must_use]
+pub fn kilohertz(width_hz: f64) -> String {
+    let width_khz = width_hz / 1e3;
+    let decimals = usize::from((width_khz - width_khz.round()).abs() >= 0.05);
+    format!("{} kHz", fixed(width_khz, decimals))
+}
+
+/// An inductance: "3.21 µH".
+#[must_use]
+pub fn microhenries(inductance_h: f64) -> String {
+    format!("{} µH", short(inductance_h * 1e6))
+}
+
+/// A capacitance: "182 pF".
+#[must_use]
+pub fn picofarads(capacitance_f: f64) -> String {
+    format!("{} pF", short(capacitance_f * 1e12))
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -166,6 +195,12 @@ mod tests {
         assert_eq!(swr(9.96), "10.0");
         assert_eq!(watts(1200.0), "1.20 kW");
         assert_eq!(amperes(0.0354), "35 mA");
+        assert_eq!(megahertz_range(7.0e6, 7.2e6), "7.000–7.200");
+        assert_eq!(megahertz_range(5.0e6, 5.0e6), "5.000");
+        assert_eq!(kilohertz(200e3), "200 kHz");
+        assert_eq!(kilohertz(12.5e3), "12.5 kHz");
+        assert_eq!(microhenries(3.214e-6), "3.21 µH");
+        assert_eq!(picofarads(182.4e-12), "182 pF");
         assert_eq!(Units::Feet.length(20.0), "65.6 ft");
         assert_eq!(Units::Metres.length(20.347), "20.35 m");
     }
