@@ -13,5 +13,7 @@
 
 pub mod conductor;
 pub mod constants;
+pub mod line;
+pub mod network;
 pub mod sinusoid;
 pub mod special;

@@ -1,0 +1,35 @@
+//! Networks between the line and the transmitter: ideal transformer and L-network.
+//!
+//! Like the line, they carry a [`State`] from the load's side to the source's side; phasors are peak.
+
+mod l_network;
+mod l_solution;
+
+pub use l_network::{LNetwork, Parts, Passage, Sense, Setting, Stress};
+pub use l_solution::{LMatch, LProblem, NetworkError, l_network};
+
+use crate::line::State;
+
+/// A transformer without loss, leakage or magnetising current.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct IdealTransformer {
+    /// Impedance on the load's side over impedance on the source's side, greater than zero: 4 for "4:1"
+    /// that brings 200 Ω down to 50 Ω.
+    pub impedance_ratio: f64,
+}
+
+impl IdealTransformer {
+    /// The state on the source's side for a state on the load's side.
+    #[must_use]
+    pub fn toward_source(self, at_load: State) -> State {
+        // n = √ratio turns on the load's side for one on the source's: V_s = V/n, I_s = n·I
+        let turns = self.impedance_ratio.sqrt();
+        State { voltage_v: at_load.voltage_v / turns, current_a: at_load.current_a * turns }
+    }
+
+    /// The state on the load's side for a state on the source's side.
+    #[must_use]
+    pub fn toward_load(self, at_source: State) -> State {
+        Self { impedance_ratio: self.impedance_ratio.recip() }.toward_source(at_source)
+    }
+}
