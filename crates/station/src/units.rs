@@ -6,6 +6,9 @@ use serde::{Deserialize, Serialize};
 /// Metres in one foot (international foot, exact).
 pub const METRES_PER_FOOT: f64 = 0.3048;
 
+/// Metres in half an inch (exact).
+const METRES_PER_HALF_INCH: f64 = METRES_PER_FOOT / 24.0;
+
 /// The units that lengths are shown in.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
 #[allow(missing_docs)] // The words say it.
@@ -52,6 +55,38 @@ impl Units {
             Self::Feet => format!("{} ft", fixed(value, 1)),
         }
     }
+
+    /// A length in metres, rounded to what is read off a tape: a centimetre or half an inch.
+    #[must_use]
+    pub fn on_tape(self, length_m: f64) -> f64 {
+        let step_m = match self {
+            Self::Metres => 0.01,
+            Self::Feet => METRES_PER_HALF_INCH,
+        };
+        (length_m / step_m).round() * step_m
+    }
+
+    /// A length in metres as a tape measure shows it: "20.35 m", "66 ft 9½ in".
+    #[must_use]
+    pub fn tape(self, length_m: f64) -> String {
+        if self == Self::Metres {
+            return self.length(length_m);
+        }
+        let half_inches = (length_m.abs() / METRES_PER_HALF_INCH).round();
+        let feet = (half_inches / 24.0).floor();
+        let rest = half_inches - 24.0 * feet;
+        let inches = match ((rest / 2.0).floor(), rest % 2.0 > 0.5) {
+            (whole, false) => format!("{whole:.0}"),
+            (whole, true) if whole > 0.0 => format!("{whole:.0}½"),
+            _ => "½".to_owned(),
+        };
+        let sign = if length_m < 0.0 && half_inches > 0.0 { "−" } else { "" };
+        match (feet > 0.0, rest > 0.0) {
+            (true, true) => format!("{sign}{feet:.0} ft {inches} in"),
+            (true, false) => format!("{sign}{feet:.0} ft"),
+            (false, _) => format!("{sign}{inches} in"),
+        }
+    }
 }
 
 /// A number with so many decimals, a true minus sign, and no "-0".
@@ -82,7 +117,7 @@ fn group_thousands(text: &str) -> String {
     let mut out = String::new();
     for (index, c) in digits.iter().enumerate() {
         let left = digits.len() - index;
-        if index > 0 && left % 3 == 0 && digits[index - 1].is_ascii_digit() {
+        if index > 0 && left.is_multiple_of(3) && digits[index - 1].is_ascii_digit() {
             out.push('\u{a0}');
         }
         out.push(*c);
@@ -146,6 +181,23 @@ pub fn amperes(current_a: f64) -> String {
     }
 }
 
+/// An inductance: "12.3 µH", "0.420 µH".
+#[must_use]
+pub fn henries(inductance_h: f64) -> String {
+    format!("{} µH", short(inductance_h * 1e6))
+}
+
+/// A capacitance: "412 pF", "1.24 nF".
+#[must_use]
+pub fn farads(capacitance_f: f64) -> String {
+    let picofarads = capacitance_f * 1e12;
+    if picofarads.abs() >= 999.5 {
+        format!("{} nF", short(picofarads / 1e3))
+    } else {
+        format!("{} pF", short(picofarads))
+    }
+}
+
 /// Decibels: "0.35 dB".
 #[must_use]
 pub fn decibels(value_db: f64) -> String {
@@ -203,5 +255,22 @@ mod tests {
         assert_eq!(picofarads(182.4e-12), "182 pF");
         assert_eq!(Units::Feet.length(20.0), "65.6 ft");
         assert_eq!(Units::Metres.length(20.347), "20.35 m");
+        assert_eq!(henries(12.34e-6), "12.3 µH");
+        assert_eq!(farads(412.4e-12), "412 pF");
+        assert_eq!(farads(1.2399e-9), "1.24 nF");
+    }
+
+    #[test]
+    fn lengths_read_as_on_a_tape() {
+        assert_eq!(Units::Metres.tape(20.347), "20.35 m");
+        assert_eq!(Units::Feet.tape(20.3581), "66 ft 9½ in");
+        assert_eq!(Units::Feet.tape(3.048), "10 ft");
+        assert_eq!(Units::Feet.tape(3.047), "10 ft");
+        assert_eq!(Units::Feet.tape(0.0127), "½ in");
+        assert_eq!(Units::Feet.tape(0.1524), "6 in");
+        assert_eq!(Units::Feet.tape(0.0), "0 in");
+        assert_eq!(Units::Feet.tape(-0.3048), "−1 ft");
+        assert!((Units::Feet.on_tape(20.35) - 20.3454).abs() < 1e-9);
+        assert!((Units::Metres.on_tape(20.347) - 20.35).abs() < 1e-9);
     }
 }

@@ -7,7 +7,9 @@ mod feed;
 mod site;
 mod wire;
 
-pub use feed::{Feed, LineChoice, LineConstruction, LineData, LinePiece, Link, LossLaw, MatchingUnit, Transformer};
+pub use feed::{
+    Feed, LineChoice, LineConstruction, LineData, LinePiece, Link, LossLaw, MatchingUnit, Transformer,
+};
 pub use site::{Earth, Point, Site, Soil, Support, SupportKind};
 pub use wire::{ConductorChoice, ConductorData, Feedpoint, Insulation, PathPoint, Wire};
 

@@ -2,11 +2,14 @@
 //!
 //! Voltages and currents are **peak** values unless a name says `rms`; power is average power of a steady carrier.
 
+mod json;
 mod verdict;
 
+pub use json::json;
 pub use verdict::{Verdict, VerdictKind};
 
 use num_complex::Complex64;
+use physics::network::NetworkError;
 
 use crate::hang::Hung;
 
@@ -38,6 +41,8 @@ pub struct Report {
     pub hung: Hung,
     /// Names of the feeds, in the plan's order.
     pub feed_names: Vec<String>,
+    /// Names of each feed's links, from the feedpoint to the transmitter.
+    pub link_names: Vec<Vec<String>>,
     /// One entry per band, in the plan's order.
     pub bands: Vec<BandReport>,
     /// What the user should know, most important first.
@@ -131,8 +136,11 @@ pub struct FeedReport {
     pub links: Vec<LinkReport>,
     /// Loss of all links together, dB; mismatch at the transmitter is not a loss.
     pub loss_db: f64,
-    /// Watts that reach the wire when the transmitter gives its set power into this feed, W.
+    /// Watts that reach the wire, W: the set power less the loss of the links. Where the transmitter's limit is
+    /// exceeded, it is taken to give what a generator of its resistance would give, (1 − |Γ|²) of the set power.
     pub watts_to_wire: f64,
+    /// Why the matching unit cannot bring this frequency in; its text is a sentence.
+    pub shortfall: Option<NetworkError>,
     /// What this frequency needs.
     pub kind: VerdictKind,
 }

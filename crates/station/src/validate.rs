@@ -1,0 +1,367 @@
+//! Validation: is every value of a plan possible? The first one that is not gives one sentence with its field path,
+//! the value, and what would be accepted.
+
+use std::collections::HashSet;
+use std::ops::RangeInclusive;
+
+use thiserror::Error;
+
+use crate::catalogue::{self, CatalogueError};
+use crate::hang::{self, HangError};
+use crate::plan::{
+    Band, BandRange, ConductorChoice, ConductorData, Earth, Feed, LineChoice, LineConstruction, LineData,
+    Link, MatchingUnit, PathPoint, Plan, Point, Site, Wire,
+};
+
+/// A value that a plan cannot have.
+#[derive(Clone, Debug, PartialEq, Error)]
+pub enum PlanError {
+    /// A number outside its range, or none at all.
+    #[error("{field}: {value}{unit} is not possible; accepted: {low} to {high}{unit}", unit = spaced(unit))]
+    OutOfRange {
+        /// Path of the field, for instance `wires[0].cut_length_m`.
+        field: String,
+        /// The value, as text ("not a number" for NaN).
+        value: String,
+        /// Lowest accepted.
+        low: f64,
+        /// Highest accepted.
+        high: f64,
+        /// The unit; may be empty.
+        unit: &'static str,
+    },
+    /// Two values that contradict each other.
+    #[error("{field}: {value} is not possible; accepted: {accepted}")]
+    Contradiction {
+        /// Path of the field.
+        field: String,
+        /// The value, as text.
+        value: String,
+        /// What would be accepted, in words.
+        accepted: String,
+    },
+    /// Too few or too many entries in a list.
+    #[error("{field}: {count} entries; accepted: {least} to {most}")]
+    Count {
+        /// Path of the list.
+        field: String,
+        /// How many there are.
+        count: usize,
+        /// Fewest accepted.
+        least: usize,
+        /// Most accepted.
+        most: usize,
+    },
+    /// Two entries that need different names.
+    #[error("{field}: the name \"{name}\" stands twice; accepted: a name of its own for each")]
+    NameTwice {
+        /// Path of the second one.
+        field: String,
+        /// The name.
+        name: String,
+    },
+    /// A text that is too long to print.
+    #[error("{field}: {length} characters; accepted: up to {most}")]
+    TooLong {
+        /// Path of the text.
+        field: String,
+        /// Its length.
+        length: usize,
+        /// Most accepted.
+        most: usize,
+    },
+    /// Not in the catalogue.
+    #[error("{field}: {source}")]
+    Catalogue {
+        /// Path of the field.
+        field: String,
+        /// What the catalogue says.
+        source: CatalogueError,
+    },
+    /// It cannot be hung.
+    #[error(transparent)]
+    Hang(#[from] HangError),
+}
+
+fn spaced(unit: &str) -> String {
+    if unit.is_empty() { String::new() } else { format!(" {unit}") }
+}
+
+type Checked = Result<(), PlanError>;
+
+/// Lowest and highest frequency that the program plans for, Hz.
+pub const FREQUENCIES_HZ: RangeInclusive<f64> = 1.8e6..=54.0e6;
+/// Most bands, wires, feeds and so on in one plan: far more than a site can hold, few enough to stay quick.
+const MOST_BANDS: usize = 64;
+const MOST_CHANNELS: usize = 200;
+const MOST_WIRES: usize = 16;
+const MOST_POINTS: usize = 32;
+const MOST_SUPPORTS: usize = 64;
+const MOST_FEEDS: usize = 6;
+const MOST_LINKS: usize = 12;
+const COORDINATE_M: RangeInclusive<f64> = -5_000.0..=5_000.0;
+const HEIGHT_M: RangeInclusive<f64> = 0.0..=300.0;
+
+/// Checks every value of a plan and that it can be hung.
+///
+/// # Errors
+/// The first value that is not possible.
+pub fn check(plan: &Plan) -> Checked {
+    text("name", &plan.name, 80)?;
+    text("purpose", &plan.purpose, 400)?;
+    text("call_sign", &plan.call_sign, 40)?;
+    count("wires", plan.wires.len(), 1, MOST_WIRES)?;
+    count("feeds", plan.feeds.len(), 1, MOST_FEEDS)?;
+    count("bands", plan.bands.len(), 1, MOST_BANDS)?;
+    check_site(&plan.site)?;
+    for (index, wire) in plan.wires.iter().enumerate() {
+        check_wire(&format!("wires[{index}]"), wire)?;
+    }
+    number("feedpoint.fraction", plan.feedpoint.fraction, 0.005..=0.995, "of the wire")?;
+    number("feedpoint.gap_m", plan.feedpoint.gap_m, 0.001..=1.0, "m")?;
+    for (index, feed) in plan.feeds.iter().enumerate() {
+        check_feed(&format!("feeds[{index}]"), feed)?;
+    }
+    for (index, band) in plan.bands.iter().enumerate() {
+        check_band(&format!("bands[{index}]"), band)?;
+    }
+    number("transmitter.power_w", plan.transmitter.power_w, 0.001..=100_000.0, "W")?;
+    number("transmitter.resistance_ohm", plan.transmitter.resistance_ohm, 5.0..=1_000.0, "Ω")?;
+    number("transmitter.swr_limit", plan.transmitter.swr_limit, 1.05..=20.0, "")?;
+    number("least_share_to_wire", plan.least_share_to_wire, 0.0..=0.99, "")?;
+    hang::hang(plan)?;
+    Ok(())
+}
+
+fn check_site(site: &Site) -> Checked {
+    count("site.supports", site.supports.len(), 0, MOST_SUPPORTS)?;
+    let mut names = HashSet::new();
+    for (index, support) in site.supports.iter().enumerate() {
+        let field = format!("site.supports[{index}]");
+        text(&format!("{field}.name"), &support.name, 60)?;
+        if !names.insert(support.name.as_str()) {
+            return Err(PlanError::NameTwice { field: format!("{field}.name"), name: support.name.clone() });
+        }
+        point(&format!("{field}.foot"), support.foot)?;
+        number(&format!("{field}.height_m"), support.height_m, 0.1..=300.0, "m")?;
+    }
+    match &site.earth {
+        Earth::NoEarth | Earth::Mirror => {}
+        Earth::Catalogue(id) => {
+            catalogue::soil(id)
+                .map_err(|source| PlanError::Catalogue { field: "site.earth".to_owned(), source })?;
+        }
+        Earth::Own(soil) => {
+            number("site.earth.relative_permittivity", soil.relative_permittivity, 1.0..=100.0, "")?;
+            number("site.earth.conductivity_s_per_m", soil.conductivity_s_per_m, 0.0..=10.0, "S/m")?;
+        }
+    }
+    point("site.entrance", site.entrance)
+}
+
+fn check_wire(field: &str, wire: &Wire) -> Checked {
+    text(&format!("{field}.name"), &wire.name, 60)?;
+    count(&format!("{field}.path"), wire.path.len(), 2, MOST_POINTS)?;
+    for (index, place) in wire.path.iter().enumerate() {
+        match place {
+            PathPoint::Free(at) => point(&format!("{field}.path[{index}]"), *at)?,
+            PathPoint::OnSupport { height_m, .. } => {
+                number(&format!("{field}.path[{index}].height_m"), *height_m, HEIGHT_M, "m")?;
+            }
+        }
+    }
+    number(&format!("{field}.start_m"), wire.start_m, -1_000.0..=1_000.0, "m")?;
+    number(&format!("{field}.cut_length_m"), wire.cut_length_m, 0.5..=1_000.0, "m")?;
+    match &wire.conductor {
+        ConductorChoice::Own(data) => check_conductor(&format!("{field}.conductor"), data),
+        ConductorChoice::Catalogue(_) => catalogue::conductor(&wire.conductor)
+            .map(|_| ())
+            .map_err(|source| PlanError::Catalogue { field: format!("{field}.conductor"), source }),
+    }
+}
+
+fn check_conductor(field: &str, data: &ConductorData) -> Checked {
+    text(&format!("{field}.name"), &data.name, 80)?;
+    number(&format!("{field}.diameter_m"), data.diameter_m, 1e-4..=0.05, "m")?;
+    number(&format!("{field}.conductivity_s_per_m"), data.conductivity_s_per_m, 1e5..=1e8, "S/m")?;
+    number(&format!("{field}.stranding_factor"), data.stranding_factor, 1.0..=10.0, "")?;
+    if let Some(insulation) = &data.insulation {
+        let outer = format!("{field}.insulation.outer_diameter_m");
+        number(&outer, insulation.outer_diameter_m, 1e-4..=0.1, "m")?;
+        if insulation.outer_diameter_m <= data.diameter_m {
+            return Err(PlanError::Contradiction {
+                field: outer,
+                value: format!("{} m", insulation.outer_diameter_m),
+                accepted: format!("more than the metal's {} m", data.diameter_m),
+            });
+        }
+        let permittivity = insulation.relative_permittivity;
+        number(&format!("{field}.insulation.relative_permittivity"), permittivity, 1.0..=20.0, "")?;
+    }
+    Ok(())
+}
+
+fn check_feed(field: &str, feed: &Feed) -> Checked {
+    text(&format!("{field}.name"), &feed.name, 60)?;
+    count(&format!("{field}.links"), feed.links.len(), 0, MOST_LINKS)?;
+    let mut units = 0;
+    for (index, link) in feed.links.iter().enumerate() {
+        let at = format!("{field}.links[{index}]");
+        match link {
+            Link::Transformer(t) => {
+                number(&format!("{at}.impedance_ratio"), t.impedance_ratio, 0.01..=100.0, "")?;
+            }
+            Link::Line(piece) => {
+                number(&format!("{at}.length_m"), piece.length_m, 0.05..=2_000.0, "m")?;
+                match &piece.line {
+                    LineChoice::Own(data) => check_line(&format!("{at}.line"), data)?,
+                    LineChoice::Catalogue(_) => {
+                        catalogue::line(&piece.line)
+                            .map_err(|source| PlanError::Catalogue { field: format!("{at}.line"), source })?;
+                    }
+                }
+            }
+            Link::MatchingUnit(unit) => {
+                units += 1;
+                check_unit(&at, unit)?;
+            }
+        }
+    }
+    if units > 1 {
+        return Err(PlanError::Contradiction {
+            field: format!("{field}.links"),
+            value: format!("{units} matching units"),
+            accepted: "at most one in a feed".to_owned(),
+        });
+    }
+    Ok(())
+}
+
+fn check_unit(field: &str, unit: &MatchingUnit) -> Checked {
+    number(&format!("{field}.inductance_max_h"), unit.inductance_max_h, 1e-8..=1e-3, "H")?;
+    number(&format!("{field}.capacitance_max_f"), unit.capacitance_max_f, 1e-12..=1e-6, "F")?;
+    number(&format!("{field}.coil_q"), unit.coil_q, 5.0..=10_000.0, "")?;
+    number(&format!("{field}.capacitor_q"), unit.capacitor_q, 5.0..=100_000.0, "")?;
+    if let Some(rating) = unit.rating_peak_v {
+        number(&format!("{field}.rating_peak_v"), rating, 10.0..=100_000.0, "V")?;
+    }
+    Ok(())
+}
+
+fn check_line(field: &str, data: &LineData) -> Checked {
+    text(&format!("{field}.name"), &data.name, 80)?;
+    if let Some(rating) = data.rating_peak_v {
+        number(&format!("{field}.rating_peak_v"), rating, 10.0..=1e6, "V")?;
+    }
+    let at = |name: &str| format!("{field}.construction.{name}");
+    match data.construction {
+        LineConstruction::Published { z0_ohm, velocity_factor, loss } => {
+            number(&at("z0_ohm"), z0_ohm, 5.0..=2_000.0, "Ω")?;
+            number(&at("velocity_factor"), velocity_factor, 0.1..=1.0, "")?;
+            number(&at("loss.k1_db_per_100m"), loss.k1_db_per_100m, 0.0..=100.0, "dB")?;
+            number(&at("loss.k2_db_per_100m"), loss.k2_db_per_100m, 0.0..=20.0, "dB")
+        }
+        LineConstruction::TwoWire {
+            wire_diameter_m,
+            spacing_m,
+            conductivity_s_per_m,
+            velocity_factor,
+            loss_tangent,
+        } => {
+            number(&at("wire_diameter_m"), wire_diameter_m, 1e-4..=0.05, "m")?;
+            number(&at("spacing_m"), spacing_m, 1e-4..=2.0, "m")?;
+            exceeds(&at("spacing_m"), spacing_m, 1.05 * wire_diameter_m, "1.05 times the wires' diameter")?;
+            number(&at("conductivity_s_per_m"), conductivity_s_per_m, 1e5..=1e8, "S/m")?;
+            number(&at("velocity_factor"), velocity_factor, 0.1..=1.0, "")?;
+            number(&at("loss_tangent"), loss_tangent, 0.0..=0.1, "")
+        }
+        LineConstruction::Coaxial {
+            inner_diameter_m,
+            outer_diameter_m,
+            conductivity_s_per_m,
+            relative_permittivity,
+            loss_tangent,
+        } => {
+            number(&at("inner_diameter_m"), inner_diameter_m, 1e-4..=0.2, "m")?;
+            number(&at("outer_diameter_m"), outer_diameter_m, 1e-4..=0.5, "m")?;
+            exceeds(
+                &at("outer_diameter_m"),
+                outer_diameter_m,
+                1.05 * inner_diameter_m,
+                "1.05 times the inner one",
+            )?;
+            number(&at("conductivity_s_per_m"), conductivity_s_per_m, 1e5..=1e8, "S/m")?;
+            number(&at("relative_permittivity"), relative_permittivity, 1.0..=20.0, "")?;
+            number(&at("loss_tangent"), loss_tangent, 0.0..=0.1, "")
+        }
+    }
+}
+
+fn exceeds(field: &str, value_m: f64, limit_m: f64, what: &str) -> Checked {
+    if value_m > limit_m {
+        return Ok(());
+    }
+    Err(PlanError::Contradiction {
+        field: field.to_owned(),
+        value: format!("{value_m} m"),
+        accepted: format!("more than {limit_m:.4} m, {what}"),
+    })
+}
+
+fn check_band(field: &str, band: &Band) -> Checked {
+    text(&format!("{field}.name"), &band.name, 60)?;
+    match &band.range {
+        BandRange::Span { low_hz, high_hz } => {
+            number(&format!("{field}.range.low_hz"), *low_hz, FREQUENCIES_HZ, "Hz")?;
+            number(&format!("{field}.range.high_hz"), *high_hz, FREQUENCIES_HZ, "Hz")?;
+            if low_hz >= high_hz {
+                return Err(PlanError::Contradiction {
+                    field: format!("{field}.range"),
+                    value: format!("low_hz {low_hz} with high_hz {high_hz}"),
+                    accepted: "low_hz below high_hz".to_owned(),
+                });
+            }
+        }
+        BandRange::Channels { frequencies_hz } => {
+            count(&format!("{field}.range.frequencies_hz"), frequencies_hz.len(), 1, MOST_CHANNELS)?;
+            for (index, frequency_hz) in frequencies_hz.iter().enumerate() {
+                number(
+                    &format!("{field}.range.frequencies_hz[{index}]"),
+                    *frequency_hz,
+                    FREQUENCIES_HZ,
+                    "Hz",
+                )?;
+            }
+        }
+    }
+    Ok(())
+}
+
+fn point(field: &str, at: Point) -> Checked {
+    number(&format!("{field}.x_m"), at.x_m, COORDINATE_M, "m")?;
+    number(&format!("{field}.y_m"), at.y_m, COORDINATE_M, "m")?;
+    number(&format!("{field}.z_m"), at.z_m, -50.0..=500.0, "m")
+}
+
+fn text(field: &str, value: &str, most: usize) -> Checked {
+    let length = value.chars().count();
+    if length <= most { Ok(()) } else { Err(PlanError::TooLong { field: field.to_owned(), length, most }) }
+}
+
+fn count(field: &str, count: usize, least: usize, most: usize) -> Checked {
+    if (least..=most).contains(&count) {
+        Ok(())
+    } else {
+        Err(PlanError::Count { field: field.to_owned(), count, least, most })
+    }
+}
+
+/// NaN is in no range, so it is refused here too.
+fn number(field: &str, value: f64, accepted: RangeInclusive<f64>, unit: &'static str) -> Checked {
+    if accepted.contains(&value) {
+        return Ok(());
+    }
+    let value = if value.is_nan() { "not a number".to_owned() } else { value.to_string() };
+    let (low, high) = (*accepted.start(), *accepted.end());
+    Err(PlanError::OutOfRange { field: field.to_owned(), value, low, high, unit })
+}
