@@ -161,7 +161,7 @@ struct Candidate {
     /// Susceptance of the capacitor, S.
     b_s: f64,
     efficiency: f64,
-    /// |Z| between coil and capacitor as the capacitor's or coil's neighbour sees it: V_C/I_L, Ω.
+    /// Voltage across the capacitor over the current in the coil, Ω.
     volts_per_ampere: f64,
 }
 
@@ -228,22 +228,19 @@ fn capacitor_across_load(problem: &LProblem) -> [Option<Candidate>; 2] {
     let r = problem.target_ohm;
     let (q, d) = (problem.parts.coil_q.recip(), problem.parts.capacitor_q.recip());
     let y = problem.load_ohm.inv();
-    // Y′ = G′ + jB′ with G′ = G + d·B, B′ = B_load + B; 1/Y′ + X·(q + j) = R, so X = B′/|Y′|² and
-    // R·|Y′|² − G′ − q·B′ = 0, a quadratic in B:
-    let solutions = roots(Quadratic {
-        a: r * (1.0 + d * d),
-        b: 2.0 * r * (y.re * d + y.im) - d - q,
-        c: difference(r * y.norm_sqr(), y.re + q * y.im),
-    });
-    solutions.map(|b| {
-        let b_s = b?;
-        let y_after = Complex64::new(y.re + d * b_s, y.im + b_s);
+    // Y′ = G′ + jB′ with B′ = B_load + B and G′ = G + d·B = g + d·B′; 1/Y′ + X·(q + j) = R asks for
+    // X = B′/|Y′|² and R·|Y′|² = G′ + q·B′, a quadratic in B′:
+    let g = y.re - d * y.im;
+    let solutions =
+        roots(Quadratic { a: r * (1.0 + d * d), b: 2.0 * r * g * d - d - q, c: g * difference(r * g, 1.0) });
+    solutions.map(|b_after| {
+        let y_after = Complex64::new(g + d * b_after?, b_after?);
         let size2 = y_after.norm_sqr();
         // P_load/P_in = ½|V|²·G/(½|I|²·R) with |V|² = |I|²/|Y′|²
         Some(Candidate {
             sense: Sense::CapacitorAcrossLoad,
-            x_ohm: not_negative(y_after.im / size2, r)?,
-            b_s,
+            x_ohm: y_after.im / size2,
+            b_s: not_negative(y_after.im - y.im, y.im.abs())?,
             efficiency: y.re / (r * size2),
             volts_per_ampere: size2.sqrt().recip(),
         })
@@ -255,22 +252,19 @@ fn capacitor_across_source(problem: &LProblem) -> [Option<Candidate>; 2] {
     let r = problem.target_ohm;
     let (q, d) = (problem.parts.coil_q.recip(), problem.parts.capacitor_q.recip());
     let z = problem.load_ohm;
-    // The dual: Z′ = R′ + jX′ with R′ = R_load + q·X, X′ = X_load + X; 1/Z′ + B·(d + j) = 1/R, so
-    // B = X′/|Z′|² and |Z′|²/R − R′ − d·X′ = 0:
-    let solutions = roots(Quadratic {
-        a: (1.0 + q * q) / r,
-        b: 2.0 * (z.re * q + z.im) / r - q - d,
-        c: difference(z.norm_sqr() / r, z.re + d * z.im),
-    });
-    solutions.map(|x| {
-        let x_ohm = x?;
-        let z_after = Complex64::new(z.re + q * x_ohm, z.im + x_ohm);
+    // The dual: Z′ = R′ + jX′ with X′ = X_load + X and R′ = R_load + q·X = ρ + q·X′; 1/Z′ + B·(d + j) = 1/R
+    // asks for B = X′/|Z′|² and |Z′|² = R·(R′ + d·X′):
+    let rho = z.re - q * z.im;
+    let solutions =
+        roots(Quadratic { a: 1.0 + q * q, b: 2.0 * rho * q - r * (q + d), c: rho * difference(rho, r) });
+    solutions.map(|x_after| {
+        let z_after = Complex64::new(rho + q * x_after?, x_after?);
         let size2 = z_after.norm_sqr();
         // P_load/P_in = ½|I|²·R_load/(½|V|²/R) with |I|² = |V|²/|Z′|²
         Some(Candidate {
             sense: Sense::CapacitorAcrossSource,
-            x_ohm,
-            b_s: not_negative(z_after.im / size2, r.recip())?,
+            x_ohm: not_negative(z_after.im - z.im, z.im.abs())?,
+            b_s: z_after.im / size2,
             efficiency: z.re * r / size2,
             volts_per_ampere: size2.sqrt(),
         })
@@ -280,7 +274,7 @@ fn capacitor_across_source(problem: &LProblem) -> [Option<Candidate>; 2] {
 /// p − m, with a difference of a few roundings taken as zero: a load that matches already has such a root.
 fn difference(p: f64, m: f64) -> f64 {
     let difference = p - m;
-    if difference.abs() <= 4.0 * f64::EPSILON * (p.abs() + m.abs()) { 0.0 } else { difference }
+    if difference.abs() <= 4.0 * f64::EPSILON * m { 0.0 } else { difference }
 }
 
 /// a·x² + b·x + c.
