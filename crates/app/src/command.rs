@@ -37,6 +37,7 @@ pub enum Edit {
     FeedFraction(f64),
     /// Move a support; wires on it follow.
     SupportFoot { support: usize, foot: Point },
+    /// Height of a support. What is made fast at its top (within 5 cm) follows the top; nothing is left above it.
     SupportHeight { support: usize, height_m: f64 },
     Earth(Earth),
     Entrance(Point),
@@ -52,6 +53,8 @@ pub enum Edit {
     Transmitter(Transmitter),
     Bands(Vec<Band>),
     Name(String),
+    Purpose(String),
+    CallSign(String),
     /// Replace everything (open a file, paste).
     Whole(Box<Plan>),
 }
@@ -67,6 +70,7 @@ pub enum Show {
     Theme(Theme),
     /// The RF cycle of the standing wave.
     Motion(Motion),
+    Paper(Paper),
 }
 
 /// The views, by the names on their tabs.
@@ -87,6 +91,15 @@ pub enum Theme {
     Desktop,
     Light,
     Dark,
+}
+
+/// The paper of the sheet.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, serde::Serialize, serde::Deserialize)]
+#[allow(missing_docs)] // The words say it.
+pub enum Paper {
+    #[default]
+    A4,
+    Letter,
 }
 
 /// How the standing wave moves.

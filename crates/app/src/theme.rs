@@ -20,6 +20,9 @@ const CORNER: CornerRadius = CornerRadius::same(4);
 /// The share of an ink in a wash behind text.
 const WASH: f32 = 0.14;
 
+const REGULAR: &str = "sheet regular";
+const BOLD: &str = "sheet bold";
+
 /// The colour of an ink on a ground.
 #[must_use]
 pub fn color(ink: Ink, ground: Ground) -> Color32 {
@@ -64,14 +67,24 @@ pub fn choose(ctx: &egui::Context, theme: Theme) {
     }
 }
 
-/// The built-in text font, with the fixed-width font behind it for arrows and primes.
+/// The sheet's two fonts, so that screen and paper read alike and every sign of the trade (Ω, λ, ±, →) is there.
 fn fonts() -> FontDefinitions {
     let mut fonts = FontDefinitions::default();
-    if let Some(family) = fonts.families.get_mut(&FontFamily::Proportional) {
-        family.push("Hack".to_owned());
+    for (name, bytes) in [(REGULAR, sheet::fonts::REGULAR), (BOLD, sheet::fonts::BOLD)] {
+        fonts.font_data.insert(name.to_owned(), Arc::new(FontData::from_static(bytes)));
     }
-    let _: &std::collections::BTreeMap<String, Arc<FontData>> = &fonts.font_data;
+    fonts.families.entry(FontFamily::Proportional).or_default().insert(0, REGULAR.to_owned());
+    fonts.families.insert(bold(), vec![BOLD.to_owned(), REGULAR.to_owned()]);
+    if let Some(family) = fonts.families.get_mut(&FontFamily::Monospace) {
+        family.push(REGULAR.to_owned());
+    }
     fonts
+}
+
+/// The family of bold text.
+#[must_use]
+pub fn bold() -> FontFamily {
+    FontFamily::Name("bold".into())
 }
 
 /// Spacing, text sizes and colours on one ground.
@@ -79,7 +92,7 @@ fn style(ground: Ground) -> Style {
     let theme = if ground == Ground::Dark { EguiTheme::Dark } else { EguiTheme::Light };
     let mut style = theme.default_style();
     style.text_styles = [
-        (TextStyle::Heading, FontId::proportional(17.0)),
+        (TextStyle::Heading, FontId::new(16.0, bold())),
         (TextStyle::Body, FontId::proportional(13.5)),
         (TextStyle::Button, FontId::proportional(13.5)),
         (TextStyle::Small, FontId::proportional(11.5)),

@@ -1,0 +1,171 @@
+//! The bars over and under the views.
+
+use eframe::egui::{self, Align, Layout, RichText, Ui};
+use sheet::tokens::Ink;
+use station::units::Units;
+
+use super::Wirewright;
+use crate::command::{Command, Desk, Show, Theme, View};
+use crate::explain::{self, Explain as _};
+use crate::{keys, theme};
+
+const TOP_HEIGHT: f32 = 40.0;
+const STATUS_HEIGHT: f32 = 28.0;
+
+impl Wirewright {
+    /// File menu, name, tabs, undo and redo.
+    pub(super) fn top_bar(&self, ui: &mut Ui, out: &mut Vec<Command>) {
+        egui::Panel::top("top bar").exact_size(TOP_HEIGHT).resizable(false).frame(bar(ui)).show(ui, |ui| {
+            ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
+                self.file_menu(ui, out);
+                ui.add_space(6.0);
+                self.name(ui);
+                ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
+                    self.steps(ui, out);
+                    ui.add_space(18.0);
+                    self.tabs(ui, out);
+                });
+            });
+        });
+    }
+
+    fn file_menu(&self, ui: &mut Ui, out: &mut Vec<Command>) {
+        let entry = |ui: &mut Ui, words: &str, sentence: &str, desk: Desk| -> Option<Command> {
+            let command = Command::Desk(desk);
+            let keys = keys::of(ui.ctx(), &command, &self.looks);
+            let clicked = ui.add(egui::Button::new(words).shortcut_text(keys)).explain(sentence).clicked();
+            clicked.then_some(command)
+        };
+        ui.menu_button("File", |ui| {
+            ui.set_min_width(220.0);
+            out.extend(entry(ui, "New", "A small plan to begin with", Desk::NewPlan));
+            out.extend(entry(ui, "Open…", "Another plan from a file", Desk::Open));
+            ui.menu_button("Recent files", |ui| {
+                let recent = &self.desk.settings().recent;
+                if recent.is_empty() {
+                    ui.label("none yet");
+                }
+                for path in recent {
+                    let name = path.file_name().unwrap_or_default().to_string_lossy();
+                    if ui.button(name).explain(path.display().to_string()).clicked() {
+                        out.push(Command::Desk(Desk::OpenPath(path.clone())));
+                    }
+                }
+            });
+            ui.separator();
+            out.extend(entry(ui, "Save", "Writes the plan to its file", Desk::Save));
+            out.extend(entry(ui, "Save as…", "Writes the plan to another file", Desk::SaveAs));
+            out.extend(entry(ui, "Save sheet…", "Writes the page for the crew as PDF", Desk::SaveSheet));
+            ui.separator();
+            out.extend(entry(ui, "Commands by key", "Every command that has a key", Desk::Help));
+            out.extend(entry(ui, "Quit", "Closes the window", Desk::Quit));
+        });
+    }
+
+    fn name(&self, ui: &mut Ui) {
+        let unsaved = self.document.is_unsaved();
+        let star = if unsaved { " *" } else { "" };
+        let name = RichText::new(format!("{}{star}", self.document.plan().name)).heading();
+        let file = match self.document.path() {
+            Some(path) => format!("{}", path.display()),
+            None => "not in a file yet".to_owned(),
+        };
+        let state = if unsaved { "; with changes that are not saved" } else { "" };
+        ui.add(egui::Label::new(name).truncate()).explain(format!("{file}{state}"));
+    }
+
+    /// From right to left, because the bar is filled from its right end.
+    fn tabs(&self, ui: &mut Ui, out: &mut Vec<Command>) {
+        for (view, words, sentence) in [
+            (View::Sheet, "Sheet", "The page for the crew, as it will print"),
+            (View::Band, "Band", "The chosen band in depth: impedance, SWR, the feed line"),
+            (View::Yard, "Yard", "The site to scale, the standing wave, and a lane for each band"),
+        ] {
+            let command = Command::Show(Show::View(view));
+            let keys = keys::of(ui.ctx(), &command, &self.looks);
+            let tab = ui.selectable_label(self.looks.view == view, RichText::new(words).size(14.5));
+            if tab.explain(format!("{sentence} ({keys})")).clicked() {
+                out.push(command);
+            }
+        }
+    }
+
+    fn steps(&self, ui: &mut Ui, out: &mut Vec<Command>) {
+        for (command, words, possible) in [
+            (Command::Redo, "Redo", self.document.can_redo()),
+            (Command::Undo, "Undo", self.document.can_undo()),
+        ] {
+            let keys = keys::of(ui.ctx(), &command, &self.looks);
+            let button = ui.add_enabled(possible, egui::Button::new(words));
+            if button.explain(format!("{words} one step ({keys})")).clicked() {
+                out.push(command);
+            }
+        }
+    }
+
+    /// Model and time, what is under the pointer, units, light or dark.
+    pub(super) fn status_bar(&self, ui: &mut Ui, out: &mut Vec<Command>) {
+        let under_pointer = explain::take(ui.ctx());
+        egui::Panel::bottom("status").exact_size(STATUS_HEIGHT).resizable(false).frame(bar(ui)).show(ui, |ui| {
+            ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
+                self.theme_menu(ui, out);
+                self.units(ui, out);
+                ui.separator();
+                ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
+                    self.model(ui);
+                    ui.separator();
+                    let sentence = self.stop.as_deref().unwrap_or(&under_pointer);
+                    ui.add(egui::Label::new(RichText::new(sentence).small()).truncate());
+                });
+            });
+        });
+    }
+
+    fn model(&self, ui: &mut Ui) {
+        let ground = theme::ground_of(ui.visuals());
+        let (words, ink, sentence) = match (self.answers.fault(), self.answers.report(&self.document)) {
+            (Some(fault), _) => ("no answer".to_owned(), Ink::OutOfRange, fault.to_owned()),
+            (None, None) => ("computing…".to_owned(), Ink::Faint, "The first numbers are on their way".to_owned()),
+            (None, Some(report)) => {
+                let milliseconds = self.answers.took().as_secs_f64() * 1e3;
+                let time = station::units::short(milliseconds);
+                let words = format!("{}, {time} ms", report.model.name());
+                let sentence = format!("The model that made the numbers, and how long all bands took: {words}");
+                (words, Ink::Faint, sentence)
+            }
+        };
+        ui.label(RichText::new(words).small().color(theme::color(ink, ground))).explain(sentence);
+    }
+
+    fn units(&self, ui: &mut Ui, out: &mut Vec<Command>) {
+        for (units, sentence) in [(Units::Feet, "Lengths in feet (M)"), (Units::Metres, "Lengths in metres (M)")] {
+            let button = ui.selectable_label(self.looks.units == units, RichText::new(units.symbol()).small());
+            if button.explain(sentence).clicked() {
+                out.push(Command::Show(Show::Units(units)));
+            }
+        }
+    }
+
+    fn theme_menu(&self, ui: &mut Ui, out: &mut Vec<Command>) {
+        let choices = [
+            (Theme::Desktop, "Light or dark as the desktop"),
+            (Theme::Light, "Light"),
+            (Theme::Dark, "Dark"),
+        ];
+        let menu = ui.menu_button(RichText::new("Look").small(), |ui| {
+            for (theme, words) in choices {
+                if ui.radio(self.looks.theme == theme, words).clicked() {
+                    out.push(Command::Show(Show::Theme(theme)));
+                    ui.close();
+                }
+            }
+        });
+        let _ = menu.response.explain("Light or dark");
+    }
+}
+
+/// The frame of a bar.
+fn bar(ui: &Ui) -> egui::Frame {
+    let ground = theme::ground_of(ui.visuals());
+    egui::Frame::new().fill(theme::color(Ink::Panel, ground)).inner_margin(egui::Margin::symmetric(10, 0))
+}

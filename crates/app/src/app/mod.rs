@@ -1,0 +1,213 @@
+//! The window: it polls the worker and the desk, paints the views, and follows the commands that came back.
+
+mod bars;
+mod central;
+
+use std::path::PathBuf;
+
+use eframe::egui;
+use station::plan::Plan;
+
+use crate::answers::Answers;
+use crate::command::{Command, Desk as DeskCommand};
+use crate::desk::{Chooser, Desk, Notice, SettingsFile};
+use crate::document::Document;
+use crate::looks::Looks;
+use crate::snapshot::Snapshot;
+use crate::views::Views;
+use crate::{keys, theme};
+
+/// Longest pause between two steps of the moving standing wave, s: about 30 pictures a second.
+const MOTION_STEP_S: f64 = 1.0 / 30.0;
+/// After a pause the RF cycle goes on where it was, not where it would be.
+const LONGEST_STEP_S: f64 = 0.1;
+
+/// What the program is given at its start.
+pub struct Beginning {
+    /// The plan to show.
+    pub plan: Plan,
+    /// The file it came from.
+    pub path: Option<PathBuf>,
+    /// Something to say at once: for instance, that the file that was asked for cannot be read.
+    pub notice: Option<Notice>,
+    /// Where settings are kept.
+    pub settings: SettingsFile,
+    /// How files are chosen.
+    pub chooser: Box<dyn Chooser>,
+}
+
+/// The program behind the window.
+pub struct Wirewright {
+    document: Document,
+    desk: Desk,
+    looks: Looks,
+    answers: Answers,
+    views: Views,
+    /// Why the last dragged number went no further.
+    stop: Option<String>,
+    /// As the window's title bar shows it now.
+    title: String,
+}
+
+impl Wirewright {
+    /// Sets up fonts, colours, worker and desk.
+    #[must_use]
+    pub fn new(ctx: &egui::Context, beginning: Beginning) -> Self {
+        theme::install(ctx);
+        let mut desk = Desk::new(beginning.settings, beginning.chooser);
+        if let Some(path) = &beginning.path {
+            desk.remember(|settings| settings.note_recent(path));
+        }
+        if let Some(notice) = beginning.notice {
+            desk.say(notice);
+        }
+        let looks = Looks::new(desk.settings());
+        let ctx = ctx.clone();
+        Self {
+            document: Document::new(beginning.plan, beginning.path),
+            desk,
+            looks,
+            answers: Answers::new(move || ctx.request_repaint()),
+            views: Views::default(),
+            stop: None,
+            title: String::new(),
+        }
+    }
+
+    /// The open plan.
+    #[must_use]
+    pub fn document(&self) -> &Document {
+        &self.document
+    }
+
+    /// What the worker has found out so far.
+    #[must_use]
+    pub fn answers(&self) -> &Answers {
+        &self.answers
+    }
+
+    /// What is looked at.
+    #[must_use]
+    pub fn looks(&self) -> &Looks {
+        &self.looks
+    }
+
+    /// What is remembered, and what is asked.
+    #[must_use]
+    pub fn desk(&self) -> &Desk {
+        &self.desk
+    }
+
+    /// Follows a command, whoever gave it.
+    pub fn obey(&mut self, ctx: &egui::Context, command: Command) {
+        match command {
+            Command::Edit(edit) => match self.document.edit(&edit) {
+                Ok(stop) => self.stop = stop,
+                Err(refusal) => self.desk.say(Notice::problem(refusal.to_string())),
+            },
+            Command::EndOfDrag => self.end_of_drag(),
+            Command::Undo => self.document.undo(),
+            Command::Redo => self.document.redo(),
+            Command::Show(show) => {
+                self.looks.obey(show);
+                let looks = &self.looks;
+                self.desk.remember(|settings| looks.note(settings));
+            }
+            Command::Desk(command) => self.desk.obey(ctx, &mut self.document, command),
+        }
+        self.looks.fit(self.document.plan());
+    }
+
+    fn end_of_drag(&mut self) {
+        self.document.end_of_drag();
+        self.stop = None;
+    }
+
+    /// What came from outside since the last frame.
+    fn poll(&mut self, ctx: &egui::Context) {
+        self.desk.poll(ctx, &mut self.document);
+        let dropped = ctx.input(|input| input.raw.dropped_files.first().map(|file| file.path().to_owned()));
+        if let Some(path) = dropped {
+            self.obey(ctx, Command::Desk(DeskCommand::OpenPath(path)));
+        }
+        self.looks.fit(self.document.plan());
+        self.answers.poll(ctx, &self.document);
+        self.save_waiting_sheet();
+    }
+
+    /// The sheet that was asked for, as soon as the numbers belong to the plan.
+    fn save_waiting_sheet(&mut self) {
+        if !self.desk.wants_sheet() {
+            return;
+        }
+        let Some(report) = self.answers.current(&self.document) else { return };
+        let Some(path) = self.desk.take_sheet_path() else { return };
+        let request = crate::paper::request(self.looks.paper, self.looks.units);
+        let notice = match crate::paper::save(self.document.plan(), report, &request, &path) {
+            Ok(()) => Notice::made(format!("Sheet saved to {}", path.display()), path),
+            Err(error) => Notice::problem(error.to_string()),
+        };
+        self.desk.say(notice);
+    }
+
+    /// Lets the RF cycle run while it can be seen.
+    fn move_on(&mut self, ctx: &egui::Context) {
+        if self.looks.moving && self.looks.view != crate::command::View::Sheet {
+            let step = f64::from(ctx.input(|input| input.stable_dt)).min(LONGEST_STEP_S);
+            self.looks.advance(step);
+            ctx.request_repaint_after_secs(MOTION_STEP_S as f32);
+        }
+    }
+
+    fn set_title(&mut self, ctx: &egui::Context) {
+        let star = if self.document.is_unsaved() { " *" } else { "" };
+        let title = format!("{}{star} – Wirewright", self.document.plan().name);
+        if title != self.title {
+            ctx.send_viewport_cmd(egui::ViewportCommand::Title(title.clone()));
+            self.title = title;
+        }
+    }
+
+    /// What the views read in this frame.
+    fn snapshot<'a>(&'a self, visuals: &egui::Visuals) -> Snapshot<'a> {
+        Snapshot {
+            plan: self.document.plan(),
+            report: self.answers.report(&self.document),
+            stale: self.answers.is_stale(&self.document),
+            band: self.looks.band,
+            feed: self.looks.feed,
+            units: self.looks.units,
+            ground: theme::ground_of(visuals),
+            phase_deg: self.looks.phase_deg,
+            moving: self.looks.moving,
+            period_s: self.looks.period_s,
+        }
+    }
+}
+
+impl eframe::App for Wirewright {
+    fn logic(&mut self, ctx: &egui::Context, _frame: &mut eframe::Frame) {
+        self.poll(ctx);
+    }
+
+    fn ui(&mut self, ui: &mut egui::Ui, _frame: &mut eframe::Frame) {
+        let ctx = ui.ctx().clone();
+        theme::choose(&ctx, self.looks.theme);
+        self.move_on(&ctx);
+        let mut commands = Vec::new();
+        self.paint(ui, &mut commands);
+        if !self.desk.is_asking() {
+            commands.extend(keys::pressed(&ctx, &self.looks));
+        }
+        self.desk.show_dialog(&ctx, &mut self.document);
+        for command in commands {
+            self.obey(&ctx, command);
+        }
+        // Whatever a hand held, it holds it no longer: so no view can forget to say so.
+        if ctx.input(|input| input.pointer.any_released()) {
+            self.end_of_drag();
+        }
+        self.answers.ask(&ctx, &self.document);
+        self.set_title(&ctx);
+    }
+}

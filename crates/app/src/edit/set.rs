@@ -1,0 +1,156 @@
+//! What each edit does, without asking whether the plan is sound afterwards.
+
+use station::plan::{Link, PathPoint, Plan};
+
+use super::Refusal;
+use crate::command::Edit;
+
+/// Changes the plan.
+pub fn set(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
+    match edit {
+        Edit::WireBeginning { .. }
+        | Edit::CutLength { .. }
+        | Edit::WireSpan { .. }
+        | Edit::PathHeight { .. }
+        | Edit::PathPoints { .. }
+        | Edit::Conductor { .. } => wire(plan, edit),
+        Edit::SupportFoot { .. } | Edit::SupportHeight { .. } => support(plan, edit),
+        Edit::LinkLength { .. }
+        | Edit::LineKind { .. }
+        | Edit::SetLink { .. }
+        | Edit::InsertLink { .. }
+        | Edit::RemoveLink { .. } => link(plan, edit),
+        Edit::AddFeed(_) | Edit::CopyFeed { .. } | Edit::RemoveFeed { .. } | Edit::RenameFeed { .. } => feed(plan, edit),
+        _ => {
+            simple(plan, edit);
+            Ok(())
+        }
+    }
+}
+
+/// Values that stand once in a plan.
+fn simple(plan: &mut Plan, edit: &Edit) {
+    match edit {
+        Edit::FeedFraction(fraction) => plan.feedpoint.fraction = *fraction,
+        Edit::Earth(earth) => plan.site.earth = earth.clone(),
+        Edit::Entrance(point) => plan.site.entrance = *point,
+        Edit::Transmitter(transmitter) => plan.transmitter = transmitter.clone(),
+        Edit::Bands(bands) => plan.bands.clone_from(bands),
+        Edit::Name(name) => plan.name.clone_from(name),
+        Edit::Purpose(purpose) => plan.purpose.clone_from(purpose),
+        Edit::CallSign(call_sign) => plan.call_sign.clone_from(call_sign),
+        Edit::Whole(whole) => plan.clone_from(whole),
+        _ => {}
+    }
+}
+
+fn wire(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
+    match edit {
+        Edit::WireBeginning { wire, start_m } => {
+            let wire = get(&mut plan.wires, *wire, "wire")?;
+            wire.cut_length_m += wire.start_m - start_m;
+            wire.start_m = *start_m;
+        }
+        Edit::CutLength { wire, cut_length_m } => get(&mut plan.wires, *wire, "wire")?.cut_length_m = *cut_length_m,
+        Edit::WireSpan { wire, start_m, cut_length_m } => {
+            let wire = get(&mut plan.wires, *wire, "wire")?;
+            (wire.start_m, wire.cut_length_m) = (*start_m, *cut_length_m);
+        }
+        Edit::PathHeight { wire, point, height_m } => {
+            let wire = get(&mut plan.wires, *wire, "wire")?;
+            match get(&mut wire.path, *point, "path point")? {
+                PathPoint::OnSupport { height_m: height, .. } => *height = *height_m,
+                PathPoint::Free(point) => point.z_m = *height_m,
+            }
+        }
+        Edit::PathPoints { wire, path } => get(&mut plan.wires, *wire, "wire")?.path.clone_from(path),
+        Edit::Conductor { wire, conductor } => {
+            get(&mut plan.wires, *wire, "wire")?.conductor.clone_from(conductor);
+        }
+        _ => {}
+    }
+    Ok(())
+}
+
+fn support(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
+    match edit {
+        Edit::SupportFoot { support, foot } => get(&mut plan.site.supports, *support, "support")?.foot = *foot,
+        Edit::SupportHeight { support, height_m } => {
+            get(&mut plan.site.supports, *support, "support")?.height_m = *height_m;
+        }
+        _ => {}
+    }
+    Ok(())
+}
+
+fn link(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
+    match edit {
+        Edit::LinkLength { feed, link, length_m } => match link_of(plan, *feed, *link)? {
+            Link::Line(piece) => piece.length_m = *length_m,
+            Link::Transformer(_) | Link::MatchingUnit(_) => return Err(Refusal::NotALine { number: link + 1 }),
+        },
+        Edit::LineKind { feed, link, line } => match link_of(plan, *feed, *link)? {
+            Link::Line(piece) => piece.line.clone_from(line),
+            Link::Transformer(_) | Link::MatchingUnit(_) => return Err(Refusal::NotALine { number: link + 1 }),
+        },
+        Edit::SetLink { feed, link, with } => link_of(plan, *feed, *link)?.clone_from(with),
+        Edit::InsertLink { feed, link, new } => {
+            let links = &mut get(&mut plan.feeds, *feed, "feed")?.links;
+            if *link > links.len() {
+                return Err(Refusal::Missing { what: "link", number: link + 1 });
+            }
+            links.insert(*link, new.clone());
+        }
+        Edit::RemoveLink { feed, link } => {
+            link_of(plan, *feed, *link)?;
+            plan.feeds[*feed].links.remove(*link);
+        }
+        _ => {}
+    }
+    Ok(())
+}
+
+fn feed(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
+    match edit {
+        Edit::AddFeed(feed) => plan.feeds.push(feed.clone()),
+        Edit::CopyFeed { feed } => {
+            let mut copy = get(&mut plan.feeds, *feed, "feed")?.clone();
+            copy.name = free_name(plan, &copy.name);
+            plan.feeds.insert(feed + 1, copy);
+        }
+        Edit::RemoveFeed { feed } => {
+            get(&mut plan.feeds, *feed, "feed")?;
+            if plan.feeds.len() == 1 {
+                return Err(Refusal::LastFeed);
+            }
+            plan.feeds.remove(*feed);
+        }
+        Edit::RenameFeed { feed, name } => get(&mut plan.feeds, *feed, "feed")?.name.clone_from(name),
+        _ => {}
+    }
+    Ok(())
+}
+
+/// "open line" becomes "open line 2", that becomes "open line 3".
+fn free_name(plan: &Plan, name: &str) -> String {
+    let stem = match name.rsplit_once(' ') {
+        Some((stem, number)) if number.parse::<u32>().is_ok() => stem,
+        _ => name,
+    };
+    let mut number = 2_u32;
+    loop {
+        let candidate = format!("{stem} {number}");
+        if plan.feeds.iter().all(|feed| feed.name != candidate) {
+            return candidate;
+        }
+        number += 1;
+    }
+}
+
+fn link_of(plan: &mut Plan, feed: usize, link: usize) -> Result<&mut Link, Refusal> {
+    get(&mut get(&mut plan.feeds, feed, "feed")?.links, link, "link")
+}
+
+fn get<'a, T>(list: &'a mut [T], index: usize, what: &'static str) -> Result<&'a mut T, Refusal> {
+    list.get_mut(index).ok_or(Refusal::Missing { what, number: index + 1 })
+}

@@ -1,0 +1,22 @@
+//! `wirewright sheet`: the page for the crew as PDF.
+
+use station::evaluate::Evaluator;
+
+use super::HeadlessError;
+use crate::cli::SheetArgs;
+use crate::paper;
+
+/// Writes the PDF.
+///
+/// # Errors
+/// One sentence.
+pub fn run(args: &SheetArgs) -> Result<(), HeadlessError> {
+    let plan = super::load(&args.plan)?;
+    let report = Evaluator::new().evaluate(&plan, 1)?;
+    let mut request = paper::request(args.paper(), args.units());
+    if let Some(date) = args.date {
+        request.date = date;
+    }
+    paper::save(&plan, &report, &request, &args.out)?;
+    Ok(())
+}
