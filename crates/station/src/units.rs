@@ -221,18 +221,6 @@ pub fn kilohertz(width_hz: f64) -> String {
     format!("{} kHz", fixed(width_khz, decimals))
 }
 
-/// An inductance: "3.21 µH".
-#[must_use]
-pub fn microhenries(inductance_h: f64) -> String {
-    format!("{} µH", short(inductance_h * 1e6))
-}
-
-/// A capacitance: "182 pF".
-#[must_use]
-pub fn picofarads(capacitance_f: f64) -> String {
-    format!("{} pF", short(capacitance_f * 1e12))
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -251,8 +239,9 @@ mod tests {
         assert_eq!(megahertz_range(5.0e6, 5.0e6), "5.000");
         assert_eq!(kilohertz(200e3), "200 kHz");
         assert_eq!(kilohertz(12.5e3), "12.5 kHz");
-        assert_eq!(microhenries(3.214e-6), "3.21 µH");
-        assert_eq!(picofarads(182.4e-12), "182 pF");
+        assert_eq!(henries(3.214e-6), "3.21 µH");
+        assert_eq!(farads(182.4e-12), "182 pF");
+        assert_eq!(farads(1.24e-9), "1.24 nF");
         assert_eq!(Units::Feet.length(20.0), "65.6 ft");
         assert_eq!(Units::Metres.length(20.347), "20.35 m");
         assert_eq!(henries(12.34e-6), "12.3 µH");
