@@ -1,4 +1,5 @@
-//! Named inks, strokes and spacings, shared by paper and screen. No other place names a colour.
+//! Named inks, strokes, text styles and spacings, shared by paper and screen. No other place names a colour, a line
+//! width or a type size of the sheet.
 
 /// What the drawing stands on.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -161,4 +162,142 @@ impl Pattern {
             Self::Dotted => Some((1.5, 3.0)),
         }
     }
+}
+
+/// A line by its role. Widths hold for paper at full size.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Stroke {
+    /// Grids and hatching.
+    Hair,
+    /// Table rules, dimension lines.
+    Rule,
+    /// Boxes that someone writes in, section heads.
+    Frame,
+    /// Antenna wire.
+    Wire,
+    /// Rope.
+    Rope,
+    /// Masts, trunks, walls.
+    Support,
+    /// The earth's surface.
+    Earth,
+    /// First, second, third feed in drawings and curves: solid, dashed, dotted.
+    FeedA,
+    /// See [`Stroke::FeedA`].
+    FeedB,
+    /// See [`Stroke::FeedA`].
+    FeedC,
+    /// The transmitter's limit.
+    Limit,
+}
+
+impl Stroke {
+    /// Width, mm.
+    #[must_use]
+    pub fn width_mm(self) -> f64 {
+        match self {
+            Self::Hair => 0.12,
+            Self::Rule | Self::Limit => 0.2,
+            Self::Frame => 0.3,
+            Self::Rope | Self::Earth => 0.35,
+            Self::FeedA | Self::FeedB | Self::FeedC => 0.45,
+            Self::Wire => 0.7,
+            Self::Support => 0.9,
+        }
+    }
+
+    /// Lengths of dashes and gaps in turn, mm; empty for a solid line.
+    #[must_use]
+    pub fn dash_mm(self) -> &'static [f64] {
+        match self {
+            Self::Rope => &[0.9, 0.6],
+            Self::FeedB => &[1.8, 0.8],
+            Self::FeedC => &[0.5, 0.8],
+            Self::Limit => &[0.6, 0.4],
+            _ => &[],
+        }
+    }
+
+    /// The line of a feed, by its index in the plan.
+    #[must_use]
+    pub fn feed(index: usize) -> Self {
+        [Self::FeedA, Self::FeedB, Self::FeedC][index % 3]
+    }
+}
+
+/// Weight of the type.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+#[allow(missing_docs)] // The words say it.
+pub enum Weight {
+    Regular,
+    Bold,
+}
+
+/// Type by its role on paper.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum TextStyle {
+    /// The plan's name.
+    Title,
+    /// Heads of sections.
+    Section,
+    /// The numbers that someone cuts or sets by.
+    Key,
+    /// What stands out in a table or a sentence.
+    Strong,
+    /// Everything else that is read.
+    Body,
+    /// Column heads, scales, footnotes.
+    Note,
+}
+
+impl TextStyle {
+    /// All styles.
+    pub const ALL: [Self; 6] = [Self::Title, Self::Section, Self::Key, Self::Strong, Self::Body, Self::Note];
+
+    /// Size, points (1/72 inch).
+    #[must_use]
+    pub fn size_pt(self) -> f64 {
+        match self {
+            Self::Title => 20.0,
+            Self::Section | Self::Key => 11.5,
+            Self::Strong | Self::Body => 9.0,
+            Self::Note => 8.0,
+        }
+    }
+
+    /// Size, mm.
+    #[must_use]
+    pub fn size_mm(self) -> f64 {
+        self.size_pt() * MM_PER_POINT
+    }
+
+    /// Distance between base lines, mm.
+    #[must_use]
+    pub fn leading_mm(self) -> f64 {
+        self.size_mm() * 1.2
+    }
+
+    /// Weight.
+    #[must_use]
+    pub fn weight(self) -> Weight {
+        match self {
+            Self::Title | Self::Section | Self::Key | Self::Strong => Weight::Bold,
+            Self::Body | Self::Note => Weight::Regular,
+        }
+    }
+}
+
+/// Millimetres in a point.
+pub const MM_PER_POINT: f64 = 25.4 / 72.0;
+
+/// Distances on paper, mm.
+pub mod space {
+    /// Paper's edge to the text: printers reach it, and a hole punch misses it.
+    pub const MARGIN: f64 = 12.0;
+    /// Between sections.
+    pub const SECTION: f64 = 4.0;
+    /// Between columns of text.
+    pub const GUTTER: f64 = 5.0;
+    /// Between a rule and the text at it, and between text and the edge of its cell.
+    pub const CELL: f64 = 1.0;
 }

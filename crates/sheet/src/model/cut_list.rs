@@ -1,0 +1,220 @@
+//! What to cut: wires, ropes and lines, with what knots, insulators and trimming take.
+
+use station::hang::{Hung, Rope, WireEnd};
+use station::plan::{ConductorChoice, LineChoice, LinePiece, Link, PathPoint, Plan, Wire};
+use station::units::Units;
+
+use super::link_mark;
+use crate::fonts::printable;
+
+/// What is added to the plan's lengths. The defaults are common practice.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Allowances {
+    /// Wire put through an insulator and wound back on itself, m per end.
+    pub insulator_m: f64,
+    /// Wire left over until the first measurement, as a share of the piece: folded back, cut off last.
+    pub trim_share: f64,
+    /// The least of it, m.
+    pub trim_least_m: f64,
+    /// A knot that holds and its tail, m per end of a rope.
+    pub knot_m: f64,
+    /// Line stripped and made fast, m per end.
+    pub line_end_m: f64,
+}
+
+impl Default for Allowances {
+    fn default() -> Self {
+        Self { insulator_m: 0.25, trim_share: 0.02, trim_least_m: 0.3, knot_m: 0.5, line_end_m: 0.15 }
+    }
+}
+
+/// Everything to cut.
+#[derive(Clone, Debug, PartialEq)]
+pub struct CutList {
+    /// Wires first, then ropes, then lines.
+    pub rows: Vec<CutRow>,
+    /// What the columns hold, and where the allowances come from.
+    pub note: String,
+}
+
+/// One piece.
+#[derive(Clone, Debug, PartialEq)]
+pub struct CutRow {
+    /// Its mark in the drawing.
+    pub mark: String,
+    /// What it is.
+    pub part: String,
+    /// Of what material, from where to where.
+    pub detail: String,
+    /// Its length in the plan.
+    pub plan: String,
+    /// What its ends take.
+    pub ends: String,
+    /// What is left for trimming, or a halyard; empty where there is none.
+    pub extra: String,
+    /// What to cut.
+    pub cut: String,
+}
+
+/// Lengths of one piece, m.
+struct Lengths {
+    plan_m: f64,
+    ends_m: f64,
+    extra_m: f64,
+}
+
+impl CutList {
+    pub(super) fn new(plan: &Plan, hung: &Hung, units: Units) -> Self {
+        let allowances = Allowances::default();
+        let mut rows = Vec::new();
+        for arm in arms(plan) {
+            rows.push(arm.row(plan, units, &allowances));
+        }
+        for (index, rope) in hung.ropes.iter().enumerate() {
+            rows.push(rope_row(plan, rope, index, units, &allowances));
+        }
+        for (feed_index, feed) in plan.feeds.iter().enumerate() {
+            for (from_wire, link) in feed.links.iter().enumerate() {
+                if let Link::Line(piece) = link {
+                    let mark = link_mark(feed_index, feed.links.len(), from_wire);
+                    rows.push(line_row(piece, mark, &feed.name, units, &allowances));
+                }
+            }
+        }
+        Self { rows, note: note(units, &allowances) }
+    }
+}
+
+/// A piece of wire between an end and the feedpoint, or a whole unfed wire.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Arm {
+    /// Index of the wire.
+    pub wire: usize,
+    /// Where it begins along the wire, m.
+    pub from_m: f64,
+    /// Where it ends along the wire, m.
+    pub to_m: f64,
+}
+
+impl Arm {
+    /// Length, m.
+    #[must_use]
+    pub fn length_m(self) -> f64 {
+        self.to_m - self.from_m
+    }
+}
+
+/// All pieces of wire, in the order of their marks W1, W2, …
+#[must_use]
+pub fn arms(plan: &Plan) -> Vec<Arm> {
+    // A shorter piece than this is no piece: the feedpoint sits at the wire's end.
+    const LEAST_M: f64 = 1e-6;
+    let mut out = Vec::new();
+    for (index, wire) in plan.wires.iter().enumerate() {
+        let end_m = wire.cut_length_m;
+        let cut_m = if index == plan.feedpoint.wire { plan.feedpoint.fraction * end_m } else { 0.0 };
+        let pieces = [(0.0, cut_m), (cut_m, end_m)].map(|(from_m, to_m)| Arm { wire: index, from_m, to_m });
+        out.extend(pieces.into_iter().filter(|arm| arm.length_m() > LEAST_M));
+    }
+    out
+}
+
+impl Arm {
+    fn row(self, plan: &Plan, units: Units, allowances: &Allowances) -> CutRow {
+        let wire = &plan.wires[self.wire];
+        let is_fed = self.wire == plan.feedpoint.wire;
+        let toward = if self.from_m > 0.0 { wire.path.last() } else { wire.path.first() };
+        let route = match (is_fed, toward) {
+            (true, Some(point)) => format!("feedpoint to {}", place(point)),
+            _ => format!(
+                "{} to {}",
+                wire.path.first().map_or_else(String::new, place),
+                wire.path.last().map_or_else(String::new, place)
+            ),
+        };
+        let mark = arms(plan).iter().position(|arm| *arm == self).map_or(0, |index| index + 1);
+        let lengths = Lengths {
+            plan_m: self.length_m(),
+            ends_m: 2.0 * allowances.insulator_m,
+            extra_m: (allowances.trim_share * self.length_m()).max(allowances.trim_least_m),
+        };
+        let detail = format!("{}, {route}", conductor_name(wire));
+        lengths.row(format!("W{mark}"), printable(&wire.name), printable(&detail), units)
+    }
+}
+
+fn rope_row(plan: &Plan, rope: &Rope, index: usize, units: Units, allowances: &Allowances) -> CutRow {
+    let held = plan.wires.get(rope.wire).and_then(|wire| match rope.end {
+        WireEnd::Beginning => wire.path.first(),
+        WireEnd::End => wire.path.last(),
+    });
+    let halyard_m = match held {
+        Some(PathPoint::OnSupport { height_m, .. }) => *height_m,
+        _ => 0.0,
+    };
+    let lengths = Lengths { plan_m: rope.length_m, ends_m: 2.0 * allowances.knot_m, extra_m: halyard_m };
+    let detail = held.map_or_else(
+        || "holds the wire".to_owned(),
+        |point| format!("wire's end to {}, then down", place(point)),
+    );
+    lengths.row(format!("R{}", index + 1), "rope".to_owned(), printable(&detail), units)
+}
+
+fn line_row(piece: &LinePiece, mark: String, feed: &str, units: Units, allowances: &Allowances) -> CutRow {
+    let lengths = Lengths { plan_m: piece.length_m, ends_m: 2.0 * allowances.line_end_m, extra_m: 0.0 };
+    let detail = format!("feed line of {feed}");
+    lengths.row(mark, printable(&line_name(&piece.line)), printable(&detail), units)
+}
+
+impl Lengths {
+    /// Each length is rounded to what a tape shows before they are added, so that the row adds up on paper.
+    fn row(&self, mark: String, part: String, detail: String, units: Units) -> CutRow {
+        let [plan_m, ends_m, extra_m] = [self.plan_m, self.ends_m, self.extra_m].map(|m| units.on_tape(m));
+        CutRow {
+            mark,
+            part,
+            detail,
+            plan: units.tape(plan_m),
+            ends: units.tape(ends_m),
+            extra: if extra_m > 0.0 { units.tape(extra_m) } else { String::new() },
+            cut: units.tape(plan_m + ends_m + extra_m),
+        }
+    }
+}
+
+fn note(units: Units, allowances: &Allowances) -> String {
+    format!(
+        "Allowances are common practice. Ends: {} of wire through each insulator and wound back; {} of rope for each \
+         knot; {} of line stripped at each end. Extra: {} % of a wire, at least {}, folded back until the first \
+         measurement and cut off last; for a rope, the halyard down its support. Leave a drip loop where a line \
+         enters the station.",
+        units.tape(allowances.insulator_m),
+        units.tape(allowances.knot_m),
+        units.tape(allowances.line_end_m),
+        station::units::fixed(allowances.trim_share * 100.0, 0),
+        units.tape(allowances.trim_least_m),
+    )
+}
+
+fn place(point: &PathPoint) -> String {
+    match point {
+        PathPoint::OnSupport { support, .. } => support.clone(),
+        PathPoint::Free(_) => "its free point".to_owned(),
+    }
+}
+
+fn conductor_name(wire: &Wire) -> String {
+    match &wire.conductor {
+        ConductorChoice::Catalogue(id) => id.clone(),
+        ConductorChoice::Own(data) => data.name.clone(),
+    }
+}
+
+/// The name of a line, as the crew reads it on the drum.
+#[must_use]
+pub fn line_name(line: &LineChoice) -> String {
+    match line {
+        LineChoice::Catalogue(id) => id.clone(),
+        LineChoice::Own(data) => data.name.clone(),
+    }
+}

@@ -1,0 +1,146 @@
+//! Breaking text into lines by measured width.
+
+use crate::fonts;
+use crate::tokens::{Ink, TextStyle};
+
+/// A stretch of text in one style.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Span {
+    /// The words.
+    pub text: String,
+    /// Size and weight.
+    pub style: TextStyle,
+    /// Colour.
+    pub ink: Ink,
+}
+
+impl Span {
+    /// A span in the main ink.
+    #[must_use]
+    pub fn new(style: TextStyle, text: impl Into<String>) -> Self {
+        Self { text: text.into(), style, ink: Ink::Text }
+    }
+
+    /// The same in another ink.
+    #[must_use]
+    pub fn ink(self, ink: Ink) -> Self {
+        Self { ink, ..self }
+    }
+}
+
+/// A span placed on a line.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Placed {
+    /// Distance from the line's beginning, mm.
+    pub x_mm: f64,
+    /// What stands there.
+    pub span: Span,
+}
+
+/// Breaks spans into lines no wider than `width_mm`. Lines break at spaces (not at no-break spaces); a word wider
+/// than a line is broken between letters.
+#[must_use]
+pub fn wrap(spans: &[Span], width_mm: f64) -> Vec<Vec<Placed>> {
+    let mut lines = vec![Vec::<Placed>::new()];
+    let mut pen_mm = 0.0;
+    for span in spans {
+        let space_mm = fonts::width_mm(span.style, " ");
+        for word in span.text.split(' ').filter(|word| !word.is_empty()) {
+            for piece in pieces(span.style, word, width_mm) {
+                let piece_mm = fonts::width_mm(span.style, &piece);
+                let is_first = lines.last().is_none_or(Vec::is_empty);
+                let gap_mm = if is_first { 0.0 } else { space_mm };
+                if !is_first && pen_mm + gap_mm + piece_mm > width_mm {
+                    lines.push(Vec::new());
+                    pen_mm = 0.0;
+                } else {
+                    pen_mm += gap_mm;
+                }
+                if let Some(line) = lines.last_mut() {
+                    append(line, pen_mm, span, &piece);
+                }
+                pen_mm += piece_mm;
+            }
+        }
+    }
+    lines
+}
+
+/// Adds a word to a line, to the last span if it looks the same.
+fn append(line: &mut Vec<Placed>, x_mm: f64, span: &Span, word: &str) {
+    match line.last_mut() {
+        Some(last) if last.span.style == span.style && last.span.ink == span.ink => {
+            last.span.text.push(' ');
+            last.span.text.push_str(word);
+        }
+        _ => line.push(Placed { x_mm, span: Span { text: word.to_owned(), ..*span } }),
+    }
+}
+
+/// A word, cut where it is wider than a line.
+fn pieces(style: TextStyle, word: &str, width_mm: f64) -> Vec<String> {
+    let mut out = vec![String::new()];
+    let mut pen_mm = 0.0;
+    for c in word.chars() {
+        let letter_mm = fonts::width_mm(style, c.encode_utf8(&mut [0; 4]));
+        if pen_mm + letter_mm > width_mm && pen_mm > 0.0 {
+            out.push(String::new());
+            pen_mm = 0.0;
+        }
+        if let Some(piece) = out.last_mut() {
+            piece.push(c);
+        }
+        pen_mm += letter_mm;
+    }
+    out
+}
+
+/// The beginning of a text that fits, with an ellipsis where something is missing.
+#[must_use]
+pub fn fit(style: TextStyle, text: &str, width_mm: f64) -> String {
+    if fonts::width_mm(style, text) <= width_mm {
+        return text.to_owned();
+    }
+    let mut kept = String::new();
+    for c in text.chars() {
+        let longer = format!("{kept}{c}…");
+        if fonts::width_mm(style, &longer) > width_mm {
+            break;
+        }
+        kept.push(c);
+    }
+    format!("{}…", kept.trim_end())
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn lines_of(text: &str, width_mm: f64) -> Vec<String> {
+        wrap(&[Span::new(TextStyle::Body, text)], width_mm)
+            .into_iter()
+            .map(|line| line.into_iter().map(|placed| placed.span.text).collect::<Vec<_>>().join(" "))
+            .collect()
+    }
+
+    #[test]
+    fn no_line_is_wider_than_asked_and_no_word_is_lost() {
+        let text = "Keep them out of reach of people and Donaudampfschifffahrtsgesellschaften; 12\u{a0}346 Ω";
+        for width_mm in [12.0, 20.0, 35.0, 200.0] {
+            let lines = lines_of(text, width_mm);
+            for line in &lines {
+                assert!(fonts::width_mm(TextStyle::Body, line) <= width_mm, "{line} at {width_mm}");
+            }
+            let without_spaces = |s: &str| s.replace(' ', "");
+            assert_eq!(without_spaces(&lines.concat()), without_spaces(text));
+        }
+        assert_eq!(lines_of(text, 200.0).len(), 1);
+    }
+
+    #[test]
+    fn a_fitted_text_shows_that_it_was_cut() {
+        assert_eq!(fit(TextStyle::Body, "north mast", 100.0), "north mast");
+        let cut = fit(TextStyle::Body, "the very long name of the north mast", 25.0);
+        assert!(cut.ends_with('…') && fonts::width_mm(TextStyle::Body, &cut) <= 25.0, "{cut}");
+    }
+}
