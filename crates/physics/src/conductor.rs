@@ -100,3 +100,43 @@ impl InsulatedWire {
         (1.0 - layer / wire).sqrt()
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::constants::COPPER_CONDUCTIVITY_S_PER_M;
+
+    const WIRE: RoundWire = RoundWire { radius_m: 1e-3, conductivity_s_per_m: COPPER_CONDUCTIVITY_S_PER_M };
+
+    #[test]
+    fn slow_current_fills_the_wire() {
+        let ohm_per_m = WIRE.internal_impedance_ohm_per_m(1.0);
+        assert!((ohm_per_m.re / WIRE.dc_resistance_ohm_per_m() - 1.0).abs() < 1e-6);
+        // The field inside a wire with even current: µ0/8π of inductance per metre.
+        let inductance_h_per_m = ohm_per_m.im / TAU;
+        assert!((inductance_h_per_m / (VACUUM_PERMEABILITY_H_PER_M / (8.0 * PI)) - 1.0).abs() < 1e-6);
+    }
+
+    #[test]
+    fn fast_current_keeps_to_a_skin() {
+        // Z' → (1 + j)·Rs/(2πa), from above: 1 + δ/2a to the next order.
+        for frequency_hz in [1e9, 1e12, 1e15] {
+            let depth_m = skin_depth_m(frequency_hz, WIRE.conductivity_s_per_m);
+            let rs_ohm = surface_resistance_ohm(frequency_hz, WIRE.conductivity_s_per_m);
+            let flat_ohm_per_m = rs_ohm / (TAU * WIRE.radius_m);
+            let ohm_per_m = WIRE.internal_impedance_ohm_per_m(frequency_hz);
+            let curved = 1.0 + 0.5 * depth_m / WIRE.radius_m;
+            assert!((ohm_per_m.re / flat_ohm_per_m / curved - 1.0).abs() < 1e-5);
+            assert!((ohm_per_m.im / flat_ohm_per_m - 1.0).abs() < 1e-5);
+        }
+    }
+
+    #[test]
+    fn bare_wire_is_as_fast_as_light() {
+        let over_earth = Surroundings::OverEarth { height_m: 10.0 };
+        for (outer_diameter_m, relative_permittivity) in [(2e-3, 3.5), (3e-3, 1.0)] {
+            let wire = InsulatedWire { metal_diameter_m: 2e-3, outer_diameter_m, relative_permittivity };
+            assert!((wire.velocity_factor(over_earth) - 1.0).abs() < 1e-12);
+        }
+    }
+}

@@ -63,3 +63,33 @@ pub(super) fn input_impedance(terms: &SpaceTerms, characteristic_ohm: f64, kl: f
     let under = Complex64::new((characteristic_ohm + m) * sin + (x + n) * cos, -r * cos);
     characteristic_ohm * over / under
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::constants::SPEED_OF_LIGHT_M_PER_S;
+    use crate::sinusoid::{CentreFedWire, self_impedance};
+
+    /// R of the formula is the induced-EMF resistance, which comes here by another road.
+    #[test]
+    fn resistance_is_that_of_the_induced_emf_method() {
+        for step in 1..200 {
+            let kl = 0.1 * f64::from(step);
+            let wire = CentreFedWire { half_length_m: kl, radius_m: 1e-7 };
+            let unit_wave_number_hz = SPEED_OF_LIGHT_M_PER_S / (2.0 * PI);
+            let expected_ohm = self_impedance(&wire, unit_wave_number_hz).re;
+            let got_ohm = space_terms(kl).space_ohm.re;
+            assert!((got_ohm / expected_ohm - 1.0).abs() < 1e-8, "kl = {kl}: {got_ohm} for {expected_ohm}");
+        }
+    }
+
+    /// Near kl = π/2 the formula must give back R + j(X − N): the thin half wave.
+    #[test]
+    fn half_wave_of_vanishing_radius_shows_its_loop_impedance() {
+        let kl = 0.5 * PI;
+        let characteristic_ohm = mean_characteristic_impedance_ohm(1.0, 1e-300);
+        let ohm = input_impedance(&space_terms(kl), characteristic_ohm, kl);
+        // Source: the closed form with η0/4π; handbooks round it to 73.1 + j42.5 Ω. The rest falls as 1/K.
+        assert!((ohm - Complex64::new(73.079, 42.515)).norm() < 0.2, "{ohm}");
+    }
+}

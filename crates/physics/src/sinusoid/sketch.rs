@@ -207,7 +207,7 @@ impl Sketch {
         Ok(ArmTerms { space, loss_ohm })
     }
 
-    fn check_frequency(&self, frequency_hz: f64) -> Result<(), SketchError> {
+    pub(super) fn check_frequency(&self, frequency_hz: f64) -> Result<(), SketchError> {
         in_range("frequency_hz", frequency_hz, 0.1e6..=100e6, "0.1 to 100 MHz")?;
         let wavelength_m = SPEED_OF_LIGHT_M_PER_S / frequency_hz;
         let arm_m = self.wire.arm_a_m.min(self.wire.arm_b_m);
