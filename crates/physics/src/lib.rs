@@ -17,3 +17,4 @@ pub mod line;
 pub mod network;
 pub mod sinusoid;
 pub mod special;
+pub mod wire;
