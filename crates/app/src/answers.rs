@@ -102,7 +102,11 @@ fn fits(report: &Report, document: &Document) -> bool {
     let links_fit = |band: &station::report::BandReport| {
         band.points.first().is_none_or(|point| {
             point.feeds.len() == plan.feeds.len()
-                && point.feeds.iter().zip(&plan.feeds).all(|(seen, feed)| seen.links.len() == feed.links.len())
+                && point
+                    .feeds
+                    .iter()
+                    .zip(&plan.feeds)
+                    .all(|(seen, feed)| seen.links.len() == feed.links.len())
         })
     };
     report.bands.len() == plan.bands.len()

@@ -29,7 +29,16 @@ impl Document {
     /// A plan from a file, or one without a file yet.
     #[must_use]
     pub fn new(plan: Plan, path: Option<PathBuf>) -> Self {
-        Self { saved: plan.clone(), plan, path, past: Vec::new(), future: Vec::new(), held: None, revision: 1, first_revision: 1 }
+        Self {
+            saved: plan.clone(),
+            plan,
+            path,
+            past: Vec::new(),
+            future: Vec::new(),
+            held: None,
+            revision: 1,
+            first_revision: 1,
+        }
     }
 
     /// Puts another plan in the place of this one. Revisions go on, so that late answers are known as such.

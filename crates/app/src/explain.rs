@@ -5,7 +5,6 @@ use eframe::egui::{Context, Id, Response};
 /// Gives a widget its sentence.
 pub trait Explain {
     /// Shows the sentence beside the pointer after a moment, and at once in the status line.
-    #[must_use]
     fn explain(self, sentence: impl Into<String>) -> Self;
 }
 

@@ -40,9 +40,11 @@ fn entry(
 /// All of them. Those with more modifiers stand first: the shorter ones would answer to them, too.
 #[must_use]
 pub fn table() -> [Entry; 16] {
-    use Heard::{Always, WhenNothingHasFocus, WhenNotTyping};
+    use Heard::{Always, WhenNotTyping, WhenNothingHasFocus};
     [
-        entry((CTRL_SHIFT, Key::S), Always, "Save the plan under another name", |_| Command::Desk(Desk::SaveAs)),
+        entry((CTRL_SHIFT, Key::S), Always, "Save the plan under another name", |_| {
+            Command::Desk(Desk::SaveAs)
+        }),
         entry((CTRL_SHIFT, Key::Z), WhenNotTyping, "Redo the step that was undone", |_| Command::Redo),
         entry((CTRL, Key::N), Always, "New plan", |_| Command::Desk(Desk::NewPlan)),
         entry((CTRL, Key::O), Always, "Open a plan", |_| Command::Desk(Desk::Open)),

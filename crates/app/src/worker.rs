@@ -84,7 +84,9 @@ fn guarded(
             .map(|text| (*text).to_owned())
             .or_else(|| payload.downcast_ref::<String>().cloned())
             .unwrap_or_else(|| "unknown".to_owned());
-        Err(format!("the evaluation of this plan broke off (a fault of the program, not of the plan): {what}"))
+        Err(format!(
+            "the evaluation of this plan broke off (a fault of the program, not of the plan): {what}"
+        ))
     })
 }
 

@@ -95,7 +95,7 @@ impl Ink {
             Self::Resistance => (0x2b_35_3a, 0xe0_db_cf, 0x10_10_10),
             Self::Reactance => (0x7a_6f_8c, 0xb7_aa_cc, 0x6a_60_7a),
             Self::Limit => (0xb4_1e_3c, 0xff_7a_90, 0xa0_10_30),
-            Self::Works => (0x24_7a_4d, 0x6c_cf_94, 0x1a_63_3c),
+            Self::Works => (0x1f_70_46, 0x6c_cf_94, 0x1a_63_3c),
             Self::WorksWithUnit => (0x2f_74_8a, 0x74_bf_d4, 0x22_5f_74),
             Self::TooLossy => (0xa8_69_00, 0xe8_ab_4a, 0x8a_55_00),
             Self::Overstressed => (0xb0_3c_1e, 0xff_8d_66, 0x94_2c_12),

@@ -106,31 +106,37 @@ impl Wirewright {
     /// Model and time, what is under the pointer, units, light or dark.
     pub(super) fn status_bar(&self, ui: &mut Ui, out: &mut Vec<Command>) {
         let under_pointer = explain::take(ui.ctx());
-        egui::Panel::bottom("status").exact_size(STATUS_HEIGHT).resizable(false).frame(bar(ui)).show(ui, |ui| {
-            ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
-                self.theme_menu(ui, out);
-                self.units(ui, out);
-                ui.separator();
-                ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
-                    self.model(ui);
+        egui::Panel::bottom("status").exact_size(STATUS_HEIGHT).resizable(false).frame(bar(ui)).show(
+            ui,
+            |ui| {
+                ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
+                    self.theme_menu(ui, out);
+                    self.units(ui, out);
                     ui.separator();
-                    let sentence = self.stop.as_deref().unwrap_or(&under_pointer);
-                    ui.add(egui::Label::new(RichText::new(sentence).small()).truncate());
+                    ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
+                        self.model(ui);
+                        ui.separator();
+                        let sentence = self.stop.as_deref().unwrap_or(&under_pointer);
+                        ui.add(egui::Label::new(RichText::new(sentence).small()).truncate());
+                    });
                 });
-            });
-        });
+            },
+        );
     }
 
     fn model(&self, ui: &mut Ui) {
         let ground = theme::ground_of(ui.visuals());
         let (words, ink, sentence) = match (self.answers.fault(), self.answers.report(&self.document)) {
             (Some(fault), _) => ("no answer".to_owned(), Ink::OutOfRange, fault.to_owned()),
-            (None, None) => ("computing…".to_owned(), Ink::Faint, "The first numbers are on their way".to_owned()),
+            (None, None) => {
+                ("computing…".to_owned(), Ink::Faint, "The first numbers are on their way".to_owned())
+            }
             (None, Some(report)) => {
                 let milliseconds = self.answers.took().as_secs_f64() * 1e3;
                 let time = station::units::short(milliseconds);
                 let words = format!("{}, {time} ms", report.model.name());
-                let sentence = format!("The model that made the numbers, and how long all bands took: {words}");
+                let sentence =
+                    format!("The model that made the numbers, and how long all bands took: {words}");
                 (words, Ink::Faint, sentence)
             }
         };
@@ -138,8 +144,11 @@ impl Wirewright {
     }
 
     fn units(&self, ui: &mut Ui, out: &mut Vec<Command>) {
-        for (units, sentence) in [(Units::Feet, "Lengths in feet (M)"), (Units::Metres, "Lengths in metres (M)")] {
-            let button = ui.selectable_label(self.looks.units == units, RichText::new(units.symbol()).small());
+        for (units, sentence) in
+            [(Units::Feet, "Lengths in feet (M)"), (Units::Metres, "Lengths in metres (M)")]
+        {
+            let button =
+                ui.selectable_label(self.looks.units == units, RichText::new(units.symbol()).small());
             if button.explain(sentence).clicked() {
                 out.push(Command::Show(Show::Units(units)));
             }
@@ -160,7 +169,7 @@ impl Wirewright {
                 }
             }
         });
-        let _ = menu.response.explain("Light or dark");
+        menu.response.explain("Light or dark");
     }
 }
 

@@ -41,10 +41,8 @@ impl Desk {
     pub fn show_notice(&mut self, ui: &mut egui::Ui) {
         use super::notice::Reaction;
         let Some(notice) = &self.notice else { return };
-        let reaction = egui::Panel::top("notice")
-            .frame(egui::Frame::NONE)
-            .show(ui, |ui| notice.show(ui))
-            .inner;
+        let reaction =
+            egui::Panel::top("notice").frame(egui::Frame::NONE).show(ui, |ui| notice.show(ui)).inner;
         match reaction {
             Reaction::Nothing => {}
             Reaction::Dismiss => self.notice = None,
@@ -164,7 +162,11 @@ fn modal(ctx: &egui::Context, content: impl FnOnce(&mut egui::Ui) -> Reply) -> R
         ui.set_width(WIDTH.min(ui.ctx().content_rect().width() - 40.0));
         content(ui)
     });
-    if response.should_close() && matches!(response.inner, Reply::Wait) { Reply::Close } else { response.inner }
+    if response.should_close() && matches!(response.inner, Reply::Wait) {
+        Reply::Close
+    } else {
+        response.inner
+    }
 }
 
 /// A row of buttons.

@@ -58,16 +58,18 @@ impl Notice {
         let ground = theme::ground_of(ui.visuals());
         let ink = if self.is_problem { Ink::OutOfRange } else { Ink::Works };
         let mut reaction = Reaction::Nothing;
-        egui::Frame::new()
-            .fill(theme::wash(ink, ground))
-            .inner_margin(egui::Margin::symmetric(12, 5))
-            .show(ui, |ui| {
+        egui::Frame::new().fill(theme::wash(ink, ground)).inner_margin(egui::Margin::symmetric(12, 5)).show(
+            ui,
+            |ui| {
                 ui.with_layout(egui::Layout::right_to_left(egui::Align::Center), |ui| {
                     if ui.button("Dismiss").explain("Sends this line away").clicked() {
                         reaction = Reaction::Dismiss;
                     }
                     if let Some(file) = &self.made
-                        && ui.button("Show it").explain("Opens the file with the desktop's own viewer").clicked()
+                        && ui
+                            .button("Show it")
+                            .explain("Opens the file with the desktop's own viewer")
+                            .clicked()
                     {
                         reaction = Reaction::ShowFile(file.clone());
                     }
@@ -76,7 +78,8 @@ impl Notice {
                         ui.add(egui::Label::new(text).wrap());
                     });
                 });
-            });
+            },
+        );
         reaction
     }
 }

@@ -84,7 +84,9 @@ impl SettingsFile {
     /// Writes the settings. A full disk or a read-only folder costs habits, not work: it is not reported.
     pub fn save(&self, settings: &Settings) {
         let Some(path) = &self.0 else { return };
-        let Ok(text) = ron::ser::to_string_pretty(settings, ron::ser::PrettyConfig::default()) else { return };
+        let Ok(text) = ron::ser::to_string_pretty(settings, ron::ser::PrettyConfig::default()) else {
+            return;
+        };
         if let Some(folder) = path.parent() {
             let _ = fs::create_dir_all(folder);
         }

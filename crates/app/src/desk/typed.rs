@@ -30,7 +30,11 @@ impl Typed {
             return None;
         }
         let path = Path::new(text);
-        Some(if path.extension().is_none() { path.with_extension(self.ask.extension()) } else { path.to_owned() })
+        Some(if path.extension().is_none() {
+            path.with_extension(self.ask.extension())
+        } else {
+            path.to_owned()
+        })
     }
 
     /// Looks whether the file exists.

@@ -20,7 +20,9 @@ pub fn set(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
         | Edit::SetLink { .. }
         | Edit::InsertLink { .. }
         | Edit::RemoveLink { .. } => link(plan, edit),
-        Edit::AddFeed(_) | Edit::CopyFeed { .. } | Edit::RemoveFeed { .. } | Edit::RenameFeed { .. } => feed(plan, edit),
+        Edit::AddFeed(_) | Edit::CopyFeed { .. } | Edit::RemoveFeed { .. } | Edit::RenameFeed { .. } => {
+            feed(plan, edit)
+        }
         _ => {
             simple(plan, edit);
             Ok(())
@@ -51,7 +53,9 @@ fn wire(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
             wire.cut_length_m += wire.start_m - start_m;
             wire.start_m = *start_m;
         }
-        Edit::CutLength { wire, cut_length_m } => get(&mut plan.wires, *wire, "wire")?.cut_length_m = *cut_length_m,
+        Edit::CutLength { wire, cut_length_m } => {
+            get(&mut plan.wires, *wire, "wire")?.cut_length_m = *cut_length_m
+        }
         Edit::WireSpan { wire, start_m, cut_length_m } => {
             let wire = get(&mut plan.wires, *wire, "wire")?;
             (wire.start_m, wire.cut_length_m) = (*start_m, *cut_length_m);
@@ -74,7 +78,9 @@ fn wire(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
 
 fn support(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
     match edit {
-        Edit::SupportFoot { support, foot } => get(&mut plan.site.supports, *support, "support")?.foot = *foot,
+        Edit::SupportFoot { support, foot } => {
+            get(&mut plan.site.supports, *support, "support")?.foot = *foot
+        }
         Edit::SupportHeight { support, height_m } => {
             get(&mut plan.site.supports, *support, "support")?.height_m = *height_m;
         }
@@ -87,11 +93,15 @@ fn link(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
     match edit {
         Edit::LinkLength { feed, link, length_m } => match link_of(plan, *feed, *link)? {
             Link::Line(piece) => piece.length_m = *length_m,
-            Link::Transformer(_) | Link::MatchingUnit(_) => return Err(Refusal::NotALine { number: link + 1 }),
+            Link::Transformer(_) | Link::MatchingUnit(_) => {
+                return Err(Refusal::NotALine { number: link + 1 });
+            }
         },
         Edit::LineKind { feed, link, line } => match link_of(plan, *feed, *link)? {
             Link::Line(piece) => piece.line.clone_from(line),
-            Link::Transformer(_) | Link::MatchingUnit(_) => return Err(Refusal::NotALine { number: link + 1 }),
+            Link::Transformer(_) | Link::MatchingUnit(_) => {
+                return Err(Refusal::NotALine { number: link + 1 });
+            }
         },
         Edit::SetLink { feed, link, with } => link_of(plan, *feed, *link)?.clone_from(with),
         Edit::InsertLink { feed, link, new } => {

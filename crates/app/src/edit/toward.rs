@@ -17,7 +17,8 @@ pub fn toward(plan: &Plan, edit: &Edit, share: f64) -> Option<Edit> {
         }
         Edit::WireSpan { wire, start_m, cut_length_m } => {
             let now = plan.wires.get(wire)?;
-            let (start_m, cut_length_m) = (number(now.start_m, start_m), number(now.cut_length_m, cut_length_m));
+            let (start_m, cut_length_m) =
+                (number(now.start_m, start_m), number(now.cut_length_m, cut_length_m));
             Edit::WireSpan { wire, start_m, cut_length_m }
         }
         Edit::PathHeight { wire, point, height_m } => {
@@ -32,16 +33,18 @@ pub fn toward(plan: &Plan, edit: &Edit, share: f64) -> Option<Edit> {
             if now.len() != path.len() {
                 return None;
             }
-            let path = now.iter().zip(path).map(|(from, to)| between(from, to, share)).collect::<Option<_>>()?;
+            let path =
+                now.iter().zip(path).map(|(from, to)| between(from, to, share)).collect::<Option<_>>()?;
             Edit::PathPoints { wire, path }
         }
         Edit::FeedFraction(fraction) => Edit::FeedFraction(number(plan.feedpoint.fraction, fraction)),
         Edit::SupportFoot { support, foot } => {
             Edit::SupportFoot { support, foot: point(plan.site.supports.get(support)?.foot, foot) }
         }
-        Edit::SupportHeight { support, height_m } => {
-            Edit::SupportHeight { support, height_m: number(plan.site.supports.get(support)?.height_m, height_m) }
-        }
+        Edit::SupportHeight { support, height_m } => Edit::SupportHeight {
+            support,
+            height_m: number(plan.site.supports.get(support)?.height_m, height_m),
+        },
         Edit::Entrance(entrance) => Edit::Entrance(point(plan.site.entrance, entrance)),
         Edit::LinkLength { feed, link, length_m } => match plan.feeds.get(feed)?.links.get(link)? {
             Link::Line(piece) => Edit::LinkLength { feed, link, length_m: number(piece.length_m, length_m) },

@@ -4,3 +4,13 @@
 //! Colours come from [`crate::theme::color`]; a widget's sentence is given with [`crate::explain::Explain::explain`],
 //! a canvas says what is under the pointer with [`crate::explain::say`].
 
+pub mod band;
+pub mod feed_path;
+pub mod lanes;
+pub mod marks;
+pub mod sheet;
+pub mod swr_scale;
+mod together;
+pub mod yard;
+
+pub use together::Views;

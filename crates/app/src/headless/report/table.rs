@@ -7,8 +7,17 @@ use station::report::{BandReport, FrequencyReport, Report, Weight};
 use station::units;
 
 /// Column heads: what is printed for each feed at the middle of each band.
-const HEADS: [&str; 9] =
-    ["band", "MHz", "R + jX at feedpoint, Ω", "feed", "SWR at wire", "before unit", "after", "loss", "W to wire"];
+const HEADS: [&str; 9] = [
+    "band",
+    "MHz",
+    "R + jX at feedpoint, Ω",
+    "feed",
+    "SWR at wire",
+    "before unit",
+    "after",
+    "loss",
+    "W to wire",
+];
 
 /// The whole text.
 #[must_use]
@@ -40,11 +49,8 @@ pub fn text(plan: &Plan, report: &Report) -> String {
 
 /// One row per point that stands for something: each channel of a list, else the middle of the band.
 fn rows_of(report: &Report, band: &BandReport) -> Vec<Vec<String>> {
-    let points: Vec<&FrequencyReport> = if is_list(band) {
-        band.points.iter().collect()
-    } else {
-        vec![band.middle_point()]
-    };
+    let points: Vec<&FrequencyReport> =
+        if is_list(band) { band.points.iter().collect() } else { vec![band.middle_point()] };
     let mut rows = Vec::new();
     for (place, point) in points.iter().enumerate() {
         for (feed, seen) in point.feeds.iter().enumerate() {

@@ -1,0 +1,168 @@
+//! Each edit on the demo, and the stops of dragged numbers.
+
+use station::plan::{
+    ConductorChoice, Earth, LineChoice, Link, MatchingUnit, PathPoint, Plan, Point, Transformer, Transmitter,
+};
+
+use super::*;
+use crate::start;
+
+fn after(edit: Edit) -> Plan {
+    let outcome = apply(&start::demo(), &edit).unwrap();
+    assert_eq!(outcome.stop, None, "{edit:?}");
+    outcome.plan
+}
+
+/// The stop and the plan of an edit that goes too far.
+fn stopped(edit: Edit) -> (Plan, String) {
+    let outcome = apply(&start::demo(), &edit).unwrap();
+    validate::check(&outcome.plan).unwrap();
+    (outcome.plan, outcome.stop.unwrap_or_else(|| panic!("{edit:?} went through")))
+}
+
+fn refused(edit: Edit) -> String {
+    apply(&start::demo(), &edit).unwrap_err().to_string()
+}
+
+fn near(a: f64, b: f64) -> bool {
+    (a - b).abs() < 1e-9
+}
+
+#[test]
+fn the_wires_beginning_moves_and_its_end_stays() {
+    let before = start::demo().wires[0].clone();
+    let wire = after(Edit::WireBeginning { wire: 0, start_m: before.start_m + 1.5 }).wires[0].clone();
+    assert!(near(wire.cut_length_m, before.cut_length_m - 1.5));
+    assert!(near(wire.start_m + wire.cut_length_m, before.start_m + before.cut_length_m));
+}
+
+#[test]
+fn the_wires_end_moves_and_its_beginning_stays() {
+    let before = start::demo().wires[0].clone();
+    let wire = after(Edit::CutLength { wire: 0, cut_length_m: 33.0 }).wires[0].clone();
+    assert!(near(wire.cut_length_m, 33.0) && near(wire.start_m, before.start_m));
+    let wire = after(Edit::WireSpan { wire: 0, start_m: 2.0, cut_length_m: 30.0 }).wires[0].clone();
+    assert!(near(wire.cut_length_m, 30.0) && near(wire.start_m, 2.0));
+}
+
+#[test]
+fn the_path_follows() {
+    let plan = after(Edit::PathHeight { wire: 0, point: 1, height_m: 7.5 });
+    assert!(matches!(plan.wires[0].path[1], PathPoint::OnSupport { height_m, .. } if near(height_m, 7.5)));
+    let mut path = start::demo().wires[0].path.clone();
+    path.insert(1, PathPoint::Free(Point::new(24.0, 0.0, 9.0)));
+    assert_eq!(after(Edit::PathPoints { wire: 0, path: path.clone() }).wires[0].path, path);
+    let conductor = ConductorChoice::Own(station::plan::ConductorData {
+        name: "fence wire".to_owned(),
+        diameter_m: 0.0016,
+        conductivity_s_per_m: 6e6,
+        stranding_factor: 1.0,
+        insulation: None,
+        source: String::new(),
+    });
+    assert_eq!(
+        after(Edit::Conductor { wire: 0, conductor: conductor.clone() }).wires[0].conductor,
+        conductor
+    );
+}
+
+#[test]
+fn the_site_follows() {
+    let foot = Point::new(-2.0, 1.0, 0.0);
+    assert_eq!(after(Edit::SupportFoot { support: 0, foot }).site.supports[0].foot, foot);
+    assert!(near(after(Edit::SupportHeight { support: 0, height_m: 14.0 }).site.supports[0].height_m, 14.0));
+    assert_eq!(after(Edit::Earth(Earth::Mirror)).site.earth, Earth::Mirror);
+    let entrance = Point::new(20.0, -5.0, 1.0);
+    assert_eq!(after(Edit::Entrance(entrance)).site.entrance, entrance);
+    assert!(near(after(Edit::FeedFraction(0.33)).feedpoint.fraction, 0.33));
+}
+
+#[test]
+fn the_feeds_follow() {
+    let plan = after(Edit::LinkLength { feed: 1, link: 0, length_m: 21.0 });
+    assert!(matches!(&plan.feeds[1].links[0], Link::Line(piece) if near(piece.length_m, 21.0)));
+    let Link::Line(open) = start::demo().feeds[0].links[0].clone() else {
+        panic!("the demo's first feed is open line")
+    };
+    let plan = after(Edit::LineKind { feed: 1, link: 0, line: open.line.clone() });
+    assert!(matches!(&plan.feeds[1].links[0], Link::Line(piece) if piece.line == open.line));
+    let four = Link::Transformer(Transformer { impedance_ratio: 4.0 });
+    let plan = after(Edit::InsertLink { feed: 1, link: 0, new: four.clone() });
+    assert_eq!((plan.feeds[1].links.len(), &plan.feeds[1].links[0]), (2, &four));
+    assert_eq!(after(Edit::SetLink { feed: 0, link: 1, with: four.clone() }).feeds[0].links[1], four);
+    assert_eq!(after(Edit::RemoveLink { feed: 0, link: 1 }).feeds[0].links.len(), 1);
+}
+
+#[test]
+fn feeds_come_and_go() {
+    let demo = start::demo();
+    let plan = after(Edit::CopyFeed { feed: 0 });
+    assert_eq!(plan.feeds.len(), 3);
+    assert_eq!(plan.feeds[1].links, demo.feeds[0].links);
+    assert_eq!(plan.feeds[1].name, format!("{} 2", demo.feeds[0].name));
+    assert_eq!(after(Edit::RemoveFeed { feed: 0 }).feeds[0], demo.feeds[1]);
+    let mut third = demo.feeds[1].clone();
+    third.name = "spare".to_owned();
+    assert_eq!(after(Edit::AddFeed(third.clone())).feeds[2], third);
+    let plan = after(Edit::RenameFeed { feed: 1, name: "thin coax".to_owned() });
+    assert_eq!(plan.feeds[1].name, "thin coax");
+
+    let mut one = demo;
+    one.feeds.truncate(1);
+    let refusal = apply(&one, &Edit::RemoveFeed { feed: 0 }).unwrap_err();
+    assert_eq!(refusal.to_string(), "a plan needs at least one feed");
+}
+
+#[test]
+fn words_and_lists_follow() {
+    assert_eq!(after(Edit::Name("Dune hut".to_owned())).name, "Dune hut");
+    assert_eq!(after(Edit::Purpose("Practice".to_owned())).purpose, "Practice");
+    assert_eq!(after(Edit::CallSign("Q0X".to_owned())).call_sign, "Q0X");
+    let transmitter = Transmitter { power_w: 25.0, ..start::demo().transmitter };
+    assert_eq!(after(Edit::Transmitter(transmitter.clone())).transmitter, transmitter);
+    let bands = start::demo().bands[..2].to_vec();
+    assert_eq!(after(Edit::Bands(bands.clone())).bands, bands);
+    assert_eq!(after(Edit::Whole(Box::new(start::new_station()))), start::new_station());
+}
+
+#[test]
+fn a_drag_stops_where_the_plan_is_still_sound() {
+    let before = start::demo().wires[0].cut_length_m;
+    let (plan, sentence) = stopped(Edit::CutLength { wire: 0, cut_length_m: 5_000.0 });
+    assert!(plan.wires[0].cut_length_m > before, "it goes as far as it can");
+    assert!(!sentence.is_empty());
+    let (plan, _) = stopped(Edit::CutLength { wire: 0, cut_length_m: -3.0 });
+    assert!(plan.wires[0].cut_length_m > 0.0 && plan.wires[0].cut_length_m < before);
+    let (plan, _) = stopped(Edit::FeedFraction(1.7));
+    assert!(plan.feedpoint.fraction > 0.5);
+    let (plan, _) = stopped(Edit::LinkLength { feed: 0, link: 0, length_m: -4.0 });
+    assert!(matches!(&plan.feeds[0].links[0], Link::Line(piece) if piece.length_m >= 0.0));
+}
+
+#[test]
+fn what_is_not_a_number_is_refused() {
+    for value in [f64::NAN, f64::INFINITY, f64::NEG_INFINITY] {
+        let sentence = refused(Edit::CutLength { wire: 0, cut_length_m: value });
+        assert!(sentence.contains("cut_length_m") && sentence.contains("accepted"), "{sentence}");
+    }
+}
+
+#[test]
+fn impossible_edits_are_refused_with_a_sentence() {
+    assert_eq!(refused(Edit::CutLength { wire: 3, cut_length_m: 5.0 }), "the plan has no wire number 4");
+    assert_eq!(refused(Edit::RemoveLink { feed: 0, link: 9 }), "the plan has no link number 10");
+    let unit = Link::MatchingUnit(MatchingUnit {
+        inductance_max_h: -1.0,
+        capacitance_max_f: 1e-9,
+        coil_q: 200.0,
+        capacitor_q: 1000.0,
+        rating_peak_v: None,
+    });
+    let sentence = refused(Edit::SetLink { feed: 0, link: 1, with: unit });
+    assert!(sentence.contains("inductance_max_h") && sentence.contains("accepted"), "{sentence}");
+    let line = LineChoice::Catalogue("moonbeam".to_owned());
+    assert!(refused(Edit::LineKind { feed: 0, link: 0, line }).contains("moonbeam"));
+    let sentence = refused(Edit::LinkLength { feed: 0, link: 1, length_m: 3.0 });
+    assert_eq!(sentence, "link 2 of this feed is not a piece of line");
+    assert!(!refused(Edit::Bands(Vec::new())).is_empty());
+}
