@@ -1,0 +1,273 @@
+//! Where everything of the Yard stands on the screen. Nothing here paints: text is measured through [`Measure`].
+
+use eframe::egui::{Pos2, Rect, Vec2, pos2, vec2};
+use sheet::tokens::Ink;
+use station::plan::{Point, SupportKind};
+use station::report::BandReport;
+use station::units::Units;
+
+use super::grip::Grip;
+use super::model::Model;
+use super::rulers::{self, Tick};
+use super::side_view::SideView;
+use super::wave::{Size, Wave, WaveMark};
+
+/// Width of the height ruler and height of the distance ruler, px.
+pub const GUTTER: Vec2 = vec2(44.0, 24.0);
+/// Reach of a grip around its middle, px.
+pub const GRIP_PX: f32 = 11.0;
+/// Closest that two grips stand, px.
+const GRIP_GAP_PX: f32 = 20.0;
+/// Space between the plot's edge and what stands at it, px.
+pub const EDGE_PX: f32 = 10.0;
+
+/// Two sizes of text.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[allow(missing_docs)] // The words say it.
+pub enum Type {
+    Small,
+    Body,
+}
+
+/// Measures a line of text.
+pub type Measure<'m> = dyn Fn(&str, Type) -> Vec2 + 'm;
+
+/// A line of text at its place.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Text {
+    /// Where.
+    pub rect: Rect,
+    /// What it says.
+    pub text: String,
+    /// In which ink.
+    pub ink: Ink,
+    /// How large.
+    pub size: Type,
+}
+
+/// A support on the screen.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SupportShape {
+    /// What it is.
+    pub kind: SupportKind,
+    /// Where it stands.
+    pub foot: Pos2,
+    /// Where it ends.
+    pub top: Pos2,
+}
+
+/// A grip on the screen.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Handle {
+    /// What it takes hold of.
+    pub grip: Grip,
+    /// Its name.
+    pub name: String,
+    /// Where the thing is.
+    pub anchor: Pos2,
+    /// Where one takes hold: beside the thing, if another grip is closer to it.
+    pub at: Pos2,
+}
+
+/// What is asked of a layout.
+#[derive(Clone, Copy)]
+pub struct Asking<'a> {
+    /// The chosen band, once there is a report.
+    pub band: Option<&'a BandReport>,
+    /// Index and name of the chosen feed.
+    pub feed: (usize, &'a str),
+    /// Metres or feet.
+    pub units: Units,
+    /// Size of the box of buttons in the upper right corner.
+    pub buttons: Vec2,
+}
+
+/// The Yard on the screen.
+pub struct Layout<'a> {
+    /// Projection; its frame is the plot between the rulers.
+    pub view: SideView,
+    /// Ticks of the height ruler.
+    pub heights: Vec<Tick>,
+    /// Ticks of the distance ruler.
+    pub distances: Vec<Tick>,
+    /// Supports in the plan's order.
+    pub supports: Vec<SupportShape>,
+    /// Ropes.
+    pub ropes: Vec<Vec<Pos2>>,
+    /// Wires.
+    pub wires: Vec<Vec<Pos2>>,
+    /// From the feedpoint to the entrance.
+    pub feed_line: Vec<Pos2>,
+    /// Standing waves, by wire.
+    pub waves: Vec<(usize, Wave<'a>)>,
+    /// Loops and nodes of all waves.
+    pub marks: Vec<WaveMark>,
+    /// Grips in the order of the Tab key.
+    pub handles: Vec<Handle>,
+    /// All text but the rulers'.
+    pub texts: Vec<Text>,
+    /// The legend's line, where there is room for it.
+    pub legend: Option<Rect>,
+    /// Where the buttons go.
+    pub buttons: Rect,
+}
+
+/// The plot between the rulers.
+pub fn plot(frame: Rect) -> Rect {
+    Rect::from_min_max(
+        pos2(frame.left() + GUTTER.x, frame.top()),
+        pos2(frame.right(), frame.bottom() - GUTTER.y),
+    )
+}
+
+/// The part of the plot that a fitted site fills: the rest is for headings, the wave and names below the earth.
+pub fn stage(plot: Rect) -> Rect {
+    let top = 34.0 + wave_size(plot, 0.0).whisker_px;
+    let side = (0.07 * plot.width()).clamp(40.0, 110.0);
+    Rect::from_min_max(
+        pos2(plot.left() + side, plot.top() + top),
+        pos2(plot.right() - side, plot.bottom() - 38.0),
+    )
+}
+
+/// The wave grows a little with the plot.
+fn wave_size(plot: Rect, watts: f64) -> Size {
+    let whisker_px = (0.12 * plot.height()).clamp(24.0, 58.0);
+    Size { ribbon_px: 0.42 * whisker_px, whisker_px, watts }
+}
+
+impl<'a> Layout<'a> {
+    /// Lays everything out.
+    pub fn of(model: &Model<'_>, view: SideView, asking: &Asking<'a>, measure: &Measure<'_>) -> Self {
+        let site = &model.plan.site;
+        let supports = site
+            .supports
+            .iter()
+            .map(|s| SupportShape {
+                kind: s.kind,
+                foot: view.at(s.foot),
+                top: view.at(Point { z_m: s.foot.z_m + s.height_m, ..s.foot }),
+            })
+            .collect();
+        let hung = model.hung.as_ref().ok();
+        let line = |points: &mut dyn Iterator<Item = Point>| points.map(|p| view.at(p)).collect::<Vec<_>>();
+        let ropes = hung.map_or_else(Vec::new, |hung| {
+            hung.ropes.iter().map(|rope| line(&mut rope.points.iter().copied())).collect()
+        });
+        let wires = hung.map_or_else(Vec::new, |hung| {
+            hung.wires.iter().map(|wire| line(&mut wire.vertices.iter().map(|v| v.at))).collect()
+        });
+        let feed_line =
+            hung.map_or_else(Vec::new, |h| slack_line(view.at(h.feedpoint.at), view.at(site.entrance)));
+        let plot = view.frame;
+        let corner = plot.right_top() + vec2(-EDGE_PX - asking.buttons.x, EDGE_PX);
+        let mut layout = Self {
+            heights: rulers::heights(&view, asking.units),
+            distances: rulers::distances(&view, asking.units, model.zero_along_m()),
+            supports,
+            ropes,
+            wires,
+            feed_line,
+            waves: Vec::new(),
+            marks: Vec::new(),
+            handles: Vec::new(),
+            texts: Vec::new(),
+            legend: None,
+            buttons: Rect::from_min_size(corner, asking.buttons),
+            view,
+        };
+        layout.lay_waves(model, asking);
+        layout.lay_handles(model);
+        layout.lay_texts(model, asking, measure);
+        layout
+    }
+
+    fn lay_waves(&mut self, model: &Model<'_>, asking: &Asking<'a>) {
+        let Some(band) = asking.band else { return };
+        let watts = watts_to_wire(band, asking.feed.0);
+        let size = wave_size(self.view.frame, watts);
+        for (index, source) in band.wave.wires.iter().enumerate() {
+            let Some(wire) = model.hung_wire(index) else { continue };
+            let Some(wave) = Wave::along(&self.view, wire, source, size) else { continue };
+            self.marks.extend(wave.marks(&self.view, wire));
+            self.waves.push((index, wave));
+        }
+    }
+
+    fn lay_handles(&mut self, model: &Model<'_>) {
+        let grips = model.grips();
+        // Those that are taken hold of most stand at their things; the others give way.
+        let mut order: Vec<usize> = (0..grips.len()).collect();
+        order.sort_by_key(|&n| rank(grips[n]));
+        let mut places: Vec<Option<(Pos2, Pos2)>> = vec![None; grips.len()];
+        let mut taken: Vec<Pos2> = Vec::with_capacity(grips.len());
+        for n in order {
+            let Some(place) = model.place(grips[n]) else { continue };
+            let anchor = self.view.at(place);
+            let away = way_out(model, &self.view, grips[n]);
+            let mut at = anchor;
+            let mut tries = 0;
+            while tries < 5 && taken.iter().any(|t| t.distance(at) < GRIP_GAP_PX - 0.5) {
+                at += away * GRIP_GAP_PX;
+                tries += 1;
+            }
+            taken.push(at);
+            places[n] = Some((anchor, at));
+        }
+        let handle = |(grip, place): (Grip, Option<(Pos2, Pos2)>)| {
+            place.map(|(anchor, at)| Handle { grip, name: model.name(grip), anchor, at })
+        };
+        self.handles = grips.into_iter().zip(places).filter_map(handle).collect();
+    }
+}
+
+/// Who stands at its thing and who gives way.
+fn rank(grip: Grip) -> u8 {
+    match grip {
+        Grip::WireBeginning { .. } | Grip::WireEnd { .. } => 0,
+        Grip::Feedpoint => 1,
+        Grip::PathPoint { .. } => 2,
+        Grip::Entrance => 3,
+        Grip::SupportFoot { .. } => 4,
+        Grip::SupportTop { .. } => 5,
+        Grip::NewPoint { .. } => 6,
+    }
+}
+
+/// The direction in which a grip gives way: fixings at the ends of a path outward, the feedpoint down, others up.
+fn way_out(model: &Model<'_>, view: &SideView, grip: Grip) -> Vec2 {
+    let up = vec2(0.0, -1.0);
+    match grip {
+        Grip::PathPoint { wire, point } => {
+            let path = model.paths.get(wire).map(Vec::as_slice).unwrap_or_default();
+            let (Some(first), Some(last)) = (path.first(), path.last()) else { return up };
+            let outward = (view.at(last.at).x - view.at(first.at).x).signum();
+            match point {
+                0 => vec2(-outward, 0.0),
+                p if p + 1 == path.len() => vec2(outward, 0.0),
+                _ => up,
+            }
+        }
+        Grip::Feedpoint | Grip::Entrance | Grip::SupportFoot { .. } => -up,
+        _ => up,
+    }
+}
+
+/// A line that hangs down from the feedpoint and comes in level at the entrance.
+fn slack_line(from: Pos2, to: Pos2) -> Vec<Pos2> {
+    const STEPS: u16 = 24;
+    let (down, level) =
+        (pos2(from.x, from.y + 0.7 * (to.y - from.y)), pos2(from.x + 0.45 * (to.x - from.x), to.y));
+    (0..=STEPS)
+        .map(|n| {
+            let t = f32::from(n) / f32::from(STEPS);
+            let (a, b, c) = (from.lerp(down, t), down.lerp(level, t), level.lerp(to, t));
+            a.lerp(b, t).lerp(b.lerp(c, t), t)
+        })
+        .collect()
+}
+
+/// Watts that reach the wire through a feed at the band's middle.
+pub fn watts_to_wire(band: &BandReport, feed: usize) -> f64 {
+    band.middle_point().feeds.get(feed).map_or(0.0, |f| f.watts_to_wire)
+}

@@ -1,0 +1,369 @@
+//! The standing wave on a wire, in pixels: ribbon, grain and whiskers at a phase of the RF cycle, their envelope, and
+//! the read-out of any place. It only scales and projects what the report holds.
+
+use eframe::egui::{Pos2, Vec2, vec2};
+use num_complex::Complex64;
+use station::hang::HungWire;
+use station::report::{Mark, WireWave};
+
+use super::side_view::SideView;
+
+/// Distance between two samples of the wire, px.
+const SAMPLE_PX: f32 = 4.0;
+/// Most samples of a wire, however far one zooms in.
+const MOST_SAMPLES: usize = 900;
+/// A bend is rounded for ribbon and whiskers over this length on either side, px.
+const ROUNDING_PX: f32 = 7.0;
+/// Distance between two whiskers, px.
+const WHISKER_GAP_PX: f32 = 8.0;
+/// Distance between two grains at rest, px.
+const GRAIN_GAP_PX: f32 = 17.0;
+/// How far the largest current carries its grains to and fro, px.
+const GRAIN_SWING_PX: f32 = 7.0;
+/// The thinnest ribbon that shows its grain, half of it, px.
+const GRAIN_HALF_PX: f32 = 2.5;
+
+/// A peak phasor.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct Phasor {
+    re: f32,
+    im: f32,
+}
+
+impl From<Complex64> for Phasor {
+    fn from(z: Complex64) -> Self {
+        Self { re: z.re as f32, im: z.im as f32 }
+    }
+}
+
+impl Phasor {
+    /// The value now: Re(A·exp(jφ)).
+    fn now(self, phase: Phase) -> f32 {
+        self.re * phase.cos - self.im * phase.sin
+    }
+
+    /// What has flowed, in units of the peak: the integral over time, Re(A·exp(jφ)/j).
+    fn flowed(self, phase: Phase) -> f32 {
+        self.re * phase.sin + self.im * phase.cos
+    }
+
+    fn peak(self) -> f32 {
+        self.re.hypot(self.im)
+    }
+
+    fn toward(self, other: Self, share: f32) -> Self {
+        Self { re: self.re + share * (other.re - self.re), im: self.im + share * (other.im - self.im) }
+    }
+}
+
+/// A moment of the RF cycle.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Phase {
+    cos: f32,
+    sin: f32,
+}
+
+impl Phase {
+    /// From degrees.
+    pub fn degrees(phase_deg: f64) -> Self {
+        let (sin, cos) = phase_deg.to_radians().sin_cos();
+        Self { cos: cos as f32, sin: sin as f32 }
+    }
+}
+
+/// A place of the wire.
+#[derive(Clone, Copy, Debug)]
+struct Sample {
+    at: Pos2,
+    /// Away from the wire, on the side of plus.
+    off: Vec2,
+    current: Phasor,
+    voltage: Phasor,
+}
+
+/// A loop or a node on the screen.
+#[derive(Clone, Copy, Debug)]
+pub struct WaveMark {
+    /// Its place on the wire.
+    pub at: Pos2,
+    /// Away from the wire, on the side of plus.
+    pub off: Vec2,
+    /// What it is and where.
+    pub mark: Mark,
+    /// What stands there.
+    pub reading: Reading,
+}
+
+/// What stands at a place of the wire: peak values at the watts that reach it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Reading {
+    /// Distance from the wire's beginning, m.
+    pub arc_m: f64,
+    /// Peak current, A.
+    pub current_a: f64,
+    /// Peak potential, V; indicative.
+    pub voltage_v: f64,
+}
+
+/// How large the wave is drawn, and for how many watts.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Size {
+    /// Half the thickness of the ribbon at the largest current, px.
+    pub ribbon_px: f32,
+    /// Length of the longest whisker, px.
+    pub whisker_px: f32,
+    /// Watts that reach the wire, W.
+    pub watts: f64,
+}
+
+/// The standing wave of one wire, ready for any phase.
+pub struct Wave<'a> {
+    source: &'a WireWave,
+    /// Arc of the report over arc of the wire as it hangs now: while an answer is on its way they differ a little.
+    stretch: f64,
+    amplitude: f64,
+    step_px: f32,
+    samples: Vec<Sample>,
+    peak_a: f32,
+    peak_v: f32,
+    size: Size,
+}
+
+/// Both edges of the ribbon.
+#[derive(Clone, Debug, Default)]
+pub struct Ribbon {
+    /// On the side of plus.
+    pub upper: Vec<Pos2>,
+    /// On the side of minus.
+    pub lower: Vec<Pos2>,
+}
+
+impl<'a> Wave<'a> {
+    /// Lays a wave along a wire. `None` where there is nothing to show.
+    pub fn along(view: &SideView, wire: &HungWire, source: &'a WireWave, size: Size) -> Option<Self> {
+        let count = source.arc_m.len();
+        if count < 2 || source.current_a.len() != count || source.potential_v.len() != count {
+            return None;
+        }
+        let track = Track::of(view, wire)?;
+        let last_arc_m = *source.arc_m.last().filter(|&&m| m > 0.0)?;
+        let mut wave = Self {
+            source,
+            stretch: last_arc_m / wire.length_m(),
+            amplitude: size.watts.max(0.0).sqrt(),
+            step_px: 0.0,
+            samples: Vec::new(),
+            peak_a: 0.0,
+            peak_v: 0.0,
+            size,
+        };
+        let count = ((track.length_px() / SAMPLE_PX).ceil() as usize).clamp(8, MOST_SAMPLES);
+        wave.step_px = track.length_px() / count as f32;
+        wave.samples.reserve(count + 1);
+        for n in 0..=count {
+            let run_px = n as f32 * wave.step_px;
+            let (at, arc_m) = track.at(run_px);
+            let (current, voltage) = wave.phasors(arc_m);
+            wave.samples.push(Sample { at, off: track.off(run_px), current, voltage });
+        }
+        let peak = |values: &[Complex64]| values.iter().map(|z| z.norm()).fold(0.0, f64::max) as f32;
+        wave.peak_a = peak(&source.current_a);
+        wave.peak_v = peak(&source.potential_v);
+        Some(wave)
+    }
+
+    /// Current and voltage for 1 W at a distance from the wire's beginning.
+    fn phasors(&self, arc_m: f64) -> (Phasor, Phasor) {
+        let arcs = &self.source.arc_m;
+        let arc_m = arc_m * self.stretch;
+        let after = arcs.partition_point(|&m| m < arc_m).clamp(1, arcs.len() - 1);
+        let (from_m, to_m) = (arcs[after - 1], arcs[after]);
+        let share = if to_m > from_m { ((arc_m - from_m) / (to_m - from_m)).clamp(0.0, 1.0) } else { 0.0 };
+        let between = |values: &[Complex64]| {
+            Phasor::from(values[after - 1]).toward(Phasor::from(values[after]), share as f32)
+        };
+        (between(&self.source.current_a), between(&self.source.potential_v))
+    }
+
+    /// The read-out at a distance from the wire's beginning.
+    pub fn read(&self, arc_m: f64) -> Reading {
+        let (current, voltage) = self.phasors(arc_m);
+        Reading {
+            arc_m,
+            current_a: f64::from(current.peak()) * self.amplitude,
+            voltage_v: f64::from(voltage.peak()) * self.amplitude,
+        }
+    }
+
+    /// The read-outs at the wire's beginning and end.
+    pub fn at_ends(&self) -> (Reading, Reading) {
+        let last_m = self.source.arc_m[self.source.arc_m.len() - 1] / self.stretch;
+        (self.read(0.0), self.read(last_m))
+    }
+
+    /// Loops and nodes.
+    pub fn marks(&self, view: &SideView, wire: &HungWire) -> Vec<WaveMark> {
+        let Some(track) = Track::of(view, wire) else { return Vec::new() };
+        let mark = |&mark: &Mark| {
+            let arc_m = mark.arc_m / self.stretch;
+            let run_px = track.run_px(arc_m);
+            let at = view.at(wire.point_at(arc_m));
+            WaveMark { at, off: track.off(run_px), mark, reading: self.read(arc_m) }
+        };
+        self.source.marks.iter().map(mark).collect()
+    }
+
+    fn ribbon_of(&self, half_px: impl Fn(&Sample) -> f32) -> Ribbon {
+        let mut ribbon = Ribbon::default();
+        ribbon.upper.reserve(self.samples.len());
+        ribbon.lower.reserve(self.samples.len());
+        for sample in &self.samples {
+            let offset = sample.off * half_px(sample);
+            ribbon.upper.push(sample.at + offset);
+            ribbon.lower.push(sample.at - offset);
+        }
+        ribbon
+    }
+
+    fn ribbon_scale(&self) -> f32 {
+        if self.peak_a > 0.0 { self.size.ribbon_px / self.peak_a } else { 0.0 }
+    }
+
+    fn whisker_scale(&self) -> f32 {
+        if self.peak_v > 0.0 { self.size.whisker_px / self.peak_v } else { 0.0 }
+    }
+
+    /// The ribbon at a phase: as thick as the current is now.
+    pub fn ribbon(&self, phase: Phase) -> Ribbon {
+        let scale = self.ribbon_scale();
+        self.ribbon_of(|s| s.current.now(phase).abs() * scale)
+    }
+
+    /// The ribbon at its thickest everywhere.
+    pub fn current_envelope(&self) -> Ribbon {
+        let scale = self.ribbon_scale();
+        self.ribbon_of(|s| s.current.peak() * scale)
+    }
+
+    /// How far the whiskers reach, on both sides.
+    pub fn voltage_envelope(&self) -> Ribbon {
+        let scale = self.whisker_scale();
+        self.ribbon_of(|s| s.voltage.peak() * scale)
+    }
+
+    /// The larger of both envelopes at each sample: what labels keep out of.
+    pub fn outline(&self) -> Ribbon {
+        let (ribbon, whisker) = (self.ribbon_scale(), self.whisker_scale());
+        self.ribbon_of(|s| (s.current.peak() * ribbon).max(s.voltage.peak() * whisker))
+    }
+
+    /// The whiskers at a phase, each from the wire to its tip.
+    pub fn whiskers(&self, phase: Phase) -> Vec<[Pos2; 2]> {
+        let scale = self.whisker_scale();
+        let tip = |run_px: f32| {
+            let s = self.sample(run_px);
+            [s.at, s.at + s.off * (s.voltage.now(phase) * scale)]
+        };
+        self.spaced(WHISKER_GAP_PX).map(tip).filter(|[foot, tip]| foot.distance_sq(*tip) > 0.5).collect()
+    }
+
+    /// The grain at a phase: chevrons that point the way the current flows and are carried along by it. They crowd
+    /// where the charge is plus, and thin out where it is minus.
+    pub fn grain(&self, phase: Phase) -> Vec<[Pos2; 3]> {
+        let ribbon = self.ribbon_scale();
+        let swing = if self.peak_a > 0.0 { GRAIN_SWING_PX / self.peak_a } else { 0.0 };
+        let chevron = |rest_px: f32| {
+            let run_px = rest_px + self.sample(rest_px).current.flowed(phase) * swing;
+            let s = self.sample(run_px);
+            let now = s.current.now(phase) * ribbon;
+            if now.abs() < GRAIN_HALF_PX {
+                return None;
+            }
+            // A quarter turn from the side of plus back to the direction of the wire's end.
+            let forward = self.forward(run_px) * now.signum();
+            let wing = s.off * (0.5 * now.abs()).min(7.0);
+            let back = forward * (0.45 * now.abs()).clamp(1.5, 5.0);
+            Some([s.at - back + wing, s.at + back, s.at - back - wing])
+        };
+        self.spaced(GRAIN_GAP_PX).filter_map(chevron).collect()
+    }
+
+    /// Evenly spaced places along the wire, as far from its beginning as from its end.
+    fn spaced(&self, gap_px: f32) -> impl Iterator<Item = f32> {
+        let length_px = self.step_px * (self.samples.len() - 1) as f32;
+        let count = (length_px / gap_px).floor() as usize;
+        let first_px = 0.5 * (length_px - count as f32 * gap_px);
+        (0..=count).map(move |n| first_px + n as f32 * gap_px)
+    }
+
+    fn sample(&self, run_px: f32) -> Sample {
+        let last = self.samples.len() - 1;
+        let place = (run_px / self.step_px).clamp(0.0, last as f32);
+        let before = (place as usize).min(last - 1);
+        let (a, b, share) = (self.samples[before], self.samples[before + 1], place - before as f32);
+        Sample {
+            at: a.at.lerp(b.at, share),
+            off: a.off + (b.off - a.off) * share,
+            current: a.current.toward(b.current, share),
+            voltage: a.voltage.toward(b.voltage, share),
+        }
+    }
+
+    fn forward(&self, run_px: f32) -> Vec2 {
+        (self.sample(run_px + SAMPLE_PX).at - self.sample(run_px - SAMPLE_PX).at).normalized()
+    }
+}
+
+/// The wire's line on the screen, measured in pixels.
+struct Track {
+    corners: Vec<(Pos2, f64)>,
+    runs_px: Vec<f32>,
+    /// 1 or −1, so that plus is up on a wire that runs to the right or to the left.
+    side: f32,
+}
+
+impl Track {
+    fn of(view: &SideView, wire: &HungWire) -> Option<Self> {
+        let corners: Vec<(Pos2, f64)> = wire.vertices.iter().map(|v| (view.at(v.at), v.arc_m)).collect();
+        let mut runs_px = Vec::with_capacity(corners.len());
+        let mut run_px = 0.0;
+        for (n, (at, _)) in corners.iter().enumerate() {
+            if n > 0 {
+                run_px += corners[n - 1].0.distance(*at);
+            }
+            runs_px.push(run_px);
+        }
+        let (first, last) = (corners.first()?.0, corners.last()?.0);
+        let side = if last.x < first.x - 0.5 { -1.0 } else { 1.0 };
+        (run_px > 1.0 && wire.length_m() > 0.0).then_some(Self { corners, runs_px, side })
+    }
+
+    fn length_px(&self) -> f32 {
+        self.runs_px[self.runs_px.len() - 1]
+    }
+
+    /// Position and arc at a distance along the line.
+    fn at(&self, run_px: f32) -> (Pos2, f64) {
+        let run_px = run_px.clamp(0.0, self.length_px());
+        let after = self.runs_px.partition_point(|&r| r < run_px).clamp(1, self.runs_px.len() - 1);
+        let ((from, from_m), (to, to_m)) = (self.corners[after - 1], self.corners[after]);
+        let piece_px = self.runs_px[after] - self.runs_px[after - 1];
+        let share = if piece_px > 0.0 { (run_px - self.runs_px[after - 1]) / piece_px } else { 0.0 };
+        (from.lerp(to, share), from_m + f64::from(share) * (to_m - from_m))
+    }
+
+    /// The distance along the line of an arc.
+    fn run_px(&self, arc_m: f64) -> f32 {
+        let after = self.corners.partition_point(|c| c.1 < arc_m).clamp(1, self.corners.len() - 1);
+        let (from_m, to_m) = (self.corners[after - 1].1, self.corners[after].1);
+        let share = if to_m > from_m { ((arc_m - from_m) / (to_m - from_m)).clamp(0.0, 1.0) } else { 0.0 };
+        self.runs_px[after - 1] + share as f32 * (self.runs_px[after] - self.runs_px[after - 1])
+    }
+
+    /// Away from the line on the side of plus; bends are rounded.
+    fn off(&self, run_px: f32) -> Vec2 {
+        let chord = self.at(run_px + ROUNDING_PX).0 - self.at(run_px - ROUNDING_PX).0;
+        let along = chord.normalized();
+        vec2(along.y, -along.x) * self.side
+    }
+}
