@@ -90,17 +90,17 @@ impl Ink {
             Self::Current => (0xb3_48_26, 0xf0_8a_5d, 0x9c_3a_1a),
             Self::Voltage => (0x5b_45_a8, 0xa9_97_f0, 0x4a_36_92),
             Self::FeedA => (0x1d_5f_a3, 0x6c_b0_f0, 0x14_4f_8c),
-            Self::FeedB => (0xb0_7a_05, 0xe8_b9_45, 0x9a_6a_00),
-            Self::FeedC => (0x3f_7d_52, 0x86_c8_98, 0x2f_66_40),
+            Self::FeedB => (0x8f_63_00, 0xe8_b9_45, 0x9a_6a_00),
+            Self::FeedC => (0x2f_63_40, 0x86_c8_98, 0x2f_66_40),
             Self::Resistance => (0x2b_35_3a, 0xe0_db_cf, 0x10_10_10),
-            Self::Reactance => (0x7a_6f_8c, 0xb7_aa_cc, 0x6a_60_7a),
+            Self::Reactance => (0x6c_61_80, 0xb7_aa_cc, 0x6a_60_7a),
             Self::Limit => (0xb4_1e_3c, 0xff_7a_90, 0xa0_10_30),
             Self::Works => (0x1f_70_46, 0x6c_cf_94, 0x1a_63_3c),
-            Self::WorksWithUnit => (0x2f_74_8a, 0x74_bf_d4, 0x22_5f_74),
-            Self::TooLossy => (0xa8_69_00, 0xe8_ab_4a, 0x8a_55_00),
+            Self::WorksWithUnit => (0x2a_6a_7e, 0x74_bf_d4, 0x22_5f_74),
+            Self::TooLossy => (0x8f_5a_00, 0xe8_ab_4a, 0x8a_55_00),
             Self::Overstressed => (0xb0_3c_1e, 0xff_8d_66, 0x94_2c_12),
             Self::OutOfRange => (0xa0_1e_44, 0xff_80_9c, 0x86_12_34),
-            Self::Caution => (0xa8_52_00, 0xff_b2_5c, 0x8a_40_00),
+            Self::Caution => (0x9c_4b_00, 0xff_b2_5c, 0x8a_40_00),
         }
     }
 
