@@ -29,12 +29,12 @@ impl LineConstants {
 
     /// From series impedance (Ω/m) and shunt admittance (S/m) per metre.
     pub(super) fn from_per_metre(series_ohm_per_m: Complex64, shunt_s_per_m: Complex64) -> Self {
-        // γ = √(Z′Y′), Z₀ = √(Z′/Y′); the principal root has Re ≥ 0 for both, since both arguments stay
-        // off the negative real axis as long as there is any capacitance.
-        Self {
-            z0_ohm: (series_ohm_per_m / shunt_s_per_m).sqrt(),
-            gamma_per_m: (series_ohm_per_m * shunt_s_per_m).sqrt(),
-        }
+        // Z₀ = √(Z′/Y′), γ = √(Z′Y′) = Z₀·Y′. Both Z′ and Y′ lie between j and 1 + j, so Z′/Y′ lies in the
+        // right half-plane, where √(x + jy) = p + j·y/2p with p = √((|·| + x)/2) has no cancellation.
+        let square = series_ohm_per_m / shunt_s_per_m;
+        let re = (0.5 * (square.norm_sqr().sqrt() + square.re)).sqrt();
+        let z0_ohm = Complex64::new(re, square.im / (2.0 * re));
+        Self { z0_ohm, gamma_per_m: z0_ohm * shunt_s_per_m }
     }
 }
 

@@ -53,7 +53,9 @@ impl State {
     /// Standing-wave ratio on a real reference (Ω); infinite for a load that takes no power.
     #[must_use]
     pub fn swr(self, reference_ohm: f64) -> f64 {
-        super::swr_of_gamma(self.gamma(reference_ohm).norm())
+        // |Γ| = |V − R·I|/|V + R·I|, without the division of complex numbers
+        let i = self.current_a * reference_ohm;
+        super::swr_of_gamma(((self.voltage_v - i).norm_sqr() / (self.voltage_v + i).norm_sqr()).sqrt())
     }
 
     /// The same state with voltage and current times a real factor.
