@@ -98,7 +98,7 @@ const MOST_WIRES: usize = 16;
 const MOST_POINTS: usize = 32;
 const MOST_SUPPORTS: usize = 64;
 const MOST_FEEDS: usize = 6;
-const MOST_LINKS: usize = 12;
+pub(crate) const MOST_LINKS: usize = 12;
 const COORDINATE_M: RangeInclusive<f64> = -5_000.0..=5_000.0;
 const HEIGHT_M: RangeInclusive<f64> = 0.0..=300.0;
 

@@ -9,6 +9,7 @@ use super::chain::{Chain, ChainLink};
 use super::judge::overstress;
 use crate::plan::Transmitter;
 use crate::report::{FeedReport, LinkReport, ProfilePoint, Seen, Sense, Setting, VerdictKind};
+use crate::validate;
 
 /// Places along each line of a feed at which the profile is given.
 const PROFILE_STEPS: u32 = 48;
@@ -27,11 +28,22 @@ pub(super) struct Passage<'a> {
 
 /// The states between the links, from the feedpoint to the transmitter, and the matching unit where it is used.
 struct Carried {
-    /// One more than there are links.
-    states: Vec<State>,
+    states: States,
     unit: Option<UnitInUse>,
     shortfall: Option<NetworkError>,
     before_unit: Seen,
+}
+
+/// One state more than there are links. On the stack: this is made for every feed at every frequency.
+struct States {
+    places: [State; validate::MOST_LINKS + 1],
+    links: usize,
+}
+
+impl States {
+    fn at_transmitter(&self) -> State {
+        self.places[self.links]
+    }
 }
 
 #[derive(Clone, Copy)]
@@ -51,7 +63,7 @@ impl Passage<'_> {
         let scale = scale_to(&carried.states, given_w);
         let links: Vec<LinkReport> =
             (0..self.chain.links.len()).map(|link| self.link_report(&carried, link, scale)).collect();
-        let watts_to_wire = carried.states[0].power_w() * scale * scale;
+        let watts_to_wire = carried.states.places[0].power_w() * scale * scale;
         FeedReport {
             at_feedpoint: self.at_feedpoint(),
             before_unit: carried.before_unit,
@@ -74,7 +86,7 @@ impl Passage<'_> {
         let scale = scale_to(&carried.states, given_w);
         let mut profile = Vec::new();
         let mut from_wire_m = 0.0;
-        for (link, at_load) in self.chain.links.iter().zip(&carried.states) {
+        for (link, at_load) in self.chain.links.iter().zip(&carried.states.places) {
             let ChainLink::Line { pieces, .. } = link else { continue };
             let piece = &pieces[self.index];
             for step in 0..=PROFILE_STEPS {
@@ -92,14 +104,12 @@ impl Passage<'_> {
     }
 
     fn carry(&self) -> Carried {
-        let load = State::of_load(self.feedpoint_ohm);
         let links = &self.chain.links;
-        let mut states = Vec::with_capacity(links.len() + 1);
-        states.push(load);
-        for link in links {
-            let last = states[states.len() - 1];
-            states.push(self.past(link, last));
+        let mut places = [State::of_load(self.feedpoint_ohm); validate::MOST_LINKS + 1];
+        for (index, link) in links.iter().enumerate() {
+            places[index + 1] = self.past(link, places[index]);
         }
+        let states = States { places, links: links.len() };
         let before_unit = self.seen_by_transmitter(&states);
         let mut carried = Carried { states, unit: None, shortfall: None, before_unit };
         if before_unit.swr > self.transmitter.swr_limit {
@@ -113,18 +123,19 @@ impl Passage<'_> {
         let Some((at, parts)) = self.chain.unit() else { return };
         let problem = LProblem {
             frequency_hz: self.frequency_hz,
-            load_ohm: carried.states[at].impedance_ohm(),
+            load_ohm: carried.states.places[at].impedance_ohm(),
             target_ohm: self.chain.wanted_ohm(at + 1, self.transmitter.resistance_ohm),
             parts,
         };
         match l_network(&problem) {
             Ok(found) => {
-                let passage =
-                    LNetwork::new(&parts, found.setting, self.frequency_hz).toward_source(carried.states[at]);
-                carried.states[at + 1] = passage.at_source;
+                let passage = LNetwork::new(&parts, found.setting, self.frequency_hz)
+                    .toward_source(carried.states.places[at]);
+                carried.states.places[at + 1] = passage.at_source;
                 carried.unit = Some(UnitInUse { setting: setting(found.setting), stress: passage.stress });
                 for link in at + 1..self.chain.links.len() {
-                    carried.states[link + 1] = self.past(&self.chain.links[link], carried.states[link]);
+                    carried.states.places[link + 1] =
+                        self.past(&self.chain.links[link], carried.states.places[link]);
                 }
             }
             Err(error) => carried.shortfall = Some(error),
@@ -148,12 +159,12 @@ impl Passage<'_> {
         seen(State::of_load(self.feedpoint_ohm), reference_ohm)
     }
 
-    fn seen_by_transmitter(&self, states: &[State]) -> Seen {
-        seen(states[states.len() - 1], self.transmitter.resistance_ohm)
+    fn seen_by_transmitter(&self, states: &States) -> Seen {
+        seen(states.at_transmitter(), self.transmitter.resistance_ohm)
     }
 
     fn link_report(&self, carried: &Carried, link: usize, scale: f64) -> LinkReport {
-        let (at_load, at_source) = (carried.states[link], carried.states[link + 1]);
+        let (at_load, at_source) = (carried.states.places[link], carried.states.places[link + 1]);
         let (peak_v, peak_a) = match &self.chain.links[link] {
             ChainLink::Line { pieces, .. } => {
                 let peaks = pieces[self.index].peaks_between(at_load, at_source);
@@ -202,8 +213,8 @@ fn accepted_share(swr: f64) -> f64 {
 }
 
 /// Factor on all voltages and currents that makes the transmitter give `given_w`.
-fn scale_to(states: &[State], given_w: f64) -> f64 {
-    let power_w = states[states.len() - 1].power_w();
+fn scale_to(states: &States, given_w: f64) -> f64 {
+    let power_w = states.at_transmitter().power_w();
     if power_w > 0.0 { (given_w / power_w).sqrt() } else { 0.0 }
 }
 
