@@ -7,8 +7,10 @@
 //! * [`BandTerms`]: the slow part of the impedance, interpolated over a band.
 //! * [`HarmonicWire`]: resonant lengths.
 //!
-//! Accuracy of the sketch against full solutions of thin wires in free space: resonant length within 1 %, resistance
-//! near odd resonances within 10 %, |Z| near even ones within 30 %. It stands in while the full model computes.
+//! Accuracy of the sketch against full solutions of wires of 500 diameters or more in free space: resonant length of
+//! the half wave within 0.4 %, its resistance 10 % low; Z within 15 % near odd resonances, 40 % near even ones, 30 % fed
+//! off the centre (the resistance alone up to 60 % high where an end is within a twentieth of the length). At 100
+//! diameters the half wave's resistance is a sixth low. The sketch stands in while the full model computes.
 
 mod band;
 mod emf;
