@@ -1,5 +1,6 @@
 //! What the feed paths say: each feed as a chain from the transmitter to the wire, with the watts that are left.
 
+use station::catalogue;
 use station::plan::{Feed, LineChoice, Link};
 use station::report::{FeedReport, LinkReport, VerdictKind};
 use station::units::{self, Units};
@@ -112,7 +113,9 @@ pub fn link_name(link: &Link) -> String {
 #[must_use]
 pub fn line_name(line: &LineChoice) -> String {
     match line {
-        LineChoice::Catalogue(id) => id.clone(),
+        LineChoice::Catalogue(id) => {
+            catalogue::line_entry(id).map_or_else(|_| id.clone(), |e| e.data.name.clone())
+        }
         LineChoice::Own(data) => data.name.clone(),
     }
 }
@@ -169,6 +172,12 @@ impl Column<'_> {
 }
 
 impl Block {
+    /// The first words of the name: "Open wire" of "Open wire, 2 mm copper, 150 mm apart".
+    #[must_use]
+    pub fn short_name(&self) -> &str {
+        self.name.split(',').next().unwrap_or(&self.name)
+    }
+
     /// The link in words, for screen readers and hover.
     #[must_use]
     pub fn sentence(&self) -> String {

@@ -123,7 +123,11 @@ pub(super) fn block(ui: &egui::Ui, view: &View<'_>, place: usize, response: &Res
     frame(ui, rect, view, response, is_picked);
     let style = ui.style();
     let body = piece(TextStyle::Body.resolve(style), color(Ink::Text, ground));
-    text_in(ui.painter(), layout::name_line(rect), LayoutJob::single_section(block.name.clone(), body));
+    text_in(
+        ui.painter(),
+        layout::name_line(rect),
+        LayoutJob::single_section(block.short_name().to_owned(), body),
+    );
 
     let small = piece(TextStyle::Small.resolve(style), color(Ink::Text, ground));
     let mut texts = vec![block.detail.clone()];

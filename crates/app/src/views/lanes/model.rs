@@ -54,25 +54,28 @@ pub struct Lane<'a> {
 /// The lanes in the plan's order.
 #[must_use]
 pub fn lanes<'a>(snapshot: &Snapshot<'a>) -> Vec<Lane<'a>> {
-    let is_list = |band: usize| matches!(snapshot.plan.bands.get(band), Some(b) if matches!(b.range, BandRange::Channels { .. }));
     if let Some(report) = snapshot.report {
-        let lane = |(band, found): (usize, &'a BandReport)| Lane {
-            band,
-            name: &found.name,
-            edges_hz: (found.low_hz, found.high_hz),
-            channels: is_list(band),
-            report: Some(found),
-        };
-        return report.bands.iter().enumerate().map(lane).collect();
+        return report
+            .bands
+            .iter()
+            .enumerate()
+            .map(|(band, found)| Lane::of(snapshot, band, found))
+            .collect();
     }
     let lane = |(band, planned): (usize, &'a station::plan::Band)| Lane {
         band,
         name: &planned.name,
         edges_hz: planned.range.edges_hz(),
-        channels: is_list(band),
+        channels: is_list(snapshot, band),
         report: None,
     };
     snapshot.plan.bands.iter().enumerate().map(lane).collect()
+}
+
+/// Whether the plan lists channels there.
+fn is_list(snapshot: &Snapshot<'_>, band: usize) -> bool {
+    let planned = snapshot.plan.bands.get(band);
+    planned.is_some_and(|b| matches!(b.range, BandRange::Channels { .. }))
 }
 
 /// Puts the lanes in order, pinned ones (by name) first. Equal ones keep the plan's order.
@@ -94,6 +97,13 @@ pub fn sort(lanes: &mut [Lane<'_>], order: Order, pinned: &BTreeSet<String>, fee
 }
 
 impl<'a> Lane<'a> {
+    /// A band of a report.
+    #[must_use]
+    pub fn of(snapshot: &Snapshot<'_>, band: usize, report: &'a BandReport) -> Self {
+        let edges_hz = (report.low_hz, report.high_hz);
+        Self { band, name: &report.name, edges_hz, channels: is_list(snapshot, band), report: Some(report) }
+    }
+
     /// A feed at the frequency that stands for the band.
     #[must_use]
     pub fn middle_feed(&self, feed: usize) -> Option<&'a FeedReport> {
