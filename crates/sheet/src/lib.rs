@@ -10,6 +10,7 @@ mod page;
 pub mod pdf;
 mod request;
 pub mod scene;
+pub mod swr_scale;
 pub mod text;
 pub mod tokens;
 

@@ -274,7 +274,7 @@ impl TextStyle {
     /// Distance between base lines, mm.
     #[must_use]
     pub fn leading_mm(self) -> f64 {
-        self.size_mm() * 1.2
+        self.size_mm() * 1.16
     }
 
     /// Weight.
@@ -295,7 +295,7 @@ pub mod space {
     /// Paper's edge to the text: printers reach it, and a hole punch misses it.
     pub const MARGIN: f64 = 12.0;
     /// Between sections.
-    pub const SECTION: f64 = 4.0;
+    pub const SECTION: f64 = 3.0;
     /// Between columns of text.
     pub const GUTTER: f64 = 5.0;
     /// Between a rule and the text at it, and between text and the edge of its cell.

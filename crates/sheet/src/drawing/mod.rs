@@ -1,21 +1,123 @@
-//! The site in side view.
+//! The site in side view, to scale, with the dimensions that a crew needs.
+
+mod dimensions;
+mod elevation;
+mod labels;
+mod scale;
+mod site;
+
+pub use elevation::{Elevation, Fastening, Piece, Place, Plane, SupportSide};
+pub use scale::{Ratio, Sight};
 
 use station::hang::Hung;
-use station::plan::Plan;
+use station::plan::{Link, Plan};
 use station::units::Units;
 
-use crate::page::{Block, Section};
+use crate::model::link_mark;
+use crate::scene::{Frame, Scene, Spot};
+use labels::Labels;
 
-/// Least and most height of the drawing on the sheet, mm.
-pub(crate) const LEAST_HEIGHT_MM: f64 = 55.0;
-/// See [`LEAST_HEIGHT_MM`].
-pub(crate) const MOST_HEIGHT_MM: f64 = 90.0;
+/// Room beside the outermost supports for heights and signs, mm.
+const SIDE_MM: f64 = 13.0;
+/// Room over the highest support, mm.
+const OVER_MM: f64 = 6.5;
 
-pub(crate) fn section(_plan: &Plan, _hung: &Hung, _units: Units, _width_mm: f64, height_mm: f64) -> Section {
-    Section {
-        title: "Site, from the side".to_owned(),
-        aside: String::new(),
-        columns: None,
-        blocks: vec![Block::empty(height_mm - 12.0)],
+/// How large the drawing may be.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Size {
+    /// Width, mm.
+    pub width_mm: f64,
+    /// Most height, mm.
+    pub height_mm: f64,
+}
+
+/// A side view, drawn.
+#[derive(Clone, Debug, PartialEq)]
+pub struct SideView {
+    /// The drawing; not higher than asked for.
+    pub scene: Scene,
+    /// Its scale.
+    pub ratio: Ratio,
+    /// Labels that found no room.
+    pub unplaced: Vec<String>,
+}
+
+/// Draws the side view of a plan.
+#[must_use]
+pub fn side_view(plan: &Plan, hung: &Hung, units: Units, size: Size) -> SideView {
+    let elevation = Elevation::new(plan, hung);
+    let (low, high) = bounds(&elevation);
+    let width_mm = size.width_mm - 2.0 * SIDE_MM;
+    let under_mm = site::EARTH_MM + dimensions::names_mm(&elevation) + dimensions::spans_mm(&elevation);
+    let height_mm = (size.height_mm - OVER_MM - under_mm).max(10.0);
+    let least = ((high.along_m - low.along_m) / width_mm).max((high.up_m - low.up_m) / height_mm) * 1000.0;
+    let ratio = Ratio::round(least, units);
+    let drawn_mm = ratio.paper_mm(high.up_m - low.up_m);
+    let left_mm = (size.width_mm - ratio.paper_mm(high.along_m - low.along_m)) / 2.0;
+    let earth_mm = OVER_MM + drawn_mm;
+    let sight = Sight { ratio, site: low, at_mm: Spot::new(left_mm, earth_mm) };
+    let scene = Scene::new(size.width_mm, earth_mm + under_mm);
+    let (scene, unplaced) = paint(plan, &elevation, &sight, units, scene);
+    SideView { scene, ratio, unplaced }
+}
+
+fn paint(
+    plan: &Plan,
+    elevation: &Elevation,
+    sight: &Sight,
+    units: Units,
+    mut scene: Scene,
+) -> (Scene, Vec<String>) {
+    let frame = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: scene.width_mm, height_mm: scene.height_mm };
+    let mut labels = Labels::new(frame);
+    let items = &mut scene.items;
+    let surface = site::surface(elevation, sight, frame.left_mm, frame.right_mm());
+    site::earth(&surface, items);
+    labels.avoid(&surface);
+    for support in &elevation.supports {
+        site::support(support, sight, items);
+        let top = Place { up_m: support.top_m, ..support.foot };
+        labels.avoid(&[sight.spot(support.foot), sight.spot(top)]);
     }
+    site::wires(elevation, sight, items);
+    for piece in elevation.arms.iter().chain(&elevation.ropes) {
+        let spots: Vec<Spot> = piece.places.iter().map(|&place| sight.spot(place)).collect();
+        labels.avoid(&spots);
+    }
+    labels.avoid(&[sight.spot(elevation.feedpoint), sight.spot(elevation.entrance)]);
+    let below_mm = surface.iter().map(|spot| spot.y_mm).fold(0.0, f64::max) + site::EARTH_MM;
+    dimensions::support_names(elevation, sight, frame, below_mm, &mut labels);
+    let spans_mm = below_mm + dimensions::names_mm(elevation);
+    dimensions::spans(elevation, sight, units, spans_mm, (&mut labels, items));
+    dimensions::heights(elevation, sight, units, (&mut labels, items));
+    dimensions::arms(elevation, sight, units, (&mut labels, items));
+    dimensions::names(elevation, sight, units, &line_labels(plan, units), &mut labels);
+    let (texts, unplaced) = labels.finish();
+    items.extend(texts);
+    (scene, unplaced)
+}
+
+/// Lowest left and highest right place; the earth belongs to it.
+fn bounds(elevation: &Elevation) -> (Place, Place) {
+    let start = Place { along_m: elevation.feedpoint.along_m, up_m: 0.0 };
+    elevation.places().fold((start, start), |(low, high), place| {
+        (
+            Place { along_m: low.along_m.min(place.along_m), up_m: low.up_m.min(place.up_m) },
+            Place { along_m: high.along_m.max(place.along_m), up_m: high.up_m.max(place.up_m) },
+        )
+    })
+}
+
+/// "A2 28.00 m" for each piece of line.
+fn line_labels(plan: &Plan, units: Units) -> Vec<String> {
+    let mut out = Vec::new();
+    for (feed_index, feed) in plan.feeds.iter().enumerate() {
+        for (from_wire, link) in feed.links.iter().enumerate() {
+            if let Link::Line(piece) = link {
+                let mark = link_mark(feed_index, feed.links.len(), from_wire);
+                out.push(format!("{mark} {}", units.tape(piece.length_m)));
+            }
+        }
+    }
+    out
 }

@@ -2,7 +2,7 @@
 //! practice decide.
 
 use station::plan::Plan;
-use station::report::{Report, Weight};
+use station::report::{Finding, Place, Report, Weight};
 use station::units;
 
 use crate::fonts::printable;
@@ -19,7 +19,10 @@ pub struct Caution {
 /// The findings of this plan that matter to the crew, then the general cautions.
 #[must_use]
 pub fn cautions(plan: &Plan, report: &Report) -> Vec<Caution> {
-    let found = report.findings.iter().filter(|finding| finding.weight != Weight::Note).map(|finding| {
+    // What holds for one band stands in the table of bands.
+    let matters =
+        |finding: &&Finding| finding.weight != Weight::Note && !matches!(finding.place, Place::Band(_));
+    let found = report.findings.iter().filter(matters).map(|finding| {
         let head = if finding.weight == Weight::Problem { "This plan: problem" } else { "This plan" };
         Caution { head: head.to_owned(), text: printable(&finding.text) }
     });
@@ -38,7 +41,7 @@ fn general(plan: &Plan, report: &Report) -> Vec<Caution> {
         .fold(0.0, f64::max);
     let power = units::watts(plan.transmitter.power_w);
     let feed_volts = if highest_v > 0.0 {
-        format!(" Parts of the feed reach {} peak at {power}.", units::volts(highest_v))
+        format!(" At {power} the feed reaches {} peak.", units::volts(highest_v))
     } else {
         String::new()
     };
@@ -46,39 +49,33 @@ fn general(plan: &Plan, report: &Report) -> Vec<Caution> {
     vec![
         caution(
             "Overhead power lines",
-            "Never put up wire, rope or mast where any of it could touch a power line, also when it falls, breaks or \
-             is blown aside. Treat every overhead line as live; ask its owner."
+            "Wire, rope or mast must never be able to touch one, also when they fall, break or are blown aside. Every \
+             overhead line is live until its owner says otherwise."
                 .to_owned(),
         ),
-        caution(
-            "Falls",
-            "Climb only if trained, with fall arrest and a second person. Nobody below. Not in wind, wet or \
-             lightning."
-                .to_owned(),
-        ),
+        caution("Falls", "Only trained people climb, secured and never alone. Nobody stands below.".to_owned()),
         caution(
             "RF burns",
             format!(
-                "Wire ends, open line and the unit's terminals burn. Keep them out of reach of people and animals; \
-                 switch off and secure the transmitter before touching.{feed_volts}"
+                "Wire ends, open line and terminals burn: out of reach of people and animals. Transmitter off and \
+                 secured before anyone touches them.{feed_volts}"
             ),
         ),
         caution(
             "RF exposure",
-            "Keep people at the distances that the national limits require; have them assessed for this power and \
-             duty before going on air."
+            "Have the distances that national limits require assessed for this power and duty, and keep people \
+             beyond them."
                 .to_owned(),
         ),
         caution(
             "Lightning and earthing",
-            "Disconnect and earth the feed outside when storms are near. Earthing and bonding are work for qualified \
+            "Before a storm, disconnect the feed and earth it outside. Earthing and bonding are work for qualified \
              people."
                 .to_owned(),
         ),
         caution(
             "Who decides",
-            "Local codes and licensed practice decide. The figures come from a model: measure before full power."
-                .to_owned(),
+            "Local codes and licensed practice. These figures come from a model: measure before full power.".to_owned(),
         ),
     ]
 }

@@ -1,10 +1,11 @@
 //! What to cut: wires, ropes and lines, with what knots, insulators and trimming take.
 
 use station::hang::{Hung, Rope, WireEnd};
-use station::plan::{ConductorChoice, LineChoice, LinePiece, Link, PathPoint, Plan, Wire};
+use station::plan::{LinePiece, Link, PathPoint, Plan, Wire};
 use station::units::Units;
 
 use super::link_mark;
+use super::ratings::line_name;
 use crate::fonts::printable;
 
 /// What is added to the plan's lengths. The defaults are common practice.
@@ -56,6 +57,13 @@ pub struct CutRow {
     pub cut: String,
 }
 
+/// What all rows are made with.
+#[derive(Clone, Copy)]
+struct Shared<'a> {
+    units: Units,
+    allowances: &'a Allowances,
+}
+
 /// Lengths of one piece, m.
 struct Lengths {
     plan_m: f64,
@@ -66,18 +74,20 @@ struct Lengths {
 impl CutList {
     pub(super) fn new(plan: &Plan, hung: &Hung, units: Units) -> Self {
         let allowances = Allowances::default();
+        let shared = Shared { units, allowances: &allowances };
         let mut rows = Vec::new();
-        for arm in arms(plan) {
-            rows.push(arm.row(plan, units, &allowances));
+        for (index, arm) in arms(plan).into_iter().enumerate() {
+            let conductor = &hung.wires[arm.wire].conductor.name;
+            rows.push(arm.row(&plan.wires[arm.wire], index + 1, conductor, shared));
         }
         for (index, rope) in hung.ropes.iter().enumerate() {
-            rows.push(rope_row(plan, rope, index, units, &allowances));
+            rows.push(rope_row(plan, rope, index + 1, shared));
         }
         for (feed_index, feed) in plan.feeds.iter().enumerate() {
             for (from_wire, link) in feed.links.iter().enumerate() {
                 if let Link::Line(piece) = link {
                     let mark = link_mark(feed_index, feed.links.len(), from_wire);
-                    rows.push(line_row(piece, mark, &feed.name, units, &allowances));
+                    rows.push(line_row(piece, mark, &feed.name, shared));
                 }
             }
         }
@@ -120,30 +130,26 @@ pub fn arms(plan: &Plan) -> Vec<Arm> {
 }
 
 impl Arm {
-    fn row(self, plan: &Plan, units: Units, allowances: &Allowances) -> CutRow {
-        let wire = &plan.wires[self.wire];
-        let is_fed = self.wire == plan.feedpoint.wire;
-        let toward = if self.from_m > 0.0 { wire.path.last() } else { wire.path.first() };
-        let route = match (is_fed, toward) {
-            (true, Some(point)) => format!("feedpoint to {}", place(point)),
-            _ => format!(
-                "{} to {}",
-                wire.path.first().map_or_else(String::new, place),
-                wire.path.last().map_or_else(String::new, place)
-            ),
+    fn row(self, wire: &Wire, number: usize, conductor: &str, shared: Shared<'_>) -> CutRow {
+        let Shared { units, allowances } = shared;
+        let end = if self.from_m > 0.0 { wire.path.last() } else { wire.path.first() };
+        let is_whole = self.length_m() >= wire.cut_length_m;
+        let route = match (is_whole, wire.path.first(), wire.path.last()) {
+            (true, Some(first), Some(last)) => format!("{} to {}", place(first), place(last)),
+            _ => end.map_or_else(String::new, |end| format!("feedpoint to {}", place(end))),
         };
-        let mark = arms(plan).iter().position(|arm| *arm == self).map_or(0, |index| index + 1);
         let lengths = Lengths {
             plan_m: self.length_m(),
             ends_m: 2.0 * allowances.insulator_m,
             extra_m: (allowances.trim_share * self.length_m()).max(allowances.trim_least_m),
         };
-        let detail = format!("{}, {route}", conductor_name(wire));
-        lengths.row(format!("W{mark}"), printable(&wire.name), printable(&detail), units)
+        let detail = format!("{conductor}, {route}");
+        lengths.row(format!("W{number}"), printable(&wire.name), printable(&detail), units)
     }
 }
 
-fn rope_row(plan: &Plan, rope: &Rope, index: usize, units: Units, allowances: &Allowances) -> CutRow {
+fn rope_row(plan: &Plan, rope: &Rope, number: usize, shared: Shared<'_>) -> CutRow {
+    let Shared { units, allowances } = shared;
     let held = plan.wires.get(rope.wire).and_then(|wire| match rope.end {
         WireEnd::Beginning => wire.path.first(),
         WireEnd::End => wire.path.last(),
@@ -153,16 +159,15 @@ fn rope_row(plan: &Plan, rope: &Rope, index: usize, units: Units, allowances: &A
         _ => 0.0,
     };
     let lengths = Lengths { plan_m: rope.length_m, ends_m: 2.0 * allowances.knot_m, extra_m: halyard_m };
-    let detail = held.map_or_else(
-        || "holds the wire".to_owned(),
-        |point| format!("wire's end to {}, then down", place(point)),
-    );
-    lengths.row(format!("R{}", index + 1), "rope".to_owned(), printable(&detail), units)
+    let detail =
+        held.map_or_else(|| "holds the wire".to_owned(), |point| format!("to {}, then down", place(point)));
+    lengths.row(format!("R{number}"), "rope".to_owned(), printable(&detail), units)
 }
 
-fn line_row(piece: &LinePiece, mark: String, feed: &str, units: Units, allowances: &Allowances) -> CutRow {
+fn line_row(piece: &LinePiece, mark: String, feed: &str, shared: Shared<'_>) -> CutRow {
+    let Shared { units, allowances } = shared;
     let lengths = Lengths { plan_m: piece.length_m, ends_m: 2.0 * allowances.line_end_m, extra_m: 0.0 };
-    let detail = format!("feed line of {feed}");
+    let detail = format!("for {feed}");
     lengths.row(mark, printable(&line_name(&piece.line)), printable(&detail), units)
 }
 
@@ -184,10 +189,9 @@ impl Lengths {
 
 fn note(units: Units, allowances: &Allowances) -> String {
     format!(
-        "Allowances are common practice. Ends: {} of wire through each insulator and wound back; {} of rope for each \
-         knot; {} of line stripped at each end. Extra: {} % of a wire, at least {}, folded back until the first \
-         measurement and cut off last; for a rope, the halyard down its support. Leave a drip loop where a line \
-         enters the station.",
+        "Allowances are common practice. Ends: {} of wire through each insulator and wound back, {} of rope a knot, {} \
+         of line an end. Extra: {} % of a wire, {} at least, folded back until measured and cut off last; for a rope, \
+         the halyard down its support.",
         units.tape(allowances.insulator_m),
         units.tape(allowances.knot_m),
         units.tape(allowances.line_end_m),
@@ -200,21 +204,5 @@ fn place(point: &PathPoint) -> String {
     match point {
         PathPoint::OnSupport { support, .. } => support.clone(),
         PathPoint::Free(_) => "its free point".to_owned(),
-    }
-}
-
-fn conductor_name(wire: &Wire) -> String {
-    match &wire.conductor {
-        ConductorChoice::Catalogue(id) => id.clone(),
-        ConductorChoice::Own(data) => data.name.clone(),
-    }
-}
-
-/// The name of a line, as the crew reads it on the drum.
-#[must_use]
-pub fn line_name(line: &LineChoice) -> String {
-    match line {
-        LineChoice::Catalogue(id) => id.clone(),
-        LineChoice::Own(data) => data.name.clone(),
     }
 }

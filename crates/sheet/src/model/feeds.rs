@@ -1,10 +1,10 @@
 //! The feed schedule: what is connected to what, from the transmitter to the wire, and what each part must stand.
 
-use station::plan::{LineChoice, Link, Plan};
+use station::plan::{Link, Plan};
 use station::report::Report;
 use station::units::{self, Units};
 
-use super::cut_list::line_name;
+use super::ratings::{line_name, rating_peak_v};
 use super::{feed_letter, link_mark};
 use crate::fonts::printable;
 
@@ -49,56 +49,41 @@ pub struct Stress {
 
 /// The schedules of all feeds.
 pub(super) fn schedules(plan: &Plan, report: &Report, units: Units) -> Vec<FeedSchedule> {
-    plan.feeds
-        .iter()
-        .enumerate()
-        .map(|(index, feed)| FeedSchedule {
-            letter: feed_letter(index),
-            name: printable(&feed.name),
-            steps: (0..feed.links.len())
-                .rev()
-                .map(|link| step(&feed.links[link], index, link, report, units, feed.links.len()))
-                .collect(),
-        })
-        .collect()
+    let schedule = |(index, feed): (usize, &station::plan::Feed)| FeedSchedule {
+        letter: feed_letter(index),
+        name: printable(&feed.name),
+        steps: (0..feed.links.len()).rev().map(|link| step(plan, report, (index, link), units)).collect(),
+    };
+    plan.feeds.iter().enumerate().map(schedule).collect()
 }
 
-fn step(link: &Link, feed: usize, index: usize, report: &Report, units: Units, links: usize) -> Step {
-    let (what, detail, rating_v) = match link {
-        Link::Transformer(transformer) => {
-            let ratio = units::short(transformer.impedance_ratio);
-            ("transformer".to_owned(), format!("{ratio} : 1 in impedance, high side to the wire"), None)
-        }
-        Link::Line(piece) => {
-            let rating = match &piece.line {
-                LineChoice::Own(data) => data.rating_peak_v,
-                LineChoice::Catalogue(_) => None,
-            };
-            (line_name(&piece.line), units.tape(piece.length_m), rating)
-        }
+fn step(plan: &Plan, report: &Report, (feed, index): (usize, usize), units: Units) -> Step {
+    let links = &plan.feeds[feed].links;
+    let (what, detail) = match &links[index] {
+        Link::Transformer(transformer) => (
+            "transformer".to_owned(),
+            format!("{} : 1, high side to the wire", units::short(transformer.impedance_ratio)),
+        ),
+        Link::Line(piece) => (line_name(&piece.line), units.tape(piece.length_m)),
         Link::MatchingUnit(unit) => (
             "matching unit".to_owned(),
             format!(
-                "coil to {}, capacitor to {}",
+                "to {} and {}",
                 units::henries(unit.inductance_max_h),
                 units::farads(unit.capacitance_max_f)
             ),
-            unit.rating_peak_v,
         ),
     };
-    let reports = || {
-        report
-            .bands
-            .iter()
-            .flat_map(|band| &band.points)
-            .map(move |point| (point.frequency_hz, point.feeds[feed].links[index]))
-    };
+    let points = || report.bands.iter().flat_map(|band| &band.points);
+    let link = |point: &station::report::FrequencyReport| point.feeds[feed].links[index];
+    let volts = points().map(|point| (point.frequency_hz, link(point).peak_v));
+    let amperes = points().map(|point| (point.frequency_hz, link(point).rms_a));
     Step {
-        mark: link_mark(feed, links, index),
+        mark: link_mark(feed, links.len(), index),
         what: printable(&what),
         detail,
-        volts: Stress::highest(reports().map(|(f, link)| (f, link.peak_v)), rating_v, units::volts),
-        amperes: Stress::highest(reports().map(|(f, link)| (f, link.rms_a)), None, units::amperes),
+        volts: Stress::highest(volts, rating_peak_v(&links[index]), units::volts),
+        amperes: Stress::highest(amperes, None, units::amperes),
     }
 }
 
@@ -110,14 +95,13 @@ impl Stress {
         text: impl Fn(f64) -> String,
     ) -> Self {
         let highest = values.filter(|(_, value)| value.is_finite()).max_by(|a, b| a.1.total_cmp(&b.1));
+        let rated = rating.map(&text);
         match highest {
-            None => {
-                Self { value: "–".to_owned(), at: String::new(), rating: rating.map(text), exceeds: false }
-            }
+            None => Self { value: "–".to_owned(), at: String::new(), rating: rated, exceeds: false },
             Some((frequency_hz, value)) => Self {
                 value: text(value),
-                at: units::megahertz(frequency_hz),
-                rating: rating.map(&text),
+                at: format!("at {}", units::megahertz(frequency_hz)),
+                rating: rated,
                 exceeds: rating.is_some_and(|limit| value > limit),
             },
         }

@@ -5,10 +5,11 @@ mod cautions;
 mod cut_list;
 mod feeds;
 mod identity;
+mod ratings;
 
-pub use bands::{BandEntry, Curve, FeedEntry, SWR_TOP};
+pub use bands::{BandEntry, Curve, FeedEntry};
 pub use cautions::{Caution, cautions};
-pub use cut_list::{Allowances, CutList, CutRow};
+pub use cut_list::{Allowances, Arm, CutList, CutRow, arms};
 pub use feeds::{FeedSchedule, Step, Stress};
 pub use identity::{Identity, checksum};
 

@@ -6,23 +6,43 @@ use crate::model::Caution;
 use crate::text::Span;
 use crate::tokens::{Ink, TextStyle, space};
 
+/// Cautions that stay together on a page.
+const TOGETHER: usize = 10;
+/// Between two cautions, mm.
+const GAP_MM: f64 = 0.9;
+
 pub(crate) fn section(cautions: &[Caution], width_mm: f64) -> Section {
-    let column_mm = (width_mm - space::GUTTER) / 2.0;
-    let blocks = cautions
-        .chunks(2)
-        .map(|pair| {
-            let mut block = Block::default();
-            for (index, caution) in pair.iter().enumerate() {
-                let spans = [
-                    Span::new(TextStyle::Strong, format!("{}.", caution.head)).ink(Ink::Caution),
-                    Span::new(TextStyle::Body, &caution.text),
-                ];
-                let x_mm = index as f64 * (column_mm + space::GUTTER);
-                let height_mm = block.spans(x_mm, 0.0, column_mm, &spans);
-                block.height_mm = block.height_mm.max(height_mm + 1.0);
-            }
-            block
-        })
-        .collect();
+    let blocks = cautions.chunks(TOGETHER).map(|group| columns(group, width_mm)).collect();
     Section { title: "Cautions".to_owned(), aside: String::new(), columns: None, blocks }
+}
+
+/// Down the left column, then down the right one, as even as can be.
+fn columns(cautions: &[Caution], width_mm: f64) -> Block {
+    let column_mm = (width_mm - space::GUTTER) / 2.0;
+    let blocks: Vec<Block> = cautions.iter().map(|caution| block(caution, column_mm)).collect();
+    let height_mm = |blocks: &[Block]| blocks.iter().map(|block| block.height_mm).sum::<f64>();
+    let longer_mm = |split: usize| height_mm(&blocks[..split]).max(height_mm(&blocks[split..]));
+    let split = (0..=blocks.len()).min_by(|&a, &b| longer_mm(a).total_cmp(&longer_mm(b))).unwrap_or(0);
+    let mut out = Block::empty(longer_mm(split));
+    let mut y_mm = 0.0;
+    for (index, block) in blocks.into_iter().enumerate() {
+        if index == split {
+            y_mm = 0.0;
+        }
+        let x_mm = if index < split { 0.0 } else { column_mm + space::GUTTER };
+        let taken_mm = block.height_mm;
+        out.add(block, x_mm, y_mm);
+        y_mm += taken_mm;
+    }
+    out
+}
+
+fn block(caution: &Caution, width_mm: f64) -> Block {
+    let mut block = Block::default();
+    let spans = [
+        Span::new(TextStyle::Strong, format!("{}.", caution.head)).ink(Ink::Caution),
+        Span::new(TextStyle::Body, &caution.text),
+    ];
+    block.height_mm = block.spans(0.0, 0.0, width_mm, &spans) + GAP_MM;
+    block
 }

@@ -2,86 +2,112 @@
 
 use super::block::{Block, ending, label};
 use super::flow::Section;
+use crate::fonts;
 use crate::model::{CutList, CutRow};
 use crate::scene::{Frame, Item};
 use crate::text::Span;
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 
-/// Widths of the columns, mm; the part takes what is left.
+/// Between two columns of numbers, mm.
+const COLUMN_GAP_MM: f64 = 4.0;
+/// Side of the box to tick, mm.
+const TICK_MM: f64 = 4.4;
+/// Least width of the box for the length as built, mm.
+const BUILT_MM: f64 = 19.0;
+/// Over and under the text of a row, mm.
+const PAD_MM: f64 = 0.8;
+/// Least height of a row: someone writes in it, mm.
+const ROW_MM: f64 = 6.0;
+
+/// Where the columns stand, mm, from the measured width of what is in them.
 struct Columns {
-    mark: f64,
-    number: f64,
-    cut: f64,
+    part: f64,
+    part_width: f64,
+    /// Right edges of plan, ends, extra and cut.
+    numbers: [f64; 4],
     tick: f64,
-    written: f64,
+    built: f64,
+    width: f64,
 }
 
-const COLUMNS: Columns = Columns { mark: 9.0, number: 19.0, cut: 25.0, tick: 7.0, written: 20.0 };
-
 impl Columns {
-    fn part_mm(&self, width_mm: f64) -> f64 {
-        width_mm - self.mark - 3.0 * self.number - self.cut - self.tick - self.written - space::GUTTER
-    }
-
-    /// Right edges of plan, ends, extra and cut; left edge of the tick box.
-    fn edges_mm(&self, width_mm: f64) -> [f64; 5] {
-        let plan = self.mark + self.part_mm(width_mm) + self.number;
-        let cut = plan + 2.0 * self.number + self.cut;
-        [plan, plan + self.number, plan + 2.0 * self.number, cut, cut + space::GUTTER]
+    fn new(list: &CutList, width_mm: f64) -> Self {
+        let widest = |style: TextStyle, text: fn(&CutRow) -> &String| {
+            list.rows.iter().map(|row| fonts::width_mm(style, text(row))).fold(0.0, f64::max)
+        };
+        let mark = widest(TextStyle::Strong, |row| &row.mark) + 2.5;
+        let widths = [
+            widest(TextStyle::Body, |row| &row.plan),
+            widest(TextStyle::Body, |row| &row.ends),
+            widest(TextStyle::Body, |row| &row.extra),
+            widest(TextStyle::Key, |row| &row.cut),
+        ]
+        .map(|width| width.max(8.0) + COLUMN_GAP_MM);
+        let built = width_mm - BUILT_MM;
+        let tick = built - TICK_MM - 2.0;
+        let cut = tick - COLUMN_GAP_MM;
+        let extra = cut - widths[3];
+        let ends = extra - widths[2];
+        let plan = ends - widths[1];
+        let part_width = plan - widths[0] - mark;
+        Self { part: mark, part_width, numbers: [plan, ends, extra, cut], tick, built, width: width_mm }
     }
 }
 
 pub(crate) fn section(list: &CutList, width_mm: f64) -> Section {
-    let mut blocks: Vec<Block> = list.rows.iter().map(|row| block(row, width_mm)).collect();
+    let columns = Columns::new(list, width_mm);
+    let mut blocks: Vec<Block> = list.rows.iter().map(|row| block(row, &columns)).collect();
     let mut note = Block::default();
-    note.height_mm =
-        1.0 + note.paragraph(0.0, 1.0, width_mm, Span::new(TextStyle::Note, &list.note).ink(Ink::Faint));
+    let words = Span::new(TextStyle::Note, &list.note).ink(Ink::Faint);
+    note.height_mm = space::CELL + note.paragraph(0.0, space::CELL, width_mm, words);
     blocks.push(note);
     Section {
         title: "Cut list".to_owned(),
         aside: "plan + ends + extra = cut".to_owned(),
-        columns: Some(heads(width_mm)),
+        columns: Some(heads(&columns)),
         blocks,
     }
 }
 
-fn heads(width_mm: f64) -> Block {
-    let mut block = Block::empty(TextStyle::Note.leading_mm() + 0.6);
-    let [plan, ends, extra, cut, tick] = COLUMNS.edges_mm(width_mm);
-    block.text(COLUMNS.mark, 0.0, label(TextStyle::Note, "part").ink(Ink::Faint));
-    for (x_mm, head) in [(plan, "plan"), (ends, "ends"), (extra, "extra"), (cut, "cut")] {
+fn heads(columns: &Columns) -> Block {
+    let mut block = Block::empty(TextStyle::Note.leading_mm() + 0.4);
+    block.text(columns.part, 0.0, label(TextStyle::Note, "part").ink(Ink::Faint));
+    for (x_mm, head) in columns.numbers.into_iter().zip(["plan", "ends", "extra", "cut"]) {
         block.text(x_mm, 0.0, ending(TextStyle::Note, head).ink(Ink::Faint));
     }
-    block.text(tick, 0.0, label(TextStyle::Note, "done, as built").ink(Ink::Faint));
+    block.text(columns.tick, 0.0, label(TextStyle::Note, "cut").ink(Ink::Faint));
+    block.text(columns.built, 0.0, label(TextStyle::Note, "as built").ink(Ink::Faint));
+    block.rule(0.0, columns.width, block.height_mm, Stroke::Rule, Ink::Rule);
     block
 }
 
-fn block(row: &CutRow, width_mm: f64) -> Block {
-    const PAD_MM: f64 = 0.7;
+fn block(row: &CutRow, columns: &Columns) -> Block {
     let mut block = Block::default();
-    let part_mm = COLUMNS.part_mm(width_mm);
     let spans =
         [Span::new(TextStyle::Strong, &row.part), Span::new(TextStyle::Body, &row.detail).ink(Ink::Faint)];
-    let height_mm = block.spans(COLUMNS.mark, PAD_MM, part_mm, &spans);
-    block.height_mm = height_mm.max(6.0) + 2.0 * PAD_MM;
-    let [plan, ends, extra, cut, tick] = COLUMNS.edges_mm(width_mm);
-    block.text(0.0, PAD_MM, label(TextStyle::Strong, &row.mark));
+    // The first line stands in the middle of a row of one line.
+    let top_mm = (ROW_MM - TextStyle::Body.leading_mm()) / 2.0;
+    let text_mm = block.spans(columns.part, top_mm, columns.part_width, &spans);
+    block.height_mm = (text_mm + top_mm + PAD_MM).max(ROW_MM);
+    block.text(0.0, top_mm, label(TextStyle::Strong, &row.mark));
+    let [plan, ends, extra, cut] = columns.numbers;
     for (x_mm, number) in [(plan, &row.plan), (ends, &row.ends), (extra, &row.extra)] {
         if !number.is_empty() {
-            block.text(x_mm, PAD_MM, ending(TextStyle::Body, number));
+            block.text(x_mm, top_mm, ending(TextStyle::Body, number));
         }
     }
-    block.text(cut, PAD_MM - 0.5, ending(TextStyle::Key, &row.cut));
-    let side_mm = 4.5;
-    let tick_box = Frame { left_mm: tick, top_mm: PAD_MM + 0.4, width_mm: side_mm, height_mm: side_mm };
-    let written = Frame {
-        left_mm: tick + COLUMNS.tick,
-        top_mm: PAD_MM,
-        width_mm: width_mm - tick - COLUMNS.tick,
-        height_mm: block.height_mm - 2.0 * PAD_MM,
+    let key_mm = (ROW_MM - TextStyle::Key.leading_mm()) / 2.0;
+    block.text(cut, key_mm, ending(TextStyle::Key, &row.cut));
+    let box_mm = (ROW_MM - TICK_MM) / 2.0;
+    let tick = Frame { left_mm: columns.tick, top_mm: box_mm, width_mm: TICK_MM, height_mm: TICK_MM };
+    let built = Frame {
+        left_mm: columns.built,
+        top_mm: box_mm / 2.0,
+        width_mm: columns.width - columns.built,
+        height_mm: block.height_mm - box_mm,
     };
-    block.items.push(Item::writing_box(tick_box));
-    block.items.push(Item::writing_box(written));
-    block.rule(0.0, width_mm, block.height_mm, Stroke::Hair, Ink::Rule);
+    block.items.push(Item::writing_box(tick));
+    block.items.push(Item::writing_box(built));
+    block.rule(0.0, columns.built - 1.0, block.height_mm, Stroke::Hair, Ink::Rule);
     block
 }

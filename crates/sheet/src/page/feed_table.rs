@@ -1,18 +1,23 @@
 //! The feed schedules, two beside each other.
 
-use super::block::{Block, ending, label};
+use super::block::{Block, baseline_mm, ending, label};
 use super::flow::Section;
-use crate::model::{FeedSchedule, Identity, Step, Stress};
+use crate::fonts;
+use crate::model::{FeedSchedule, Step, Stress};
 use crate::scene::{Anchor, Frame};
-use crate::text::Span;
+use crate::text::{Span, fit};
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Width of the mark, mm.
-const MARK_MM: f64 = 9.0;
-/// Width of each of the two columns with stresses, mm.
-const STRESS_MM: f64 = 23.0;
+const MARK_MM: f64 = 8.5;
+/// Width of the volts with their rating, mm.
+const VOLTS_MM: f64 = 28.0;
+/// Width of the amperes, mm.
+const AMPERES_MM: f64 = 19.0;
+/// Height of the line with the feed's name, mm.
+const NAME_MM: f64 = 6.0;
 
-pub(crate) fn section(feeds: &[FeedSchedule], identity: &Identity, width_mm: f64) -> Section {
+pub(crate) fn section(feeds: &[FeedSchedule], width_mm: f64) -> Section {
     let column_mm = (width_mm - space::GUTTER) / 2.0;
     let blocks = feeds
         .chunks(2)
@@ -29,10 +34,7 @@ pub(crate) fn section(feeds: &[FeedSchedule], identity: &Identity, width_mm: f64
         .collect();
     Section {
         title: "Feed schedule".to_owned(),
-        aside: format!(
-            "from the transmitter to the wire; highest stress of all bands, {}",
-            identity.transmitter
-        ),
+        aside: "from the transmitter to the wire, with the highest stress over all bands".to_owned(),
         columns: None,
         blocks,
     }
@@ -41,45 +43,53 @@ pub(crate) fn section(feeds: &[FeedSchedule], identity: &Identity, width_mm: f64
 fn schedule(feed: &FeedSchedule, index: usize, width_mm: f64) -> Block {
     let mut block = Block::default();
     let ink = Ink::feed(index);
-    let mut y_mm = TextStyle::Key.leading_mm().max(6.0);
-    let tag = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: 7.0, height_mm: y_mm };
-    block.text(3.5, 0.6, label(TextStyle::Key, &feed.letter).ink(Ink::Background).anchor(Anchor::Middle));
+    let tag_mm = fonts::width_mm(TextStyle::Key, &feed.letter) + 4.0;
+    let tag = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: tag_mm, height_mm: NAME_MM };
+    let name_mm = (NAME_MM - TextStyle::Key.leading_mm()) / 2.0;
+    let letter = label(TextStyle::Key, &feed.letter).ink(Ink::Background).anchor(Anchor::Middle);
+    block.text(tag_mm / 2.0, name_mm, letter);
     block.ground(tag, ink);
-    let name = crate::text::fit(TextStyle::Key, &feed.name, width_mm - MARK_MM - 2.0 * STRESS_MM);
-    block.text(MARK_MM, 0.6, label(TextStyle::Key, name));
-    block.text(width_mm - STRESS_MM, 1.6, ending(TextStyle::Note, "volts peak").ink(Ink::Faint));
-    block.text(width_mm, 1.6, ending(TextStyle::Note, "amps RMS").ink(Ink::Faint));
+    let left_mm = MARK_MM.max(tag_mm + 2.0);
+    let name = fit(TextStyle::Key, &feed.name, width_mm - left_mm - 18.0 - AMPERES_MM);
+    block.text(left_mm, name_mm, label(TextStyle::Key, name));
+    let head_mm = name_mm + baseline_mm(TextStyle::Key) - baseline_mm(TextStyle::Note);
+    block.text(width_mm - AMPERES_MM, head_mm, ending(TextStyle::Note, "volts peak").ink(Ink::Faint));
+    block.text(width_mm, head_mm, ending(TextStyle::Note, "amps RMS").ink(Ink::Faint));
+    let mut y_mm = NAME_MM;
     for step in &feed.steps {
         block.rule(0.0, width_mm, y_mm, Stroke::Hair, Ink::Rule);
-        y_mm += row(&mut block, step, y_mm + 0.6, width_mm) + 1.2;
+        y_mm += row(&mut block, step, y_mm + 0.5, width_mm) + 1.0;
     }
-    block.rule(0.0, width_mm, y_mm, Stroke::Rule, ink);
-    block.height_mm = y_mm + 1.5;
+    block.rule(0.0, width_mm, y_mm, Stroke::Frame, ink);
+    block.height_mm = y_mm + 1.0;
     block
 }
 
 fn row(block: &mut Block, step: &Step, top_mm: f64, width_mm: f64) -> f64 {
     block.text(0.0, top_mm, label(TextStyle::Strong, &step.mark));
-    let text_mm = width_mm - MARK_MM - 2.0 * STRESS_MM;
-    let mut left_mm = block.paragraph(MARK_MM, top_mm, text_mm, Span::new(TextStyle::Strong, &step.what));
-    left_mm += block.paragraph(MARK_MM, top_mm + left_mm, text_mm, Span::new(TextStyle::Body, &step.detail));
-    let volts_mm = stress(block, &step.volts, width_mm - STRESS_MM, top_mm);
+    let text_mm = width_mm - MARK_MM - VOLTS_MM - AMPERES_MM;
+    let spans = [Span::new(TextStyle::Strong, &step.what), Span::new(TextStyle::Body, &step.detail)];
+    let left_mm = block.spans(MARK_MM, top_mm, text_mm, &spans);
+    let volts_mm = stress(block, &step.volts, width_mm - AMPERES_MM, top_mm);
     let amperes_mm = stress(block, &step.amperes, width_mm, top_mm);
     left_mm.max(volts_mm).max(amperes_mm)
 }
 
-/// The value, where it occurs, the rating: right-aligned under each other.
+/// The value against its rating, and under them where it occurs: right-aligned.
 fn stress(block: &mut Block, stress: &Stress, right_mm: f64, top_mm: f64) -> f64 {
     let ink = if stress.exceeds { Ink::Overstressed } else { Ink::Text };
-    block.text(right_mm, top_mm, ending(TextStyle::Strong, &stress.value).ink(ink));
-    let mut y_mm = TextStyle::Strong.leading_mm();
-    let rating = stress
-        .rating
-        .as_ref()
-        .map(|rating| if stress.exceeds { format!("over {rating}") } else { format!("of {rating}") });
-    for line in [rating.unwrap_or_default(), stress.at.clone()].into_iter().filter(|line| !line.is_empty()) {
-        block.text(right_mm, top_mm + y_mm, ending(TextStyle::Note, line).ink(Ink::Faint));
-        y_mm += TextStyle::Note.leading_mm();
+    let mut x_mm = right_mm;
+    if let Some(rating) = &stress.rating {
+        let words = if stress.exceeds { format!("over {rating}") } else { format!("of {rating}") };
+        let rating = ending(TextStyle::Body, words).ink(ink);
+        x_mm -= rating.width_mm() + fonts::width_mm(TextStyle::Body, " ");
+        block.text(right_mm, top_mm, rating);
     }
-    y_mm
+    block.text(x_mm, top_mm, ending(TextStyle::Strong, &stress.value).ink(ink));
+    let second_mm = TextStyle::Strong.leading_mm();
+    if stress.at.is_empty() {
+        return second_mm;
+    }
+    block.text(right_mm, top_mm + second_mm, ending(TextStyle::Note, &stress.at).ink(Ink::Faint));
+    second_mm + TextStyle::Note.leading_mm()
 }

@@ -20,13 +20,16 @@ pub(crate) struct Section {
 }
 
 impl Section {
+    /// Height of a title with its rule, mm.
+    pub const TITLE_MM: f64 = 6.2;
+
     /// Height where nothing is broken, with the space below, mm.
     pub fn height_mm(&self) -> f64 {
         self.head_height_mm() + self.blocks.iter().map(|block| block.height_mm).sum::<f64>() + space::SECTION
     }
 
     fn head_height_mm(&self) -> f64 {
-        TITLE_MM + self.columns.as_ref().map_or(0.0, |columns| columns.height_mm)
+        Self::TITLE_MM + self.columns.as_ref().map_or(0.0, |columns| columns.height_mm)
     }
 
     fn head(&self, width_mm: f64, is_continued: bool) -> Block {
@@ -43,14 +46,12 @@ impl Section {
             block.text(width_mm, drop_mm, super::block::ending(TextStyle::Note, aside).ink(Ink::Faint));
         }
         if let Some(columns) = &self.columns {
-            block.add(columns.clone(), 0.0, TITLE_MM);
+            block.add(columns.clone(), 0.0, Self::TITLE_MM);
         }
         block
     }
 }
 
-/// Height of a section's title with its rule, mm.
-const TITLE_MM: f64 = 7.0;
 /// From the rule to the title, mm.
 const TITLE_DROP_MM: f64 = 1.0;
 
@@ -111,6 +112,15 @@ impl<'a> Flow<'a> {
             self.put(block);
         }
         self.y_mm += space::SECTION;
+    }
+
+    /// Puts a block at the foot of the page.
+    pub fn place_at_foot(&mut self, block: Block) {
+        if block.height_mm > self.room_mm() {
+            self.next_page();
+        }
+        self.y_mm = self.bottom_mm - block.height_mm - space::CELL;
+        self.put(block);
     }
 
     fn put(&mut self, block: Block) {

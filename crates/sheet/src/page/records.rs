@@ -9,56 +9,72 @@ use crate::tokens::{Ink, TextStyle, space};
 
 /// Bands in one row of boxes.
 const BANDS_A_ROW: usize = 12;
-/// Height of a box to write in, mm.
+/// Height of a box for a number, mm.
 const BOX_MM: f64 = 7.5;
 /// Width of the row's name, mm.
-const NAME_MM: f64 = 20.0;
+const NAME_MM: f64 = 16.0;
+/// Height of a box for a name and a date, mm.
+const SIGNED_MM: f64 = 12.0;
+/// Who signs, and the box's share of the width.
+const SIGNED: [(&str, f64); 4] = [
+    ("Built: name, date", 0.21),
+    ("Measured: name, date, instrument, wet or dry", 0.37),
+    ("Checked: name, date", 0.21),
+    ("Taken over: name, date", 0.21),
+];
 
-/// Who built, measured and took over.
-pub(crate) fn signatures(width_mm: f64) -> Section {
-    let roles = ["Built", "Measured", "Checked", "Taken over"];
-    let mut block = Block::empty(12.0);
-    let column_mm = (width_mm - 3.0 * space::GUTTER) / 4.0;
-    for (index, role) in roles.into_iter().enumerate() {
-        let left_mm = index as f64 * (column_mm + space::GUTTER);
-        let frame = Frame { left_mm, top_mm: 0.0, width_mm: column_mm, height_mm: 12.0 };
+/// Who built, measured, checked and took over.
+pub(crate) fn signatures(width_mm: f64) -> Block {
+    let mut block = Block::empty(SIGNED_MM);
+    let room_mm = width_mm - space::CELL * 2.0 * (SIGNED.len() - 1) as f64;
+    let mut left_mm = 0.0;
+    for (words, share) in SIGNED {
+        let frame = Frame { left_mm, top_mm: 0.0, width_mm: share * room_mm, height_mm: SIGNED_MM };
         block.items.push(Item::writing_box(frame));
-        let text = label(TextStyle::Note, format!("{role}: name, date")).ink(Ink::Faint);
-        block.text(left_mm + space::CELL, 0.3, text);
+        let words = fit(TextStyle::Note, words, frame.width_mm - 2.0 * space::CELL);
+        block.text(left_mm + space::CELL, 0.4, label(TextStyle::Note, words).ink(Ink::Faint));
+        left_mm += frame.width_mm + 2.0 * space::CELL;
     }
-    Section { title: "Signed".to_owned(), aside: String::new(), columns: None, blocks: vec![block] }
+    block
 }
 
-/// Measured values.
-pub(crate) fn sections(model: &SheetModel, width_mm: f64) -> Vec<Section> {
-    let blocks = model.bands.chunks(BANDS_A_ROW).map(|bands| {
-        let mut block = Block::default();
-        let column_mm = (width_mm - NAME_MM) / BANDS_A_ROW as f64;
-        let head_mm = TextStyle::Note.leading_mm() + 0.4;
-        for (index, band) in bands.iter().enumerate() {
-            let middle_mm = NAME_MM + (index as f64 + 0.5) * column_mm;
-            let name = fit(TextStyle::Note, &band.name, column_mm - 1.0);
-            block.text(middle_mm, 0.0, label(TextStyle::Note, name).anchor(Anchor::Middle));
-        }
-        let mut y_mm = head_mm;
-        for feed in &model.feeds {
-            let name = label(TextStyle::Strong, format!("SWR {}", feed.letter));
-            block.text(0.0, y_mm + 1.8, name);
-            for index in 0..bands.len() {
-                let left_mm = NAME_MM + index as f64 * column_mm;
-                let frame = Frame { left_mm, top_mm: y_mm, width_mm: column_mm, height_mm: BOX_MM };
-                block.items.push(Item::writing_box(frame));
-            }
-            y_mm += BOX_MM;
-        }
-        block.height_mm = y_mm + 1.0;
-        block
-    });
-    vec![Section {
+/// A box for each band and feed.
+pub(crate) fn measured(model: &SheetModel, width_mm: f64) -> Section {
+    Section {
         title: "Measured".to_owned(),
-        aside: "SWR at the transmitter without the matching unit; instrument, weather, wet or dry soil:"
-            .to_owned(),
+        aside: "SWR at the transmitter without the matching unit, in the middle of the band".to_owned(),
         columns: None,
-        blocks: blocks.collect(),
-    }]
+        blocks: model
+            .bands
+            .chunks(BANDS_A_ROW)
+            .map(|bands| {
+                let names: Vec<&str> = bands.iter().map(|band| band.name.as_str()).collect();
+                boxes(&names, model, width_mm)
+            })
+            .collect(),
+    }
+}
+
+fn boxes(bands: &[&str], model: &SheetModel, width_mm: f64) -> Block {
+    let mut block = Block::default();
+    let column_mm = (width_mm - NAME_MM) / BANDS_A_ROW as f64;
+    let left_mm = |index: usize| NAME_MM + index as f64 * column_mm;
+    for (index, name) in bands.iter().enumerate() {
+        let name = fit(TextStyle::Note, name, column_mm - space::CELL);
+        let middle_mm = left_mm(index) + column_mm / 2.0;
+        block.text(middle_mm, 0.0, label(TextStyle::Note, name).anchor(Anchor::Middle));
+    }
+    let mut y_mm = TextStyle::Note.leading_mm() + 0.4;
+    for feed in &model.feeds {
+        let drop_mm = (BOX_MM - TextStyle::Strong.leading_mm()) / 2.0;
+        block.text(0.0, y_mm + drop_mm, label(TextStyle::Strong, format!("SWR {}", feed.letter)));
+        for index in 0..bands.len() {
+            let frame =
+                Frame { left_mm: left_mm(index), top_mm: y_mm, width_mm: column_mm, height_mm: BOX_MM };
+            block.items.push(Item::writing_box(frame));
+        }
+        y_mm += BOX_MM;
+    }
+    block.height_mm = y_mm + space::CELL;
+    block
 }

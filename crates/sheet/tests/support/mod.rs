@@ -1,20 +1,15 @@
-//! Invented stations with hand-made reports: plausible values of every kind, so that layout can be tested without
-//! the physics.
+//! Invented stations, evaluated, and the demo stations.
 
 #![allow(dead_code)] // Each test binary uses its part.
 
-use num_complex::Complex64;
 use sheet::{Date, Paper, SheetRequest};
-use station::hang::{Hung, HungWire, Port, Rope, Vertex, WireEnd};
+use station::evaluate::Evaluator;
 use station::plan::{
     Band, BandRange, ConductorChoice, ConductorData, Earth, Feed, Feedpoint, LineChoice, LineConstruction,
     LineData, LinePiece, Link, LossLaw, MatchingUnit, PathPoint, Plan, Point, Site, Soil, Support,
     SupportKind, Transformer, Transmitter, Wire,
 };
-use station::report::{
-    BandFeed, BandReport, FeedReport, Finding, FrequencyReport, LinkReport, Model, Place, Report, Seen,
-    Sense, Setting, StandingWave, Verdict, VerdictKind, Weight, WireWave,
-};
+use station::report::Report;
 use station::units::Units;
 
 pub const DATE: Date = Date { year: 2026, month: 12, day: 1 };
@@ -30,25 +25,35 @@ pub fn requests() -> Vec<SheetRequest> {
 }
 
 pub struct Station {
-    pub name: &'static str,
+    pub name: String,
     pub plan: Plan,
     pub report: Report,
 }
 
-/// All fixtures.
+/// All fixtures and all demo stations.
 pub fn stations() -> Vec<Station> {
-    vec![
-        station("relief post", relief_post()),
-        station("long list", long_list()),
-        station("hanging ends", hanging_ends()),
-        station("vertical", vertical()),
-        station("smallest", smallest()),
-    ]
+    let invented = [
+        ("relief post", relief_post()),
+        ("long list", long_list()),
+        ("hanging ends", hanging_ends()),
+        ("end fed", end_fed()),
+        ("smallest", smallest()),
+    ];
+    let mut out: Vec<Station> = invented.into_iter().map(|(name, plan)| station(name, plan)).collect();
+    let folder = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("../../demo-projects");
+    let mut files: Vec<_> = std::fs::read_dir(folder).unwrap().map(|entry| entry.unwrap().path()).collect();
+    files.sort();
+    assert!(!files.is_empty(), "no demo stations");
+    for path in files {
+        let name = path.file_stem().unwrap().to_string_lossy().into_owned();
+        out.push(station(&name, station::file::load(&path).unwrap()));
+    }
+    out
 }
 
-fn station(name: &'static str, plan: Plan) -> Station {
-    let report = report(&plan);
-    Station { name, plan, report }
+pub fn station(name: &str, plan: Plan) -> Station {
+    let report = Evaluator::new().evaluate(&plan, 1).unwrap_or_else(|error| panic!("{name}: {error}"));
+    Station { name: name.to_owned(), plan, report }
 }
 
 fn line(name: &str, z0_ohm: f64, velocity_factor: f64, length_m: f64, rating_peak_v: Option<f64>) -> Link {
@@ -165,39 +170,33 @@ fn relief_post() -> Plan {
     }
 }
 
+/// Text of the greatest length that a plan may have there, ending in one long word.
+fn longest(text: &str, characters: usize) -> String {
+    let words = text.chars().chain(" with WWWWWWWWWWWWWWWW".chars()).chain(std::iter::repeat('m'));
+    words.take(characters).collect()
+}
+
 fn long_list() -> Plan {
-    let long = "Coast and mountain coordination centre of the seven northern valleys, summer quarters";
     let mut plan = relief_post();
-    plan.name = long.to_owned();
-    plan.purpose = format!(
-        "{} {}",
-        plan.purpose,
-        "A second sentence says at length who may use it, and when. ".repeat(3)
-    );
-    plan.call_sign = "X9LONGCALL/PORTABLE".to_owned();
+    plan.name = longest("Coast and mountain coordination centre of the northern", 80);
+    plan.purpose = longest(&"It serves seven valleys at length, and says so in many words. ".repeat(6), 400);
+    plan.call_sign = longest("X9LONGCALL", 40);
     plan.bands = bands(30);
     for support in &mut plan.site.supports {
-        support.name = format!("{} beside the old customs house at the harbour", support.name);
+        support.name = longest(&format!("{} beside the customs house", support.name), 60);
     }
     plan.wires[0].path = vec![on(&plan.site.supports[0].name, 11.5), on(&plan.site.supports[1].name, 9.0)];
-    plan.wires[0].name = "main wire of the coordination centre, second edition".to_owned();
+    plan.wires[0].name = longest("main wire of the centre", 60);
+    let window = line(&longest("window line", 80), 450.0, 0.91, 24.0, Some(900.0));
+    let thin = line("thin coax", 50.0, 0.66, 6.0, Some(500.0));
+    let links = vec![window, Link::Transformer(Transformer { impedance_ratio: 9.0 }), thin, unit()];
+    plan.feeds.push(Feed { name: "window line, second transmitter".to_owned(), links });
     for feed in &mut plan.feeds {
-        feed.name = format!(
-            "{} through the wall of the radio room, Unbrechbarlangeswort{}",
-            feed.name,
-            "lang".repeat(12)
-        );
+        feed.name = longest(&feed.name, 60);
     }
-    let third = Feed {
-        name: "window line, second transmitter".to_owned(),
-        links: vec![
-            line("window line", 450.0, 0.91, 24.0, Some(900.0)),
-            Link::Transformer(Transformer { impedance_ratio: 9.0 }),
-            line("thin coax", 50.0, 0.66, 6.0, Some(500.0)),
-            unit(),
-        ],
-    };
-    plan.feeds.push(third);
+    for band in &mut plan.bands[11..] {
+        band.name = longest(&band.name, 60);
+    }
     plan
 }
 
@@ -221,15 +220,15 @@ fn hanging_ends() -> Plan {
     plan
 }
 
-fn vertical() -> Plan {
+fn end_fed() -> Plan {
     let mut plan = relief_post();
     plan.name = "Lighthouse spare".to_owned();
     plan.wires[0].path =
-        vec![PathPoint::Free(Point::new(0.0, 0.0, 0.5)), PathPoint::Free(Point::new(0.0, 0.0, 18.0))];
+        vec![PathPoint::Free(Point::new(0.0, 0.0, 2.5)), PathPoint::Free(Point::new(12.0, 16.0, 14.0))];
     plan.wires[0].start_m = 0.0;
-    plan.wires[0].cut_length_m = 17.5;
-    plan.feedpoint.fraction = 0.0;
-    plan.site.entrance = Point::new(5.0, 0.0, 0.5);
+    plan.wires[0].cut_length_m = 20.0;
+    plan.feedpoint.fraction = 0.02;
+    plan.site.entrance = Point::new(-3.0, -1.0, 1.0);
     plan.bands.truncate(3);
     plan
 }
@@ -242,202 +241,4 @@ fn smallest() -> Plan {
     plan.feeds = vec![Feed { name: "direct".to_owned(), links: Vec::new() }];
     plan.bands.truncate(1);
     plan
-}
-
-/// The wires as they hang: the same rule as the evaluator's, for paths over two or more points.
-fn hung(plan: &Plan) -> Hung {
-    let mut ropes = Vec::new();
-    let wires: Vec<HungWire> = plan
-        .wires
-        .iter()
-        .enumerate()
-        .map(|(index, wire)| {
-            let path: Vec<Point> = wire.path.iter().map(|point| place(plan, point)).collect();
-            hang_one(wire, &path, index, &mut ropes)
-        })
-        .collect();
-    let arc_m = plan.feedpoint.fraction * wires[plan.feedpoint.wire].length_m();
-    let at = wires[plan.feedpoint.wire].point_at(arc_m);
-    Hung { wires, ropes, feedpoint: Port { wire: plan.feedpoint.wire, arc_m, at } }
-}
-
-fn hang_one(wire: &Wire, path: &[Point], index: usize, ropes: &mut Vec<Rope>) -> HungWire {
-    let mut arcs = vec![0.0];
-    for pair in path.windows(2) {
-        arcs.push(arcs[arcs.len() - 1] + pair[0].distance_m(pair[1]));
-    }
-    let total = arcs[arcs.len() - 1];
-    let (from, to) = (wire.start_m, wire.start_m + wire.cut_length_m);
-    let at = |s: f64| {
-        let last = path.len() - 1;
-        if s < 0.0 {
-            return Point { z_m: path[0].z_m + s, ..path[0] };
-        }
-        if s > total {
-            return Point { z_m: path[last].z_m - (s - total), ..path[last] };
-        }
-        let i = (1..=last).find(|&i| s <= arcs[i]).unwrap_or(last);
-        path[i - 1].toward(path[i], (s - arcs[i - 1]) / (arcs[i] - arcs[i - 1]))
-    };
-    let mut marks = vec![from];
-    marks.extend(arcs.iter().copied().filter(|&s| s > from && s < to));
-    marks.push(to);
-    if from > 0.0 {
-        ropes.push(Rope {
-            wire: index,
-            end: WireEnd::Beginning,
-            points: vec![path[0], at(from)],
-            length_m: from,
-        });
-    }
-    if to < total {
-        let points = vec![path[path.len() - 1], at(to)];
-        ropes.push(Rope { wire: index, end: WireEnd::End, points, length_m: total - to });
-    }
-    let vertices = marks.into_iter().map(|s| Vertex { at: at(s), arc_m: s - from }).collect();
-    let ConductorChoice::Own(conductor) = wire.conductor.clone() else {
-        panic!("fixtures have their own conductors")
-    };
-    HungWire { vertices, conductor }
-}
-
-fn place(plan: &Plan, point: &PathPoint) -> Point {
-    match point {
-        PathPoint::Free(at) => *at,
-        PathPoint::OnSupport { support, height_m } => {
-            let foot = plan.site.supports.iter().find(|s| s.name == *support).unwrap().foot;
-            Point { z_m: foot.z_m + height_m, ..foot }
-        }
-    }
-}
-
-/// A report with values of every size, from a simple resonance curve.
-pub fn report(plan: &Plan) -> Report {
-    let hung = hung(plan);
-    let length_m = plan.wires[0].cut_length_m;
-    let bands = plan.bands.iter().map(|band| band_report(plan, band, length_m)).collect();
-    let finding = |weight, text: &str| Finding { weight, place: Place::Plan, text: text.to_owned() };
-    Report {
-        revision: 1,
-        model: Model::Sketch,
-        hung,
-        feed_names: plan.feeds.iter().map(|feed| feed.name.clone()).collect(),
-        link_names: plan
-            .feeds
-            .iter()
-            .map(|feed| feed.links.iter().map(|_| "link".to_owned()).collect())
-            .collect(),
-        bands,
-        findings: vec![
-            finding(Weight::Caution, "The wire's east end hangs 3.1 m over the path to the well."),
-            finding(Weight::Note, "Nothing else."),
-        ],
-    }
-}
-
-fn frequencies(range: &BandRange) -> Vec<f64> {
-    match range {
-        BandRange::Span { low_hz, high_hz } => {
-            (0..=20).map(|i| low_hz + (high_hz - low_hz) * f64::from(i) / 20.0).collect()
-        }
-        BandRange::Channels { frequencies_hz } => {
-            let mut sorted = frequencies_hz.clone();
-            sorted.sort_by(f64::total_cmp);
-            sorted
-        }
-    }
-}
-
-fn band_report(plan: &Plan, band: &Band, length_m: f64) -> BandReport {
-    let (low_hz, high_hz) = band.range.edges_hz();
-    let points: Vec<FrequencyReport> =
-        frequencies(&band.range).into_iter().map(|f| frequency_report(plan, f, length_m)).collect();
-    let middle = points.len() / 2;
-    let feeds = (0..plan.feeds.len())
-        .map(|feed| {
-            let worst = (0..points.len())
-                .max_by(|&a, &b| points[a].feeds[feed].kind.cmp(&points[b].feeds[feed].kind))
-                .unwrap();
-            let kind = points[worst].feeds[feed].kind;
-            let reason = format!(
-                "SWR {} at {}",
-                station::units::swr(points[worst].feeds[feed].at_transmitter.swr),
-                station::units::megahertz(points[worst].frequency_hz)
-            );
-            let covered_hz =
-                if kind.works() { vec![(low_hz, high_hz)] } else { vec![(low_hz, (low_hz + high_hz) / 2.0)] };
-            BandFeed { verdict: Verdict { kind, reason, worst, covered_hz }, profile: Vec::new() }
-        })
-        .collect();
-    let wave = StandingWave {
-        frequency_hz: points[middle].frequency_hz,
-        wires: plan
-            .wires
-            .iter()
-            .map(|_| WireWave { arc_m: vec![], current_a: vec![], potential_v: vec![], marks: vec![] })
-            .collect(),
-    };
-    BandReport { name: band.name.clone(), low_hz, high_hz, points, middle, feeds, wave }
-}
-
-fn seen(z_ohm: Complex64, reference_ohm: f64) -> Seen {
-    let gamma = ((z_ohm - reference_ohm) / (z_ohm + reference_ohm)).norm();
-    Seen { z_ohm, reference_ohm, swr: (1.0 + gamma) / (1.0 - gamma) }
-}
-
-fn frequency_report(plan: &Plan, frequency_hz: f64, length_m: f64) -> FrequencyReport {
-    // Half waves on the wire.
-    let half_waves = length_m * frequency_hz / 1.43e8;
-    let phase = std::f64::consts::PI * half_waves;
-    let feedpoint_ohm = Complex64::new(70.0 + 2500.0 * (phase / 2.0).cos().powi(4), -900.0 * phase.sin());
-    let feeds = plan
-        .feeds
-        .iter()
-        .enumerate()
-        .map(|(index, feed)| feed_report(plan, feed, index, feedpoint_ohm))
-        .collect();
-    FrequencyReport { frequency_hz, feedpoint_ohm, wire_efficiency: 0.96, feeds }
-}
-
-fn feed_report(plan: &Plan, feed: &Feed, index: usize, z: Complex64) -> FeedReport {
-    let at_feedpoint = seen(z, if index == 0 { 600.0 } else { 50.0 });
-    let before_unit = seen(z / if index == 0 { 9.0 } else { 1.2 }, 50.0);
-    let has_unit = feed.links.iter().any(|link| matches!(link, Link::MatchingUnit(_)));
-    let kind = match before_unit.swr {
-        r if r <= plan.transmitter.swr_limit => VerdictKind::Direct,
-        r if r < 9.0 && has_unit => VerdictKind::WithMatchingUnit,
-        r if r < 15.0 => VerdictKind::TooLossy,
-        r if r < 30.0 => VerdictKind::Overstressed,
-        _ => VerdictKind::OutOfRange,
-    };
-    let is_set = kind == VerdictKind::WithMatchingUnit;
-    let at_transmitter = if is_set { seen(Complex64::new(50.4, 1.0), 50.0) } else { before_unit };
-    let setting = is_set.then(|| Setting {
-        sense: if z.re > 400.0 { Sense::CapacitorAtWire } else { Sense::CapacitorAtTransmitter },
-        inductance_h: (before_unit.swr * 1.7) * 1e-6,
-        capacitance_f: 2.2e-9 / before_unit.swr,
-    });
-    let links: Vec<LinkReport> = feed
-        .links
-        .iter()
-        .map(|_| LinkReport {
-            loss_db: 0.04 * before_unit.swr,
-            watts_lost: 0.01 * before_unit.swr * plan.transmitter.power_w,
-            peak_v: (2.0 * plan.transmitter.power_w * 50.0 * before_unit.swr).sqrt(),
-            rms_a: (plan.transmitter.power_w / 50.0 * before_unit.swr).sqrt(),
-            toward_transmitter: before_unit,
-        })
-        .collect();
-    let loss_db: f64 = links.iter().map(|link| link.loss_db).sum();
-    FeedReport {
-        at_feedpoint,
-        before_unit,
-        at_transmitter,
-        setting,
-        links,
-        loss_db,
-        watts_to_wire: plan.transmitter.power_w * 10f64.powf(-loss_db / 10.0),
-        shortfall: None,
-        kind,
-    }
 }

@@ -1,0 +1,260 @@
+//! Paints what the crew measures on the site: heights, spans, lengths.
+
+use station::units::Units;
+
+use super::elevation::{Elevation, Piece, Place};
+use super::labels::{AROUND, Labels, along};
+use super::scale::Sight;
+use crate::fonts;
+use crate::scene::{Anchor, Frame, Item, Spot, Text};
+use crate::text::fit;
+use crate::tokens::{Ink, Stroke, TextStyle};
+
+/// Half the length of the stroke that ends a dimension line, mm.
+const TICK_MM: f64 = 0.9;
+/// From a support to its height's dimension line, mm.
+const HEIGHT_OFF_MM: f64 = 7.0;
+/// From the wire to the dimension line of a piece of it, mm.
+const ARM_OFF_MM: f64 = 3.0;
+/// Height of a row of spans below the earth, mm.
+const SPAN_ROW_MM: f64 = 4.8;
+/// Shorter spans are not worth a number, m.
+const LEAST_SPAN_M: f64 = 0.5;
+
+/// A dimension line with its ends and its number over it.
+fn dimension(
+    from: Spot,
+    to: Spot,
+    number: &str,
+    labels: &mut Labels,
+    items: &mut Vec<Item>,
+) -> Result<(), Text> {
+    items.push(Item::line(from, to, Stroke::Rule, Ink::Faint));
+    let length_mm = (to.x_mm - from.x_mm).hypot(to.y_mm - from.y_mm).max(f64::MIN_POSITIVE);
+    let (nx, ny) =
+        (-(to.y_mm - from.y_mm) / length_mm * TICK_MM, (to.x_mm - from.x_mm) / length_mm * TICK_MM);
+    for end in [from, to] {
+        let [a, b] = [1.0, -1.0].map(|side| Spot::new(end.x_mm + side * nx, end.y_mm + side * ny));
+        items.push(Item::line(a, b, Stroke::Frame, Ink::Faint));
+    }
+    labels.avoid(&[from, to]);
+    let candidates = along(from, to, TextStyle::Strong, number, 0.8);
+    if candidates.is_empty() {
+        return Err(Text::new(0.0, 0.0, TextStyle::Strong, number));
+    }
+    labels.put(candidates)
+}
+
+/// Height of the rows of names, mm: two where three or more supports may stand close.
+pub(super) fn names_mm(elevation: &Elevation) -> f64 {
+    let rows = if elevation.supports.len() > 2 { 2.0 } else { 1.0 };
+    rows * TextStyle::Body.leading_mm()
+}
+
+/// Height of the rows of spans, mm.
+pub(super) fn spans_mm(elevation: &Elevation) -> f64 {
+    let rows = if entrance_span(elevation).is_some() { 2.0 } else { 1.0 };
+    rows * SPAN_ROW_MM + TICK_MM + 0.3
+}
+
+/// Places along the plane where the path is made fast, from left to right.
+fn stations(elevation: &Elevation) -> Vec<f64> {
+    let mut out: Vec<f64> = elevation.fastenings.iter().map(|fastening| fastening.at.along_m).collect();
+    out.sort_by(f64::total_cmp);
+    out.dedup_by(|a, b| (*a - *b).abs() < LEAST_SPAN_M);
+    out
+}
+
+/// From the first fastening to the entrance.
+fn entrance_span(elevation: &Elevation) -> Option<(f64, f64)> {
+    let first_m = stations(elevation).first().copied()?;
+    let entrance_m = elevation.entrance.along_m;
+    ((entrance_m - first_m).abs() > LEAST_SPAN_M).then(|| (first_m.min(entrance_m), first_m.max(entrance_m)))
+}
+
+/// Spans between fastenings, and the entrance, in rows below the earth.
+pub(super) fn spans(
+    elevation: &Elevation,
+    sight: &Sight,
+    units: Units,
+    top_mm: f64,
+    (labels, items): (&mut Labels, &mut Vec<Item>),
+) {
+    let at = |along_m: f64, y_mm: f64| Spot::new(sight.spot(Place { along_m, up_m: 0.0 }).x_mm, y_mm);
+    let mut span = |from_m: f64, to_m: f64, y_mm: f64| {
+        let (from, to) = (at(from_m, y_mm), at(to_m, y_mm));
+        if let Err(text) = dimension(from, to, &units.tape(to_m - from_m), labels, items) {
+            labels.put_near(middle(from, to), &text, &[(0.0, 1.0), (1.0, 0.0), (-1.0, 0.0)]);
+        }
+    };
+    let y_mm = top_mm + SPAN_ROW_MM;
+    for pair in stations(elevation).windows(2) {
+        span(pair[0], pair[1], y_mm);
+    }
+    if let Some((from_m, to_m)) = entrance_span(elevation) {
+        span(from_m, to_m, y_mm + SPAN_ROW_MM);
+    }
+}
+
+/// Heights at which the wire's path is made fast, over the foot of each support.
+pub(super) fn heights(
+    elevation: &Elevation,
+    sight: &Sight,
+    units: Units,
+    (labels, items): (&mut Labels, &mut Vec<Item>),
+) {
+    let last = elevation.fastenings.len().saturating_sub(1);
+    let is_leftward = elevation
+        .fastenings
+        .first()
+        .zip(elevation.fastenings.last())
+        .is_some_and(|(first, last)| first.at.along_m > last.at.along_m);
+    for (index, fastening) in elevation.fastenings.iter().enumerate() {
+        let height_m = fastening.at.up_m - fastening.foot_m;
+        let side = if (index == last && last > 0) != is_leftward { 1.0 } else { -1.0 };
+        let off = |spot: Spot| Spot::new(spot.x_mm + side * HEIGHT_OFF_MM, spot.y_mm);
+        let top = sight.spot(fastening.at);
+        let foot = sight.spot(Place { up_m: fastening.foot_m, ..fastening.at });
+        items.push(Item::line(
+            top,
+            Spot::new(off(top).x_mm + side * TICK_MM, top.y_mm),
+            Stroke::Hair,
+            Ink::Rule,
+        ));
+        if let Err(text) = dimension(off(foot), off(top), &units.tape(height_m), labels, items) {
+            labels.put_near(off(top), &text, &AROUND);
+        }
+    }
+}
+
+/// Lengths of the pieces of wire, each over its dimension line; the parts of a bent piece get their own numbers.
+pub(super) fn arms(
+    elevation: &Elevation,
+    sight: &Sight,
+    units: Units,
+    (labels, items): (&mut Labels, &mut Vec<Item>),
+) {
+    for arm in &elevation.arms {
+        let words = format!("{} {}", arm.mark, units.tape(arm.length_m()));
+        let longest = longest(arm);
+        for (index, pair) in arm.places.windows(2).enumerate() {
+            let (from, to) = (sight.spot(pair[0]), sight.spot(pair[1]));
+            if index == longest && arm.lengths_m.len() == 1 {
+                let (from, to) = lifted(from, to, ARM_OFF_MM);
+                if let Err(text) = dimension(from, to, &words, labels, items) {
+                    labels.put_near(middle(from, to), &text, &AROUND);
+                }
+                continue;
+            }
+            let part = if index == longest {
+                let text = format!("{words}, here {}", units.tape(arm.lengths_m[index]));
+                Text::new(0.0, 0.0, TextStyle::Strong, text)
+            } else {
+                Text::new(0.0, 0.0, TextStyle::Body, units.tape(arm.lengths_m[index]))
+            };
+            if along(from, to, part.style, &part.text, 1.0).is_empty()
+                || labels.put(along(from, to, part.style, &part.text, 1.0)).is_err()
+            {
+                labels.put_near(middle(from, to), &part, &AROUND);
+            }
+        }
+    }
+}
+
+/// Lengths of ropes, and what the feedpoint, the line and the entrance are.
+pub(super) fn names(
+    elevation: &Elevation,
+    sight: &Sight,
+    units: Units,
+    lines: &[String],
+    labels: &mut Labels,
+) {
+    for rope in &elevation.ropes {
+        let words = format!("{} {}", rope.mark, units.tape(rope.length_m()));
+        let longest = longest(rope);
+        if let Some(pair) = rope.places.windows(2).nth(longest) {
+            let (from, to) = (sight.spot(pair[0]), sight.spot(pair[1]));
+            let candidates = along(from, to, TextStyle::Body, &words, 1.0);
+            if candidates.is_empty() || labels.put(candidates).is_err() {
+                let text = Text::new(0.0, 0.0, TextStyle::Body, words);
+                labels.put_near(
+                    middle(from, to),
+                    &text,
+                    &[(0.0, 1.0), (0.71, 0.71), (-0.71, 0.71), (0.0, -1.0), (0.71, -0.71), (-0.71, -0.71)],
+                );
+            }
+        }
+    }
+    let (feedpoint, entrance) = (sight.spot(elevation.feedpoint), sight.spot(elevation.entrance));
+    let text = format!("feedpoint, {} up", units.tape(elevation.feedpoint.up_m));
+    labels.put_near(
+        feedpoint,
+        &Text::new(0.0, 0.0, TextStyle::Body, text),
+        &[(0.71, 0.71), (-0.71, 0.71), (1.0, 0.0), (-1.0, 0.0), (0.71, -0.71), (-0.71, -0.71)],
+    );
+    for line in lines {
+        let text = Text::new(0.0, 0.0, TextStyle::Body, line);
+        labels.put_near(middle(feedpoint, entrance), &text, &AROUND);
+    }
+    let text = Text::new(0.0, 0.0, TextStyle::Body, entrance_words(elevation, units));
+    labels.put_near(Spot::new(entrance.x_mm, entrance.y_mm), &text, &AROUND);
+}
+
+fn entrance_words(elevation: &Elevation, units: Units) -> String {
+    // Less than this is not worth saying, m.
+    const BESIDE_M: f64 = 0.5;
+    let up = format!("entrance, {} up", units.tape(elevation.entrance.up_m));
+    let behind_m = elevation.entrance_behind_m;
+    if behind_m.abs() < BESIDE_M {
+        return up;
+    }
+    let side = if behind_m > 0.0 { "behind" } else { "in front" };
+    format!("{up}, {} {side}", units.tape(behind_m.abs()))
+}
+
+/// Names of the supports, in up to two rows at the foot of the drawing.
+pub(super) fn support_names(
+    elevation: &Elevation,
+    sight: &Sight,
+    frame: Frame,
+    top_mm: f64,
+    labels: &mut Labels,
+) {
+    let count = elevation.supports.len().max(1) as f64;
+    let room_mm = (frame.width_mm / count).max(24.0) - 2.0;
+    for support in &elevation.supports {
+        let x_mm = sight.spot(support.foot).x_mm;
+        let name = fit(TextStyle::Body, &fonts::printable(&support.name), room_mm);
+        let text = Text::new(0.0, 0.0, TextStyle::Body, name).ink(Ink::Support);
+        let half_mm = text.width_mm() / 2.0 + 0.6;
+        let middle_mm =
+            x_mm.clamp(frame.left_mm + half_mm, (frame.right_mm() - half_mm).max(frame.left_mm + half_mm));
+        let rows = (0..2).map(|row| {
+            let y_mm = top_mm + TextStyle::Body.leading_mm() * (f64::from(row) + 0.85);
+            Text { at: Spot::new(middle_mm, y_mm), anchor: Anchor::Middle, ..text.clone() }
+        });
+        if let Err(text) = labels.put(rows) {
+            labels.put_near(Spot::new(x_mm, top_mm), &text, &AROUND);
+        }
+    }
+}
+
+/// Index of the longest straight part.
+fn longest(piece: &Piece) -> usize {
+    (0..piece.lengths_m.len()).max_by(|&a, &b| piece.lengths_m[a].total_cmp(&piece.lengths_m[b])).unwrap_or(0)
+}
+
+fn middle(a: Spot, b: Spot) -> Spot {
+    Spot::new((a.x_mm + b.x_mm) / 2.0, (a.y_mm + b.y_mm) / 2.0)
+}
+
+/// A line moved up, at right angles to itself; to the left where it stands upright.
+fn lifted(from: Spot, to: Spot, by_mm: f64) -> (Spot, Spot) {
+    let length_mm = (to.x_mm - from.x_mm).hypot(to.y_mm - from.y_mm).max(f64::MIN_POSITIVE);
+    let (mut nx, mut ny) = ((to.y_mm - from.y_mm) / length_mm, -(to.x_mm - from.x_mm) / length_mm);
+    if ny > 1e-9 || (ny.abs() <= 1e-9 && nx > 0.0) {
+        (nx, ny) = (-nx, -ny);
+    }
+    let lift = |spot: Spot| Spot::new(spot.x_mm + nx * by_mm, spot.y_mm + ny * by_mm);
+    (lift(from), lift(to))
+}

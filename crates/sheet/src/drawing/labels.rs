@@ -1,0 +1,190 @@
+//! Places labels so that none lies on another one, none leaves the drawing, and few cross a line.
+
+use crate::scene::{Anchor, Frame, Item, Spot, Text, overlap};
+use crate::tokens::{Ink, Stroke, TextStyle};
+
+/// Free space kept around a label, mm.
+const CLEAR_MM: f64 = 0.5;
+/// Half the width that a line is taken to have, mm.
+const LINE_MM: f64 = 0.3;
+/// From here on a label is tied to its place by a line, mm.
+const LEADER_FROM_MM: f64 = 4.0;
+/// How far from its place a label may stand, mm.
+const DISTANCES_MM: [f64; 7] = [1.2, 3.0, 5.0, 8.0, 12.0, 17.0, 23.0];
+
+/// What is taken already.
+pub(super) struct Labels {
+    frame: Frame,
+    texts: Vec<[Spot; 4]>,
+    lines: Vec<[Spot; 4]>,
+    items: Vec<Item>,
+    unplaced: Vec<String>,
+}
+
+impl Labels {
+    /// An empty drawing.
+    pub fn new(frame: Frame) -> Self {
+        Self { frame, texts: Vec::new(), lines: Vec::new(), items: Vec::new(), unplaced: Vec::new() }
+    }
+
+    /// Keeps labels off a line.
+    pub fn avoid(&mut self, points: &[Spot]) {
+        self.lines.extend(points.windows(2).map(|pair| ribbon(pair[0], pair[1])));
+    }
+
+    /// Puts the first of some texts that stands free; gives the last one back where none does.
+    pub fn put(&mut self, candidates: impl IntoIterator<Item = Text>) -> Result<(), Text> {
+        let mut refused = None;
+        for text in candidates {
+            if self.is_free(&text) {
+                self.texts.push(grown(&text));
+                self.items.push(Item::Text(text));
+                return Ok(());
+            }
+            refused = Some(text);
+        }
+        refused.map_or(Ok(()), Err)
+    }
+
+    /// Puts an upright text near a spot, tied to it by a line where it has to stand off; says so in words where there
+    /// is no room at all.
+    pub fn put_near(&mut self, spot: Spot, text: &Text, directions: &[(f64, f64)]) {
+        for distance_mm in DISTANCES_MM {
+            for &direction in directions {
+                let candidate = beside(spot, direction, distance_mm, text);
+                if self.is_free(&candidate) {
+                    if distance_mm >= LEADER_FROM_MM {
+                        let from = Spot::new(
+                            spot.x_mm + direction.0 * (distance_mm - 0.8),
+                            spot.y_mm + direction.1 * (distance_mm - 0.8),
+                        );
+                        self.items.push(Item::line(spot, from, Stroke::Hair, Ink::Faint));
+                        self.avoid(&[spot, from]);
+                    }
+                    self.texts.push(grown(&candidate));
+                    self.items.push(Item::Text(candidate));
+                    return;
+                }
+            }
+        }
+        self.unplaced.push(text.text.clone());
+    }
+
+    /// What was put, and what found no room.
+    pub fn finish(self) -> (Vec<Item>, Vec<String>) {
+        (self.items, self.unplaced)
+    }
+
+    fn is_free(&self, text: &Text) -> bool {
+        let corners = grown(text);
+        let is_within = corners.iter().all(|corner| {
+            corner.x_mm >= self.frame.left_mm
+                && corner.x_mm <= self.frame.right_mm()
+                && corner.y_mm >= self.frame.top_mm
+                && corner.y_mm <= self.frame.bottom_mm()
+        });
+        is_within && !self.texts.iter().chain(&self.lines).any(|taken| overlap(&corners, taken))
+    }
+}
+
+/// All eight directions, right first.
+pub(super) const AROUND: [(f64, f64); 8] = [
+    (1.0, 0.0),
+    (0.71, -0.71),
+    (0.71, 0.71),
+    (-1.0, 0.0),
+    (-0.71, -0.71),
+    (-0.71, 0.71),
+    (0.0, -1.0),
+    (0.0, 1.0),
+];
+
+/// A text beside a spot: its middle or its end nearest to the spot lies at the distance.
+fn beside(spot: Spot, (x, y): (f64, f64), distance_mm: f64, text: &Text) -> Text {
+    let anchor = match x {
+        x if x > 0.5 => Anchor::Start,
+        x if x < -0.5 => Anchor::End,
+        _ => Anchor::Middle,
+    };
+    let size_mm = text.style.size_mm();
+    let half_capital_mm = crate::fonts::CAPITAL_HEIGHT * size_mm / 2.0;
+    let away_mm = if anchor == Anchor::Middle { y * size_mm * 0.6 } else { 0.0 };
+    let at = Spot::new(spot.x_mm + x * distance_mm, spot.y_mm + y * distance_mm + away_mm + half_capital_mm);
+    Text { at, anchor, ..text.clone() }
+}
+
+/// A label along a line: over its middle, then under it, then nearer to its ends.
+pub(super) fn along(from: Spot, to: Spot, style: TextStyle, words: &str, gap_mm: f64) -> Vec<Text> {
+    // Text reads from left to right, and upright lines from below.
+    let (from, to) =
+        if from.x_mm > to.x_mm + 1e-6 || ((from.x_mm - to.x_mm).abs() <= 1e-6 && from.y_mm < to.y_mm) {
+            (to, from)
+        } else {
+            (from, to)
+        };
+    let (dx, dy) = (to.x_mm - from.x_mm, to.y_mm - from.y_mm);
+    let length_mm = dx.hypot(dy);
+    let text = Text::new(0.0, 0.0, style, words).anchor(Anchor::Middle);
+    if length_mm < text.width_mm() {
+        return Vec::new();
+    }
+    let (ux, uy) = (dx / length_mm, dy / length_mm);
+    let turn_deg = uy.atan2(ux).to_degrees();
+    let over_mm = gap_mm + crate::fonts::DESCENT * style.size_mm();
+    let under_mm = gap_mm + crate::fonts::ASCENT * style.size_mm();
+    let mut out = Vec::new();
+    for share in [0.5, 0.35, 0.65, 0.2, 0.8] {
+        for off_mm in [-over_mm, under_mm] {
+            let at = Spot::new(from.x_mm + share * dx - uy * off_mm, from.y_mm + share * dy + ux * off_mm);
+            out.push(Text { at, ..text.clone() }.turned(turn_deg));
+        }
+    }
+    out
+}
+
+fn grown(text: &Text) -> [Spot; 4] {
+    let (sin, cos) = text.turn_deg.to_radians().sin_cos();
+    let [a, b, c, d] = text.corners();
+    let shift = |p: Spot, x: f64, y: f64| {
+        let (x, y) = (x * CLEAR_MM, y * CLEAR_MM);
+        Spot::new(p.x_mm + x * cos - y * sin, p.y_mm + x * sin + y * cos)
+    };
+    [shift(a, -1.0, -1.0), shift(b, 1.0, -1.0), shift(c, 1.0, 1.0), shift(d, -1.0, 1.0)]
+}
+
+fn ribbon(from: Spot, to: Spot) -> [Spot; 4] {
+    let (dx, dy) = (to.x_mm - from.x_mm, to.y_mm - from.y_mm);
+    let length_mm = dx.hypot(dy).max(f64::MIN_POSITIVE);
+    let (nx, ny) = (-dy / length_mm * LINE_MM, dx / length_mm * LINE_MM);
+    [
+        Spot::new(from.x_mm + nx, from.y_mm + ny),
+        Spot::new(to.x_mm + nx, to.y_mm + ny),
+        Spot::new(to.x_mm - nx, to.y_mm - ny),
+        Spot::new(from.x_mm - nx, from.y_mm - ny),
+    ]
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn labels_at_one_spot_move_apart_or_are_given_back() {
+        let frame = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: 60.0, height_mm: 40.0 };
+        let mut labels = Labels::new(frame);
+        let spot = Spot::new(30.0, 20.0);
+        for index in 0..40 {
+            labels.put_near(spot, &Text::new(0.0, 0.0, TextStyle::Body, format!("label {index}")), &AROUND);
+        }
+        let (items, unplaced) = labels.finish();
+        let boxes: Vec<_> = items
+            .iter()
+            .filter_map(|item| if let Item::Text(text) = item { Some(text.corners()) } else { None })
+            .collect();
+        assert_eq!(boxes.len() + unplaced.len(), 40);
+        assert!(boxes.len() >= 8, "only {} found room", boxes.len());
+        for (index, a) in boxes.iter().enumerate() {
+            assert!(boxes[index + 1..].iter().all(|b| !overlap(a, b)));
+        }
+    }
+}

@@ -1,0 +1,127 @@
+//! Paints what stands on the site: earth, supports, wires, ropes, the way of the feed line.
+
+use station::plan::SupportKind;
+
+use super::elevation::{Elevation, Place, SupportSide};
+use super::scale::Sight;
+use crate::scene::{Frame, Item, Spot};
+use crate::tokens::{Ink, Stroke};
+
+/// Depth of the band of earth, mm.
+pub(super) const EARTH_MM: f64 = 2.6;
+/// Distance of the hatching's strokes, mm.
+const HATCH_MM: f64 = 2.4;
+/// Half of a support's width on paper, mm; supports are drawn as signs, only their height is to scale.
+const HALF_SUPPORT_MM: f64 = 3.2;
+/// Radius of an insulator, mm.
+const INSULATOR_MM: f64 = 0.9;
+
+/// The earth's surface through the feet of the supports, from edge to edge.
+pub(super) fn surface(elevation: &Elevation, sight: &Sight, left_mm: f64, right_mm: f64) -> Vec<Spot> {
+    let feet: Vec<Spot> = elevation.supports.iter().map(|support| sight.spot(support.foot)).collect();
+    let level = sight.spot(Place { along_m: 0.0, up_m: 0.0 }).y_mm;
+    let first = feet.first().map_or(level, |spot| spot.y_mm);
+    let last = feet.last().map_or(level, |spot| spot.y_mm);
+    let mut out = vec![Spot::new(left_mm, first)];
+    out.extend(feet);
+    out.push(Spot::new(right_mm, last));
+    out
+}
+
+/// The earth below its surface.
+pub(super) fn earth(surface: &[Spot], items: &mut Vec<Item>) {
+    let lowered = surface.iter().rev().map(|spot| Spot::new(spot.x_mm, spot.y_mm + EARTH_MM));
+    let points = surface.iter().copied().chain(lowered).collect();
+    items.push(Item::Area { points, fill: Ink::Earth, outline: None });
+    for pair in surface.windows(2) {
+        let width_mm = pair[1].x_mm - pair[0].x_mm;
+        let count = (width_mm / HATCH_MM).floor().max(0.0) as usize;
+        for index in 0..count {
+            let share = (index as f64 + 0.5) * HATCH_MM / width_mm;
+            let top = Spot::new(
+                pair[0].x_mm + share * width_mm,
+                pair[0].y_mm + share * (pair[1].y_mm - pair[0].y_mm),
+            );
+            let foot = Spot::new(top.x_mm - EARTH_MM * 0.7, top.y_mm + EARTH_MM);
+            items.push(Item::line(top, foot, Stroke::Hair, Ink::Faint));
+        }
+    }
+    items.push(Item::Line { points: surface.to_vec(), stroke: Stroke::Earth, ink: Ink::Text });
+}
+
+/// A support, as a sign of its kind.
+pub(super) fn support(support: &SupportSide, sight: &Sight, items: &mut Vec<Item>) {
+    let foot = sight.spot(support.foot);
+    let top = sight.spot(Place { up_m: support.top_m, ..support.foot });
+    let at = |x: f64, y: f64| Spot::new(foot.x_mm + x * HALF_SUPPORT_MM, y);
+    match support.kind {
+        SupportKind::Mast => {
+            items.push(Item::line(foot, top, Stroke::Support, Ink::Support));
+            let base = vec![at(-0.6, foot.y_mm), at(0.6, foot.y_mm), at(0.0, foot.y_mm - 1.8)];
+            items.push(Item::Area { points: base, fill: Ink::Support, outline: None });
+        }
+        SupportKind::Tree => {
+            let height_mm = foot.y_mm - top.y_mm;
+            let crown = top.y_mm + 0.62 * height_mm;
+            let outline = Some((Stroke::Rule, Ink::Support));
+            let points = crown_outline(foot.x_mm, top.y_mm, crown);
+            items.push(Item::Area { points, fill: Ink::Panel, outline });
+            items.push(Item::line(foot, top, Stroke::Support, Ink::Support));
+        }
+        SupportKind::Building => {
+            let eaves = top.y_mm + (foot.y_mm - top.y_mm) * 0.35;
+            let points = vec![
+                at(-1.4, foot.y_mm),
+                at(-1.4, eaves),
+                at(0.0, top.y_mm),
+                at(1.4, eaves),
+                at(1.4, foot.y_mm),
+            ];
+            let outline = Some((Stroke::Frame, Ink::Support));
+            items.push(Item::Area { points, fill: Ink::Panel, outline });
+        }
+    }
+}
+
+/// The outline of a tree's crown: a circle of lobes, stretched between top and crown's foot.
+fn crown_outline(x_mm: f64, top_mm: f64, foot_mm: f64) -> Vec<Spot> {
+    const CORNERS: usize = 72;
+    let (middle_mm, half_mm) = ((top_mm + foot_mm) / 2.0, (foot_mm - top_mm) / 2.0);
+    (0..CORNERS)
+        .map(|corner| {
+            let angle = corner as f64 / CORNERS as f64 * std::f64::consts::TAU;
+            let lobe = 0.88 + 0.12 * (4.5 * angle).sin().abs();
+            let (sin, cos) = angle.sin_cos();
+            Spot::new(x_mm + 1.7 * HALF_SUPPORT_MM * lobe * sin, middle_mm - half_mm * lobe * cos)
+        })
+        .collect()
+}
+
+/// Wires, ropes, insulators, the feedpoint and the way of the feed line.
+pub(super) fn wires(elevation: &Elevation, sight: &Sight, items: &mut Vec<Item>) {
+    let feedpoint = sight.spot(elevation.feedpoint);
+    let entrance = sight.spot(elevation.entrance);
+    let line = [-0.5, 0.5].map(|off_mm| {
+        let shift = |spot: Spot| Spot::new(spot.x_mm + off_mm, spot.y_mm);
+        Item::line(shift(feedpoint), shift(entrance), Stroke::Rule, Ink::Text)
+    });
+    items.extend(line);
+    items.push(Item::area(
+        Frame { left_mm: entrance.x_mm - 1.4, top_mm: entrance.y_mm - 1.4, width_mm: 2.8, height_mm: 2.8 },
+        Ink::Text,
+    ));
+    for rope in &elevation.ropes {
+        let points = rope.places.iter().map(|&place| sight.spot(place)).collect();
+        items.push(Item::Line { points, stroke: Stroke::Rope, ink: Ink::Rope });
+    }
+    for arm in &elevation.arms {
+        let points = arm.places.iter().map(|&place| sight.spot(place)).collect();
+        items.push(Item::Line { points, stroke: Stroke::Wire, ink: Ink::Wire });
+    }
+    let outline = Some((Stroke::Frame, Ink::Wire));
+    for &end in &elevation.ends {
+        items.push(Item::disc(sight.spot(end), INSULATOR_MM, Ink::Background, outline));
+    }
+    items.push(Item::disc(feedpoint, INSULATOR_MM * 1.4, Ink::Background, outline));
+    items.push(Item::disc(feedpoint, INSULATOR_MM * 0.5, Ink::Wire, None));
+}
