@@ -94,6 +94,12 @@ impl Desk {
         self.notice = Some(notice);
     }
 
+    /// What stands in that bar.
+    #[must_use]
+    pub fn notice(&self) -> Option<&Notice> {
+        self.notice.as_ref()
+    }
+
     /// Whether a dialog lies over the window: then keys are for the dialog.
     #[must_use]
     pub fn is_asking(&self) -> bool {

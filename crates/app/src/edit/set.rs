@@ -54,7 +54,7 @@ fn wire(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
             wire.start_m = *start_m;
         }
         Edit::CutLength { wire, cut_length_m } => {
-            get(&mut plan.wires, *wire, "wire")?.cut_length_m = *cut_length_m
+            get(&mut plan.wires, *wire, "wire")?.cut_length_m = *cut_length_m;
         }
         Edit::WireSpan { wire, start_m, cut_length_m } => {
             let wire = get(&mut plan.wires, *wire, "wire")?;
@@ -79,14 +79,30 @@ fn wire(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
 fn support(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
     match edit {
         Edit::SupportFoot { support, foot } => {
-            get(&mut plan.site.supports, *support, "support")?.foot = *foot
+            get(&mut plan.site.supports, *support, "support")?.foot = *foot;
         }
         Edit::SupportHeight { support, height_m } => {
-            get(&mut plan.site.supports, *support, "support")?.height_m = *height_m;
+            let support = get(&mut plan.site.supports, *support, "support")?;
+            let before_m = std::mem::replace(&mut support.height_m, *height_m);
+            let name = support.name.clone();
+            follow_top(plan, &name, before_m, *height_m);
         }
         _ => {}
     }
     Ok(())
+}
+
+/// A fixing this close to a support's top is at its top, m.
+const AT_TOP_M: f64 = 0.05;
+
+/// What is made fast at a support's top goes up and down with it, and nothing is left above it.
+fn follow_top(plan: &mut Plan, support: &str, before_m: f64, after_m: f64) {
+    for place in plan.wires.iter_mut().flat_map(|wire| &mut wire.path) {
+        let PathPoint::OnSupport { support: on, height_m } = place else { continue };
+        if on == support && (*height_m > before_m - AT_TOP_M || *height_m > after_m) {
+            *height_m = after_m;
+        }
+    }
 }
 
 fn link(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {

@@ -166,3 +166,24 @@ fn impossible_edits_are_refused_with_a_sentence() {
     assert_eq!(sentence, "link 2 of this feed is not a piece of line");
     assert!(!refused(Edit::Bands(Vec::new())).is_empty());
 }
+
+#[test]
+fn what_is_at_a_supports_top_follows_it_and_nothing_is_left_above() {
+    let demo = start::demo();
+    let height_of = |plan: &Plan, point: usize| match &plan.wires[0].path[point] {
+        PathPoint::OnSupport { height_m, .. } => *height_m,
+        PathPoint::Free(at) => at.z_m,
+    };
+    let PathPoint::OnSupport { support: name, .. } = &demo.wires[0].path[0] else { panic!("on a support") };
+    let support = demo.site.supports.iter().position(|s| s.name == *name).unwrap();
+    let top_m = demo.site.supports[support].height_m;
+    // Lower than its top, the wire stays while the support grows, and comes down with it.
+    let higher = after(Edit::SupportHeight { support, height_m: top_m + 2.0 });
+    assert!(near(height_of(&higher, 0), height_of(&demo, 0)));
+    let lower_m = height_of(&demo, 0) - 1.0;
+    let lower = after(Edit::SupportHeight { support, height_m: lower_m });
+    assert!(near(height_of(&lower, 0), lower_m));
+    // Now it is at the top, and goes up with it.
+    let again = apply(&lower, &Edit::SupportHeight { support, height_m: lower_m + 0.5 }).unwrap().plan;
+    assert!(near(height_of(&again, 0), lower_m + 0.5));
+}

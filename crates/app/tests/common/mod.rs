@@ -1,5 +1,6 @@
 //! A hand at the window, without display or GPU: finds things by their accessible names, waits for the real worker.
 #![allow(dead_code)] // Each file of stories uses a part.
+#![allow(clippy::unwrap_used)] // A failed step of a story is a failed story.
 
 use std::cell::RefCell;
 use std::collections::VecDeque;
@@ -35,7 +36,8 @@ impl Chooser for FakeChooser {
     }
 
     fn answer(&mut self) -> Option<Chosen> {
-        std::mem::take(&mut self.pending).then(|| self.answers.borrow_mut().pop_front().unwrap_or(Chosen::NoDialog))
+        std::mem::take(&mut self.pending)
+            .then(|| self.answers.borrow_mut().pop_front().unwrap_or(Chosen::NoDialog))
     }
 }
 
@@ -44,6 +46,7 @@ pub struct Window {
     pub harness: Harness<'static, Wirewright>,
     folder: TempDir,
     chooser: FakeChooser,
+    system: Vec<String>,
 }
 
 impl Window {
@@ -70,7 +73,7 @@ impl Window {
             .with_size(vec2(size[0], size[1]))
             .renderer(Pictures::default())
             .build_eframe(|cc| Wirewright::new(&cc.egui_ctx, beginning));
-        let mut window = Self { harness, folder, chooser };
+        let mut window = Self { harness, folder, chooser, system: Vec::new() };
         window.settle();
         window
     }
@@ -108,7 +111,7 @@ impl Window {
     /// Clicks the thing with this name.
     pub fn click(&mut self, name: &str) {
         self.harness.get_by_label(name).click();
-        self.harness.run_steps(3);
+        self.watch(3);
     }
 
     pub fn has(&self, name: &str) -> bool {
@@ -158,6 +161,40 @@ impl Window {
             self.harness.run_steps(1);
         }
         self.harness.drop_at(to);
+        self.harness.run_steps(2);
+    }
+
+    /// Presses the window's own close button.
+    pub fn close(&mut self) {
+        let viewport = self.harness.input_mut().viewports.entry(egui::ViewportId::ROOT).or_default();
+        viewport.events.push(egui::ViewportEvent::Close);
+        self.watch(1);
+        let viewport = self.harness.input_mut().viewports.entry(egui::ViewportId::ROOT).or_default();
+        viewport.events.clear();
+        self.watch(2);
+    }
+
+    /// Steps, and notes what is asked of the window system.
+    pub fn watch(&mut self, steps: usize) {
+        for _ in 0..steps {
+            self.harness.run_steps(1);
+            if let Some(output) = self.harness.output().viewport_output.get(&egui::ViewportId::ROOT) {
+                self.system.extend(output.commands.iter().map(|command| format!("{command:?}")));
+            }
+        }
+    }
+
+    /// What was asked of the window system while it was watched.
+    pub fn asked_of_system(&self) -> &[String] {
+        &self.system
+    }
+
+    /// Types a text into the field with this name, in place of what stands there.
+    pub fn type_into(&mut self, name: &str, text: &str) {
+        self.node(name).focus();
+        self.harness.run_steps(2);
+        self.ctrl(Key::A);
+        self.node(name).type_text(text);
         self.harness.run_steps(2);
     }
 
