@@ -462,7 +462,7 @@ impl LosslessNetwork {
             target_ohm,
             parts,
         })
-        .unwrap()
+        .expect("the parts are large enough")
     }
 }
 
