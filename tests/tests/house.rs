@@ -34,7 +34,8 @@ fn manifest(name: &str) -> String {
 #[test]
 fn each_crate_uses_only_what_lies_below_it() {
     for (name, allowed) in ALLOWED {
-        let used = dependencies(&manifest(name), name, &["dependencies", "dev-dependencies", "build-dependencies"]);
+        let used =
+            dependencies(&manifest(name), name, &["dependencies", "dev-dependencies", "build-dependencies"]);
         for ours in used.iter().filter(|d| OURS.contains(&d.as_str())) {
             assert!(allowed.contains(&ours.as_str()), "{name} must not use {ours}");
         }

@@ -1,8 +1,7 @@
 //! Feed lines and matching networks against published values and facts of the trade. Figures and their sources
 //! stand in `data/line/*.toml`.
 
-use std::path::Path;
-
+use checks::{Table, assert_relative, data};
 use num_complex::Complex64;
 use physics::conductor::RoundWire;
 use physics::constants::{COPPER_CONDUCTIVITY_S_PER_M, SPEED_OF_LIGHT_M_PER_S};
@@ -12,7 +11,6 @@ use physics::line::{
 };
 use physics::network::{LMatch, LProblem, Parts, l_network};
 use serde::Deserialize;
-use serde::de::DeserializeOwned;
 use station::catalogue;
 use station::plan::LineConstruction;
 
@@ -21,42 +19,6 @@ const DB_PER_NEPER: f64 = 8.685_889_638_065_035;
 
 /// dB per 100 m in one dB per 100 ft.
 const PER_100_M: f64 = 1.0 / 0.3048;
-
-fn data<T: DeserializeOwned>(name: &str) -> T {
-    let path = Path::new(env!("CARGO_MANIFEST_DIR")).join("data/line").join(name);
-    let text = std::fs::read_to_string(&path).unwrap_or_else(|error| panic!("{}: {error}", path.display()));
-    toml::from_str(&text).unwrap_or_else(|error| panic!("{name}: {error}"))
-}
-
-/// Rows with their tolerance and their source.
-#[derive(Deserialize)]
-struct Table<Row> {
-    source: String,
-    #[serde(alias = "relative_tolerance", alias = "tolerance_ohm", alias = "tolerance_db")]
-    tolerance: f64,
-    rows: Vec<Row>,
-}
-
-impl<Row> Table<Row> {
-    fn assert_absolute(&self, what: &str, got: f64, expected: f64) {
-        let Self { source, tolerance, .. } = self;
-        assert!(
-            (got - expected).abs() <= *tolerance,
-            "{what}: {got} for {expected} ± {tolerance} ({source})"
-        );
-    }
-
-    fn assert_relative(&self, what: &str, got: f64, expected: f64) {
-        assert_relative(&self.source, what, got, (expected, self.tolerance));
-    }
-}
-
-fn assert_relative(source: &str, what: &str, got: f64, (expected, tolerance): (f64, f64)) {
-    assert!(
-        (got / expected - 1.0).abs() <= tolerance,
-        "{what}: {got} for {expected}, {tolerance} ({source})"
-    );
-}
 
 fn within(what: &str, value: f64, [low, high]: [f64; 2], source: &str) {
     assert!((low..=high).contains(&value), "{what}: {value}, expected {low} to {high} ({source})");
@@ -112,7 +74,7 @@ struct Impedance {
 
 #[test]
 fn characteristic_impedance_from_geometry() {
-    let data: Impedance = data("impedance.toml");
+    let data: Impedance = data("line/impedance.toml");
     for table in [&data.two_wire, &data.two_wire_spacing] {
         for &[d, spacing, z0_ohm] in &table.rows {
             let got = bare_copper(d, spacing).lossless_z0_ohm().unwrap();
@@ -320,7 +282,7 @@ fn two_points_fix_the_loss_law() {
 
 #[test]
 fn the_catalogue_follows_published_attenuation() {
-    let data: Loss = data("loss.toml");
+    let data: Loss = data("line/loss.toml");
     for Published { id, source, tolerance, tolerance_1_mhz, points } in &data.published {
         let law = fit(points, PER_100_M);
         let (_, kept) = catalogue_law(id);
@@ -390,7 +352,7 @@ struct CoaxTrade {
 
 #[test]
 fn open_wire_carries_a_full_wave_that_thin_clad_window_line_and_coax_do_not() {
-    let Trade { full_wave: case, coax } = data("trade.toml");
+    let Trade { full_wave: case, coax } = data("line/trade.toml");
     let at_load = State::of_load(case.load_ohm.into());
     for f_mhz in &case.frequencies_mhz {
         let loss = |id: &str| {
@@ -468,7 +430,7 @@ impl LosslessNetwork {
 
 #[test]
 fn l_networks_are_those_of_the_books() {
-    let Networks { lossless, coil_loss, coil_loss_rule: rule, stress } = data("l_network.toml");
+    let Networks { lossless, coil_loss, coil_loss_rule: rule, stress } = data("line/l_network.toml");
     for &[load_ohm, l_uh, c_pf] in &lossless.table.rows {
         let setting = lossless.matched(load_ohm, f64::INFINITY).setting;
         lossless.table.assert_relative(&format!("L for {load_ohm} Ω"), setting.inductance_h * 1e6, l_uh);

@@ -1,5 +1,6 @@
 //! Radiation resistance, mutual impedance, the image in perfect ground.
 
+use checks::{Table, data};
 use num_complex::Complex64;
 use physics::constants::SPEED_OF_LIGHT_M_PER_S;
 use physics::sinusoid::{
@@ -7,7 +8,7 @@ use physics::sinusoid::{
 };
 use serde::Deserialize;
 
-use crate::common::{METRE_WAVE_HZ, Table, VANISHING, bare, data, thin};
+use crate::common::{METRE_WAVE_HZ, VANISHING, bare, thin};
 
 fn half_waves(spacing_m: f64, offset_m: f64) -> Complex64 {
     let pair = ParallelWires { half_length_1_m: 0.25, half_length_2_m: 0.25, spacing_m, offset_m };
@@ -25,7 +26,7 @@ struct RadiationResistance {
 
 #[test]
 fn radiation_resistance_of_any_length() {
-    let data: RadiationResistance = data("radiation_resistance.toml");
+    let data: RadiationResistance = data("wire/radiation_resistance.toml");
     for table in [&data.at_loop, &data.handbook] {
         for &[length, r_ohm] in &table.rows {
             table.assert_relative(&format!("{length} λ"), thin(length).re, r_ohm);
@@ -57,7 +58,7 @@ struct Mutual {
 
 #[test]
 fn mutual_impedance_of_half_waves() {
-    let Mutual { parallel, handbook, collinear, collinear_handbook } = data("mutual.toml");
+    let Mutual { parallel, handbook, collinear, collinear_handbook } = data("wire/mutual.toml");
     for table in [&parallel, &handbook] {
         for &[spacing, r_ohm, x_ohm] in &table.rows {
             table.assert_ohm(&format!("{spacing} λ apart"), half_waves(spacing, 0.0), r_ohm, x_ohm);
@@ -85,7 +86,7 @@ struct Figures {
 
 #[test]
 fn half_wave_over_perfect_ground() {
-    let OverMirror { horizontal, vertical, sketch } = data("over_mirror.toml");
+    let OverMirror { horizontal, vertical, sketch } = data("wire/over_mirror.toml");
     let alone = thin(0.5);
     // The longest wave of the sketch's range makes the thinnest wire of it.
     let frequency_hz = 0.1e6;

@@ -1,11 +1,12 @@
 //! Skin effect and insulation.
 
+use checks::{Table, data};
 use physics::conductor::{InsulatedWire, RoundWire, Surroundings, skin_depth_m, surface_resistance_ohm};
 use physics::constants::{COPPER_CONDUCTIVITY_S_PER_M, SPEED_OF_LIGHT_M_PER_S};
 use physics::sinusoid::{Sketch, SketchWire};
 use serde::Deserialize;
 
-use crate::common::{Table, bare, data};
+use crate::common::bare;
 
 #[derive(Deserialize)]
 struct Skin {
@@ -48,7 +49,7 @@ fn copper(diameter_mm: f64) -> RoundWire {
 
 #[test]
 fn skin_effect() {
-    let Skin { depth, depth_handbook, round_wire, gauges, .. } = data("skin.toml");
+    let Skin { depth, depth_handbook, round_wire, gauges, .. } = data("wire/skin.toml");
     for &[mhz, depth_um, rs_ohm] in &depth.rows {
         let hz = mhz * 1e6;
         let depth_m = skin_depth_m(hz, COPPER_CONDUCTIVITY_S_PER_M);
@@ -101,7 +102,7 @@ struct Insulation {
 
 #[test]
 fn velocity_factor_of_insulated_wire() {
-    let Insulation { worked_example, over_earth, free } = data("insulation.toml");
+    let Insulation { worked_example, over_earth, free } = data("wire/insulation.toml");
     let check = |table: &Table<[f64; 5]>, surroundings: fn(f64) -> Surroundings| {
         for &[metal_mm, outer_mm, relative_permittivity, metres, expected] in &table.rows {
             let wire = InsulatedWire {

@@ -1,9 +1,10 @@
 //! Resonance of wires of finite thickness.
 
+use checks::data;
 use physics::sinusoid::{HarmonicWire, Sketch, SketchWire};
 use serde::Deserialize;
 
-use crate::common::{METRE_WAVE_HZ, bare, data};
+use crate::common::{METRE_WAVE_HZ, bare};
 
 #[derive(Deserialize)]
 struct Resonance {
@@ -22,7 +23,7 @@ struct ResonanceTable {
 
 #[test]
 fn resonance_of_wires_of_finite_thickness() {
-    let Resonance { half_wave, thick, full_wave } = data("resonance.toml");
+    let Resonance { half_wave, thick, full_wave } = data("wire/resonance.toml");
     for (harmonic, table) in [(1, &half_wave), (1, &thick), (2, &full_wave)] {
         let ResonanceTable { source, length_tolerance, resistance_tolerance, rows } = table;
         for &[slenderness, length, r_ohm] in rows {

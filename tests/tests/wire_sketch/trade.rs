@@ -1,12 +1,13 @@
 //! Facts of the trade: common practice.
 
+use checks::{Table, data};
 use num_complex::Complex64;
 use physics::constants::SPEED_OF_LIGHT_M_PER_S;
 use physics::line::{gamma_of_impedance, swr_of_gamma};
 use physics::sinusoid::{HarmonicWire, MarkKind, Sketch, SketchWire, WavePoint};
 use serde::Deserialize;
 
-use crate::common::{Table, bare, data, thin};
+use crate::common::{bare, thin};
 
 const FEET_PER_METRE: f64 = 1.0 / 0.3048;
 
@@ -68,7 +69,7 @@ const FUNDAMENTALS_HZ: [f64; 4] = [1.85e6, 3.6e6, 7.1e6, 14.2e6];
 
 #[test]
 fn a_half_wave_has_its_usual_length() {
-    let trade: Trade = data("trade.toml");
+    let trade: Trade = data("wire/trade.toml");
     for &[mhz, metres, feet] in &trade.half_wave.rows {
         let got_m = trade.harmonic(1).resonant_length_m(mhz * 1e6).unwrap();
         trade.half_wave.assert_relative(&format!("{mhz} MHz, m"), got_m, metres);
@@ -80,7 +81,7 @@ fn a_half_wave_has_its_usual_length() {
 
 #[test]
 fn near_three_times_its_frequency_a_half_wave_is_usable_on_coax_again() {
-    let trade: Trade = data("trade.toml");
+    let trade: Trade = data("wire/trade.toml");
     let ThirdResonance { source, above_three_times, usable_swr } = &trade.third_resonance;
     for first_hz in FUNDAMENTALS_HZ {
         let wire = trade.half_wave(first_hz, 0.5);
@@ -101,7 +102,7 @@ fn near_three_times_its_frequency_a_half_wave_is_usable_on_coax_again() {
 
 #[test]
 fn at_twice_its_frequency_a_half_wave_is_hopeless_on_coax_and_at_home_on_open_line() {
-    let trade: Trade = data("trade.toml");
+    let trade: Trade = data("wire/trade.toml");
     let SecondHarmonic { source, least_resistance_ohm, very_poor_swr, line_ohm, line_swr } =
         &trade.second_harmonic;
     for first_hz in FUNDAMENTALS_HZ {
@@ -117,7 +118,7 @@ fn at_twice_its_frequency_a_half_wave_is_hopeless_on_coax_and_at_home_on_open_li
 
 #[test]
 fn a_half_wave_is_about_six_to_one_on_open_line() {
-    let trade: Trade = data("trade.toml");
+    let trade: Trade = data("wire/trade.toml");
     let HalfWaveOnLine { source, line_ohm, swr: usual } = &trade.half_wave_on_line;
     within("thin half wave", swr(Complex64::new(thin(0.5).re, 0.0), *line_ohm), *usual, source);
     for first_hz in FUNDAMENTALS_HZ {
@@ -129,7 +130,7 @@ fn a_half_wave_is_about_six_to_one_on_open_line() {
 /// Source: common practice.
 #[test]
 fn a_harmonic_has_as_many_current_loops_as_its_number() {
-    let trade: Trade = data("trade.toml");
+    let trade: Trade = data("wire/trade.toml");
     for first_hz in FUNDAMENTALS_HZ {
         // A fifth is off centre and off the nodes of the harmonics looked at.
         for share in [0.5, 0.2] {
@@ -147,7 +148,7 @@ fn a_harmonic_has_as_many_current_loops_as_its_number() {
 /// Source: common practice.
 #[test]
 fn the_centre_is_a_loop_at_odd_harmonics_and_a_node_at_even_ones() {
-    let trade: Trade = data("trade.toml");
+    let trade: Trade = data("wire/trade.toml");
     for first_hz in FUNDAMENTALS_HZ {
         let wire = trade.half_wave(first_hz, 0.5);
         for number in 1..=8_u32 {
@@ -166,7 +167,7 @@ fn the_centre_is_a_loop_at_odd_harmonics_and_a_node_at_even_ones() {
 /// Source: common practice. Looked for in the wave itself, not in the marks.
 #[test]
 fn voltage_loops_sit_on_current_nodes() {
-    let trade: Trade = data("trade.toml");
+    let trade: Trade = data("wire/trade.toml");
     for number in [1, 2, 3, 4] {
         let wire = trade.half_wave(7.1e6, 0.5);
         let answer = wire.at(7.1e6 * f64::from(number)).unwrap();
