@@ -140,7 +140,7 @@ struct FullExample {
 
 #[test]
 fn a_lossless_line_transforms_as_the_books_say() {
-    let Lossless { table, z0_ohm } = data::<Lossy>("lossy.toml").lossless;
+    let Lossless { table, z0_ohm } = data::<Lossy>("line/lossy.toml").lossless;
     let per_wavelength = Complex64::new(0.0, std::f64::consts::TAU);
     let line = LineConstants { z0_ohm: z0_ohm.into(), gamma_per_m: per_wavelength };
     for &[r, x, wavelengths, r_in, x_in] in &table.rows {
@@ -153,7 +153,7 @@ fn a_lossless_line_transforms_as_the_books_say() {
 
 #[test]
 fn a_mismatch_adds_to_the_loss_as_tabulated() {
-    let ExtraLoss { table, swr } = data::<Lossy>("lossy.toml").extra_loss;
+    let ExtraLoss { table, swr } = data::<Lossy>("line/lossy.toml").extra_loss;
     for &[matched, ref extra @ ..] in &table.rows {
         for (&swr, &extra_db) in swr.iter().zip(extra) {
             let what = format!("{matched} dB at SWR {swr}");
@@ -164,7 +164,7 @@ fn a_mismatch_adds_to_the_loss_as_tabulated() {
 
 #[test]
 fn the_full_example_agrees_in_loss_impedance_and_swr() {
-    let case = data::<Lossy>("lossy.toml").full;
+    let case = data::<Lossy>("line/lossy.toml").full;
     let beta =
         std::f64::consts::TAU * case.frequency_mhz * 1e6 / (case.velocity_factor * SPEED_OF_LIGHT_M_PER_S);
     let alpha = case.matched_loss_db / DB_PER_NEPER / case.length_m;
@@ -265,7 +265,7 @@ fn matched_db_per_100m(id: &str, frequency_mhz: f64) -> f64 {
 
 #[test]
 fn copper_sets_the_loss_of_open_wire() {
-    let case = data::<Loss>("loss.toml").open_wire;
+    let case = data::<Loss>("line/loss.toml").open_wire;
     let line = bare_copper(case.diameter_mm, case.spacing_mm).constants(case.frequency_mhz * 1e6).unwrap();
     let got = 100.0 * line.matched_loss_db_per_m();
     let bound = case.tolerance_db_per_100m;
@@ -274,7 +274,7 @@ fn copper_sets_the_loss_of_open_wire() {
 
 #[test]
 fn two_points_fix_the_loss_law() {
-    let Fit { source, relative_tolerance, points, k1, k2 } = data::<Loss>("loss.toml").fit;
+    let Fit { source, relative_tolerance, points, k1, k2 } = data::<Loss>("line/loss.toml").fit;
     let law = fit(&points, 1.0);
     assert_relative(&source, "k1", law.k1_db_per_100m, (k1, relative_tolerance));
     assert_relative(&source, "k2", law.k2_db_per_100m, (k2, relative_tolerance));
@@ -309,7 +309,7 @@ fn the_catalogue_follows_published_attenuation() {
 
 #[test]
 fn coefficients_said_to_be_derived_are_those_of_the_geometry() {
-    for Derived { id, source, relative_tolerance, diameter_mm, excess } in data::<Loss>("loss.toml").derived {
+    for Derived { id, source, relative_tolerance, diameter_mm, excess } in data::<Loss>("line/loss.toml").derived {
         let (z0_ohm, law) = catalogue_law(&id);
         let wire =
             RoundWire { radius_m: diameter_mm * 0.5e-3, conductivity_s_per_m: COPPER_CONDUCTIVITY_S_PER_M };

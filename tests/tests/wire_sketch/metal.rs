@@ -86,7 +86,7 @@ fn skin_effect() {
 #[test]
 fn copper_takes_its_share_of_a_half_wave() {
     let LossyHalfWave { source, diameter_mm, frequency_mhz, efficiency, tolerance } =
-        data::<Skin>("skin.toml").half_wave;
+        data::<Skin>("wire/skin.toml").half_wave;
     let arm_m = 0.25 * SPEED_OF_LIGHT_M_PER_S / (frequency_mhz * 1e6);
     let wire = SketchWire { radius_m: 0.5e-3 * diameter_mm, ..bare(arm_m, arm_m) };
     let got = Sketch::new(wire).unwrap().at(frequency_mhz * 1e6).unwrap().wire_efficiency;
