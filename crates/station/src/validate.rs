@@ -99,6 +99,8 @@ const MOST_POINTS: usize = 32;
 const MOST_SUPPORTS: usize = 64;
 const MOST_FEEDS: usize = 6;
 pub(crate) const MOST_LINKS: usize = 12;
+/// Where the feedpoint may be, as a share of the wire: both its sides keep some length.
+pub const FEED_FRACTION: RangeInclusive<f64> = 0.005..=0.995;
 const COORDINATE_M: RangeInclusive<f64> = -5_000.0..=5_000.0;
 const HEIGHT_M: RangeInclusive<f64> = 0.0..=300.0;
 
@@ -110,6 +112,7 @@ pub fn check(plan: &Plan) -> Checked {
     text("name", &plan.name, 80)?;
     text("purpose", &plan.purpose, 400)?;
     text("call_sign", &plan.call_sign, 40)?;
+    text("edition", &plan.edition, 20)?;
     count("wires", plan.wires.len(), 1, MOST_WIRES)?;
     count("feeds", plan.feeds.len(), 1, MOST_FEEDS)?;
     count("bands", plan.bands.len(), 1, MOST_BANDS)?;
@@ -117,7 +120,7 @@ pub fn check(plan: &Plan) -> Checked {
     for (index, wire) in plan.wires.iter().enumerate() {
         check_wire(&format!("wires[{index}]"), wire)?;
     }
-    number("feedpoint.fraction", plan.feedpoint.fraction, 0.005..=0.995, "of the wire")?;
+    number("feedpoint.fraction", plan.feedpoint.fraction, FEED_FRACTION, "of the wire")?;
     number("feedpoint.gap_m", plan.feedpoint.gap_m, 0.001..=1.0, "m")?;
     for (index, feed) in plan.feeds.iter().enumerate() {
         check_feed(&format!("feeds[{index}]"), feed)?;

@@ -2,6 +2,7 @@
 
 use station::plan::{PathPoint, Point};
 use station::units::Units;
+use station::validate::FEED_FRACTION;
 
 use crate::command::Edit;
 
@@ -21,13 +22,13 @@ const SUPPORT_HEIGHT_M: std::ops::RangeInclusive<f64> = 1.0..=120.0;
 const CLOSEST_SUPPORTS_M: f64 = 1.0;
 /// Where the feedpoint likes to be, as shares of the wire, with their names.
 const FEED_PLACES: [(f64, &str); 7] = [
-    (0.0, "at the beginning"),
+    (*FEED_FRACTION.start(), "fed at its beginning"),
     (0.25, "one quarter"),
     (1.0 / 3.0, "one third"),
     (0.5, "centre"),
     (2.0 / 3.0, "two thirds"),
     (0.75, "three quarters"),
-    (1.0, "at the end"),
+    (*FEED_FRACTION.end(), "fed at its end"),
 ];
 
 /// Edits, and a hint where the wish could not be followed.
@@ -171,7 +172,8 @@ impl Model<'_> {
     fn ask_feedpoint(&self, from_beginning_m: f64) -> Option<Asked> {
         let cut_m = self.plan.wires.get(self.plan.feedpoint.wire)?.cut_length_m;
         let share = from_beginning_m / cut_m;
-        let (share, hint) = held(share, (0.0, "the wire begins here"), (1.0, "the wire ends here"));
+        let (low, high) = (*FEED_FRACTION.start(), *FEED_FRACTION.end());
+        let (share, hint) = held(share, (low, "the wire begins here"), (high, "the wire ends here"));
         // The places it likes are exact shares, not what is left of them after a division.
         let exact = FEED_PLACES.iter().find(|(place, _)| (place - share).abs() < 1e-9);
         Some(Asked::one(Edit::FeedFraction(exact.map_or(share, |(place, _)| *place))).hinted(hint))

@@ -7,6 +7,8 @@ use eframe::egui::{Pos2, Rect, Vec2, vec2};
 const CLEARANCE: f32 = 2.0;
 /// How far apart two tries on one side are, px.
 const STRIDE: f32 = 7.0;
+/// How much farther away a better side may be, px.
+const RELUCTANCE: f32 = 28.0;
 
 /// A side of the anchor.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -65,17 +67,23 @@ impl Board {
 
     /// Finds a place and takes it.
     pub fn place(&mut self, wanted: &Wanted<'_>) -> Option<Placed> {
+        let (first, last) = (*wanted.reach.start(), *wanted.reach.end());
         for (text, &size) in wanted.sizes.iter().enumerate() {
-            let mut distance = *wanted.reach.start();
-            while distance <= *wanted.reach.end() {
-                for &side in wanted.sides {
+            // Near places before far ones, and the better side before the worse one unless it is much farther.
+            let mut cost = first;
+            while cost <= last + RELUCTANCE * wanted.sides.len() as f32 {
+                for (rank, &side) in wanted.sides.iter().enumerate() {
+                    let distance = cost - RELUCTANCE * rank as f32;
+                    if distance < first || distance > last {
+                        continue;
+                    }
                     let rect = beside(wanted.anchor, side, distance, size);
                     if self.is_free(rect.expand(CLEARANCE)) {
                         self.block(rect);
                         return Some(Placed { text, rect });
                     }
                 }
-                distance += STRIDE;
+                cost += STRIDE;
             }
         }
         None

@@ -122,7 +122,7 @@ pub fn plot(frame: Rect) -> Rect {
 
 /// The part of the plot that a fitted site fills: the rest is for headings, the wave and names below the earth.
 pub fn stage(plot: Rect) -> Rect {
-    let top = 34.0 + wave_size(plot, 0.0).whisker_px;
+    let top = 52.0 + wave_size(plot, 0.0).whisker_px;
     let side = (0.07 * plot.width()).clamp(40.0, 110.0);
     Rect::from_min_max(
         pos2(plot.left() + side, plot.top() + top),

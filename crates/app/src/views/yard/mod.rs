@@ -17,6 +17,8 @@ mod readout;
 mod rulers;
 mod side_view;
 mod tag;
+#[cfg(test)]
+mod tests;
 mod texts;
 mod things;
 mod wave;
@@ -94,18 +96,27 @@ pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut YardState, out: &m
         chosen: state.chosen,
     };
     paint::paint(ui, frame, &layout, &look);
+    speak(ui, &bench, &look, state, &ground);
     readout::show(ui, &bench, &look, state);
     tag::show(ui, &bench, &look, state, out);
     if motion::show(ui, layout.buttons, snapshot, out) {
         state.by_hand = false;
         state.camera = None;
     }
-    speak(ui, &bench, &look, state, &ground);
+    hints(ui, &bench, &look, state);
     let_go(ui, &ground, state);
 }
 
-/// Hints and sentences: where a thing goes no further, and why a wire cannot hang.
+/// What the whole is, in one sentence; things that are pointed at say theirs afterwards.
 fn speak(ui: &Ui, bench: &Bench<'_>, look: &Look<'_>, state: &YardState, ground: &Response) {
+    let on_plot = look.pointer.is_some_and(|p| bench.layout.view.frame.contains(p));
+    if ground.hovered() && state.hot.is_none() && on_plot {
+        say(ui.ctx(), "The site to scale, seen from the side. Drag what you see; Ctrl and the wheel zoom.");
+    }
+}
+
+/// Where a thing goes no further, and why a wire cannot hang.
+fn hints(ui: &Ui, bench: &Bench<'_>, look: &Look<'_>, state: &YardState) {
     let plot = bench.layout.view.frame;
     if let Err(error) = &bench.model.hung {
         paint::hint(ui, plot.center_top() + vec2(0.0, 50.0), &error.to_string(), plot, look);
@@ -113,9 +124,6 @@ fn speak(ui: &Ui, bench: &Bench<'_>, look: &Look<'_>, state: &YardState, ground:
     let chosen = bench.layout.handles.iter().find(|h| Some(h.grip) == state.chosen);
     if let (Some(hint), Some(handle)) = (&state.hint, chosen) {
         paint::hint(ui, handle.at, hint, plot, look);
-    }
-    if ground.hovered() && state.hot.is_none() && look.pointer.is_some() {
-        say(ui.ctx(), "The site to scale, seen from the side. Drag what you see; Ctrl and the wheel zoom.");
     }
 }
 
@@ -127,7 +135,9 @@ fn let_go(ui: &Ui, ground: &Response, state: &mut YardState) {
     let elsewhere = pressed_at.is_some_and(|at| state.hot.is_none() && !on_tag(at));
     let escaped = !state.tag_held && ui.input(|i| i.key_pressed(Key::Escape));
     if elsewhere || escaped || ground.clicked() {
-        state.chosen = None;
+        if let Some(chosen) = state.chosen.take() {
+            ui.memory_mut(|m| m.surrender_focus(hands::id(ui, chosen)));
+        }
         state.hint = None;
         state.tag = None;
         state.tag_held = false;

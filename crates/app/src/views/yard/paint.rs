@@ -19,9 +19,9 @@ use super::wave::{Phase, Ribbon, Wave};
 /// How far what is out of date steps back toward the background.
 const STALE: f32 = 0.55;
 /// Share of its ink in the area of an envelope, in its rim, and in the moving ribbon.
-const ENVELOPE: f32 = 0.13;
-const ENVELOPE_RIM: f32 = 0.42;
-const RIBBON: f32 = 0.78;
+const ENVELOPE: f32 = 0.1;
+const ENVELOPE_RIM: f32 = 0.38;
+const RIBBON: f32 = 0.58;
 
 /// What the painter has to know besides where things are.
 #[derive(Clone, Copy)]

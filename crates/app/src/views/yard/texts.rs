@@ -10,7 +10,9 @@ use super::layout::{Asking, EDGE_PX, Layout, Measure, Text, Type, watts_to_wire}
 use super::model::Model;
 
 /// How far from its mark a number may stand, px.
-const NUMBER_REACH_PX: f32 = 84.0;
+const NUMBER_REACH_PX: f32 = 76.0;
+/// Up to so many marks are named in words; more are told by their shapes and the legend.
+const WORDY: usize = 4;
 /// Samples of the wave's outline that are kept free of labels together.
 const OUTLINE_STRIDE: usize = 3;
 /// Reach around a wire's end in which the mark of a node already says the volts, px.
@@ -81,7 +83,9 @@ impl<'a> Layout<'a> {
         let rect = Rect::from_min_size(corner, size);
         writer.board.block(rect);
         writer.texts.push(Text { rect, text: text.clone(), ink: Ink::Text, size: Type::Body });
-        let legend = Rect::from_min_size(pos2(corner.x, rect.bottom() + 4.0), LEGEND);
+        let top =
+            if corner.x + LEGEND.x > self.buttons.left() { self.buttons.bottom() } else { rect.bottom() };
+        let legend = Rect::from_min_size(pos2(corner.x, top + 4.0), LEGEND);
         if asking.band.is_some() && plot.height() > LEGEND_FROM_PX && legend.right() < plot.right() {
             writer.board.block(legend);
             self.legend = Some(legend);
@@ -128,21 +132,20 @@ impl<'a> Layout<'a> {
         for mark in &self.marks {
             let current = amperes(mark.reading.current_a);
             let voltage = volts(mark.reading.voltage_v);
-            let (words, number, ink, sides) = match mark.mark.kind {
+            let (words, number, ink, [first, second]) = match mark.mark.kind {
                 MarkKind::CurrentLoop => ("current loop", current, Ink::Current, [Side::Above, Side::Below]),
                 MarkKind::CurrentNode => ("current node", voltage, Ink::Voltage, [Side::Below, Side::Above]),
             };
+            let (out, back) =
+                if mark.off.x >= 0.0 { (Side::Right, Side::Left) } else { (Side::Left, Side::Right) };
             // On a steep wire there is more room beside it than above it.
-            let beside =
-                if mark.off.x >= 0.0 { [Side::Right, Side::Left] } else { [Side::Left, Side::Right] };
-            let sides = if mark.off.x.abs() > mark.off.y.abs() { beside } else { sides };
-            writer.write(
-                mark.at,
-                &[format!("{words} {number}"), number],
-                (ink, Type::Small),
-                &sides,
-                (9.0, NUMBER_REACH_PX),
-            );
+            let steep = mark.off.x.abs() > mark.off.y.abs();
+            let sides = if steep { [out, back, first, second] } else { [first, second, out, back] };
+            let mut choices = vec![format!("{words} {number}"), number];
+            if self.marks.len() > WORDY {
+                choices.remove(0);
+            }
+            writer.write(mark.at, &choices, (ink, Type::Small), &sides, (9.0, NUMBER_REACH_PX));
         }
     }
 

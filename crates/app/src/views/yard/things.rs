@@ -37,28 +37,34 @@ fn mast(painter: &Painter, shape: &SupportShape, look: &Look<'_>) {
 fn tree(painter: &Painter, shape: &SupportShape, look: &Look<'_>) {
     let height = shape.height_px();
     let (foot, top) = (shape.foot, shape.top);
-    let wide = (0.3 * height).min(90.0);
-    let trunk = (0.022 * height).clamp(1.5, 6.0);
-    let fork = foot.lerp(top, 0.45);
+    let trunk = (0.018 * height).clamp(1.2, 5.0);
+    let fork = foot.lerp(top, 0.5);
     let stem = vec![
-        foot - vec2(trunk, 0.0),
-        foot + vec2(trunk, 0.0),
-        fork + vec2(0.5 * trunk, 0.0),
-        fork - vec2(0.5 * trunk, 0.0),
+        foot - vec2(1.3 * trunk, 0.0),
+        foot + vec2(1.3 * trunk, 0.0),
+        fork + vec2(0.4 * trunk, 0.0),
+        fork - vec2(0.4 * trunk, 0.0),
     ];
-    // The crown is one outline, so that its lobes do not shade each other.
-    const LOBES: [(f32, f32, f32); 5] =
-        [(0.0, 0.80, 0.62), (-0.42, 0.60, 0.52), (0.42, 0.62, 0.52), (-0.2, 0.46, 0.42), (0.24, 0.47, 0.42)];
-    for (rim, share) in [(1.0, 0.55), (0.0, 0.24)] {
-        for (x, up, size) in LOBES {
-            let radius = 0.62 * wide * size;
-            // No lobe reaches over the support's height.
-            let centre = pos2(foot.x + x * wide, (foot.y - up * height).max(top.y + radius));
-            painter.circle_filled(centre, radius + rim, look.mix(Ink::Support, share));
-        }
-    }
-    painter.add(Shape::convex_polygon(stem, look.mix(Ink::Support, 0.75), Stroke::NONE));
-    painter.line_segment([fork, top], Stroke::new(Pen::Fine.width(), look.mix(Ink::Support, 0.75)));
+    painter.add(Shape::convex_polygon(crown(foot, top), look.mix(Ink::Support, 0.2), Stroke::NONE));
+    painter.add(Shape::convex_polygon(stem, look.mix(Ink::Support, 0.7), Stroke::NONE));
+    let rim = Stroke::new(Pen::Fine.width(), look.mix(Ink::Support, 0.5));
+    painter.add(Shape::closed_line(crown(foot, top), rim));
+}
+
+/// An egg with its tip at the support's top.
+fn crown(foot: Pos2, top: Pos2) -> Vec<Pos2> {
+    const STEPS: u8 = 40;
+    let height = foot.y - top.y;
+    let (low, wide) = (foot.y - 0.2 * height, (0.2 * height).min(80.0));
+    (0..STEPS)
+        .map(|n| {
+            let angle = std::f32::consts::TAU * f32::from(n) / f32::from(STEPS);
+            let up = 0.5 - 0.5 * angle.cos();
+            // Fuller below than above.
+            let half = wide * angle.sin() * (1.0 - 0.35 * up);
+            pos2(foot.x + half, low + up * (top.y - low))
+        })
+        .collect()
 }
 
 fn building(painter: &Painter, shape: &SupportShape, look: &Look<'_>) {

@@ -79,6 +79,38 @@ struct Sample {
     off: Vec2,
     current: Phasor,
     voltage: Phasor,
+    /// The bend nearby.
+    bend: Option<NearBend>,
+}
+
+/// A bend of the wire, seen from a place nearby: on its inner side what stands off one leg must not run into what
+/// stands off the other.
+#[derive(Clone, Copy, Debug)]
+struct NearBend {
+    corner: Pos2,
+    /// Along the bisector of the inner angle.
+    inward: Vec2,
+    /// 1 where the inner side is the side of plus, −1 otherwise.
+    side: f32,
+    /// How far from the wire the bisector is at this place, px.
+    room_px: f32,
+    /// Sine of half the inner angle.
+    sine: f32,
+}
+
+impl Sample {
+    /// Whether something that stands off the wire would cross the bisector of a bend.
+    fn crosses(&self, offset_px: f32) -> bool {
+        self.bend.is_some_and(|b| offset_px * b.side > b.room_px)
+    }
+
+    /// A place off the wire, positive on the side of plus; in the inner angle of a bend, on the bisector.
+    fn off_by(&self, offset_px: f32) -> Pos2 {
+        match self.bend {
+            Some(b) if self.crosses(offset_px) => b.corner + b.inward * (offset_px.abs() / b.sine),
+            _ => self.at + self.off * offset_px,
+        }
+    }
 }
 
 /// A loop or a node on the screen.
@@ -164,7 +196,13 @@ impl<'a> Wave<'a> {
             let run_px = n as f32 * wave.step_px;
             let (at, arc_m) = track.at(run_px);
             let (current, voltage) = wave.phasors(arc_m);
-            wave.samples.push(Sample { at, off: track.off(run_px), current, voltage });
+            wave.samples.push(Sample {
+                at,
+                off: track.off(run_px),
+                current,
+                voltage,
+                bend: track.bend(run_px),
+            });
         }
         let peak = |values: &[Complex64]| values.iter().map(|z| z.norm()).fold(0.0, f64::max) as f32;
         wave.peak_a = peak(&source.current_a);
@@ -218,9 +256,9 @@ impl<'a> Wave<'a> {
         ribbon.upper.reserve(self.samples.len());
         ribbon.lower.reserve(self.samples.len());
         for sample in &self.samples {
-            let offset = sample.off * half_px(sample);
-            ribbon.upper.push(sample.at + offset);
-            ribbon.lower.push(sample.at - offset);
+            let half_px = half_px(sample);
+            ribbon.upper.push(sample.off_by(half_px));
+            ribbon.lower.push(sample.off_by(-half_px));
         }
         ribbon
     }
@@ -260,11 +298,13 @@ impl<'a> Wave<'a> {
     /// The whiskers at a phase, each from the wire to its tip.
     pub fn whiskers(&self, phase: Phase) -> Vec<[Pos2; 2]> {
         let scale = self.whisker_scale();
-        let tip = |run_px: f32| {
+        let whisker = |run_px: f32| {
             let s = self.sample(run_px);
-            [s.at, s.at + s.off * (s.voltage.now(phase) * scale)]
+            let length_px = s.voltage.now(phase) * scale;
+            // Too short to be seen, or running into the whiskers of the wire's other leg.
+            (length_px.abs() > 0.7 && !s.crosses(length_px)).then(|| [s.at, s.off_by(length_px)])
         };
-        self.spaced(WHISKER_GAP_PX).map(tip).filter(|[foot, tip]| foot.distance_sq(*tip) > 0.5).collect()
+        self.spaced(WHISKER_GAP_PX).filter_map(whisker).collect()
     }
 
     /// The grain at a phase: chevrons that point the way the current flows and are carried along by it. They crowd
@@ -306,6 +346,7 @@ impl<'a> Wave<'a> {
             off: a.off + (b.off - a.off) * share,
             current: a.current.toward(b.current, share),
             voltage: a.voltage.toward(b.voltage, share),
+            bend: if share < 0.5 { a.bend } else { b.bend },
         }
     }
 
@@ -365,5 +406,32 @@ impl Track {
         let chord = self.at(run_px + ROUNDING_PX).0 - self.at(run_px - ROUNDING_PX).0;
         let along = chord.normalized();
         vec2(along.y, -along.x) * self.side
+    }
+
+    /// The nearest bend that is sharp enough to matter.
+    fn bend(&self, run_px: f32) -> Option<NearBend> {
+        let inner = 1..self.corners.len() - 1;
+        let nearest = inner
+            .min_by(|&a, &b| (self.runs_px[a] - run_px).abs().total_cmp(&(self.runs_px[b] - run_px).abs()))?;
+        let corner = self.corners[nearest].0;
+        let before = (corner - self.corners[nearest - 1].0).normalized();
+        let after = (self.corners[nearest + 1].0 - corner).normalized();
+        // The legs lie at the inner angle θ: cos θ = −before·after.
+        let cos = -before.dot(after);
+        let (sine, cosine) = ((0.5 * (1.0 - cos)).max(0.0).sqrt(), (0.5 * (1.0 + cos)).max(0.0).sqrt());
+        if cosine < 0.05 || sine < 0.2 {
+            return None;
+        }
+        let away_px = run_px - self.runs_px[nearest];
+        let along = if away_px < 0.0 { before } else { after };
+        let off = vec2(along.y, -along.x) * self.side;
+        let inward = (after - before).normalized();
+        Some(NearBend {
+            corner,
+            inward,
+            side: off.dot(inward).signum(),
+            room_px: away_px.abs() * sine / cosine,
+            sine,
+        })
     }
 }
