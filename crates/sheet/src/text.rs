@@ -44,8 +44,9 @@ pub fn wrap(spans: &[Span], width_mm: f64) -> Vec<Vec<Placed>> {
     let mut lines = vec![Vec::<Placed>::new()];
     let mut pen_mm = 0.0;
     for span in spans {
+        let text = tie(&span.text);
         let space_mm = fonts::width_mm(span.style, " ");
-        for word in span.text.split(' ').filter(|word| !word.is_empty()) {
+        for word in text.split(' ').filter(|word| !word.is_empty()) {
             for piece in pieces(span.style, word, width_mm) {
                 let piece_mm = fonts::width_mm(span.style, &piece);
                 let is_first = lines.last().is_none_or(Vec::is_empty);
@@ -64,6 +65,24 @@ pub fn wrap(spans: &[Span], width_mm: f64) -> Vec<Vec<Placed>> {
         }
     }
     lines
+}
+
+/// The text with a no-break space between a number and its unit.
+fn tie(text: &str) -> String {
+    const UNITS: [&str; 17] =
+        ["m", "mm", "ft", "in", "W", "kW", "V", "kV", "A", "mA", "Ω", "µH", "pF", "nF", "dB", "MHz", "kHz"];
+    let mut out = String::with_capacity(text.len());
+    let mut words = text.split(' ').peekable();
+    while let Some(word) = words.next() {
+        out.push_str(word);
+        let Some(next) = words.peek() else { break };
+        let unit = next.trim_end_matches([',', '.', ';', ':', ')', '%']);
+        let is_number = word.ends_with(|c: char| c.is_ascii_digit() || c == '½');
+        let is_inches = word == "ft" && next.starts_with(|c: char| c.is_ascii_digit() || c == '½');
+        let is_tied = is_inches || is_number && (UNITS.contains(&unit) || *next == "%");
+        out.push(if is_tied { '\u{a0}' } else { ' ' });
+    }
+    out
 }
 
 /// Adds a word to a line, to the last span if it looks the same.
@@ -135,6 +154,14 @@ mod tests {
             assert_eq!(without_spaces(&lines.concat()), without_spaces(text));
         }
         assert_eq!(lines_of(text, 200.0).len(), 1);
+    }
+
+    #[test]
+    fn numbers_stay_with_their_units() {
+        assert_eq!(
+            tie("66 ft 9½ in a 2 % m at 1.09 kV peak, 3 m."),
+            "66\u{a0}ft\u{a0}9½\u{a0}in a 2\u{a0}% m at 1.09\u{a0}kV peak, 3\u{a0}m."
+        );
     }
 
     #[test]

@@ -32,6 +32,7 @@ pub fn plan() -> Plan {
         name: "Test yard".to_owned(),
         purpose: String::new(),
         call_sign: String::new(),
+        edition: String::new(),
         site: Site {
             supports: vec![mast("west mast", 0.0), mast("east mast", 50.0)],
             earth: Earth::Catalogue("farmland".to_owned()),

@@ -1,6 +1,8 @@
 //! An invented plan and an invented report for the stories: plausible shapes, no physics worth believing.
 #![allow(dead_code)] // Each story uses a part.
 
+pub mod stage;
+
 use num_complex::Complex64;
 use station::hang::{Hung, HungWire, Port, Vertex};
 use station::plan::{
@@ -83,6 +85,7 @@ pub fn plan(bands: usize, feeds: usize) -> Plan {
         name: "Invented yard".to_owned(),
         purpose: String::new(),
         call_sign: String::new(),
+        edition: String::new(),
         site: Site { supports: vec![], earth: Earth::NoEarth, entrance: Point::new(0.0, -5.0, 1.0) },
         wires: vec![Wire {
             name: "main wire".to_owned(),
@@ -230,12 +233,12 @@ fn feed_report(z: Complex64, feed: &Feed, frequency_hz: f64) -> FeedReport {
 
 fn band_feed(points: &[FrequencyReport], feed: usize, plan: &Plan) -> BandFeed {
     let kind = |p: &FrequencyReport| p.feeds[feed].kind;
-    let worst = (0..points.len()).max_by_key(|&i| kind(&points[i])).unwrap();
+    let worst = (0..points.len()).max_by_key(|&i| kind(&points[i])).expect("made above");
     let mut covered_hz: Vec<(f64, f64)> = Vec::new();
     let mut open = false;
     for p in points {
         match (kind(p).works(), open) {
-            (true, true) => covered_hz.last_mut().unwrap().1 = p.frequency_hz,
+            (true, true) => covered_hz.last_mut().expect("made above").1 = p.frequency_hz,
             (true, false) => covered_hz.push((p.frequency_hz, p.frequency_hz)),
             (false, _) => {}
         }

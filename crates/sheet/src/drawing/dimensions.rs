@@ -16,8 +16,6 @@ const TICK_MM: f64 = 0.9;
 const HEIGHT_OFF_MM: f64 = 7.0;
 /// From the wire to the dimension line of a piece of it, mm.
 const ARM_OFF_MM: f64 = 3.0;
-/// Height of a row of spans below the earth, mm.
-const SPAN_ROW_MM: f64 = 4.8;
 /// Shorter spans are not worth a number, m.
 const LEAST_SPAN_M: f64 = 0.5;
 
@@ -51,11 +49,8 @@ pub(super) fn names_mm(elevation: &Elevation) -> f64 {
     rows * TextStyle::Body.leading_mm()
 }
 
-/// Height of the rows of spans, mm.
-pub(super) fn spans_mm(elevation: &Elevation) -> f64 {
-    let rows = if entrance_span(elevation).is_some() { 2.0 } else { 1.0 };
-    rows * SPAN_ROW_MM + TICK_MM + 0.3
-}
+/// Height of the row of spans, mm.
+pub(super) const SPANS_MM: f64 = 4.8 + TICK_MM + 0.3;
 
 /// Places along the plane where the path is made fast, from left to right.
 fn stations(elevation: &Elevation) -> Vec<f64> {
@@ -65,14 +60,7 @@ fn stations(elevation: &Elevation) -> Vec<f64> {
     out
 }
 
-/// From the first fastening to the entrance.
-fn entrance_span(elevation: &Elevation) -> Option<(f64, f64)> {
-    let first_m = stations(elevation).first().copied()?;
-    let entrance_m = elevation.entrance.along_m;
-    ((entrance_m - first_m).abs() > LEAST_SPAN_M).then(|| (first_m.min(entrance_m), first_m.max(entrance_m)))
-}
-
-/// Spans between fastenings, and the entrance, in rows below the earth.
+/// Spans between fastenings, in a row below the earth.
 pub(super) fn spans(
     elevation: &Elevation,
     sight: &Sight,
@@ -80,19 +68,13 @@ pub(super) fn spans(
     top_mm: f64,
     (labels, items): (&mut Labels, &mut Vec<Item>),
 ) {
-    let at = |along_m: f64, y_mm: f64| Spot::new(sight.spot(Place { along_m, up_m: 0.0 }).x_mm, y_mm);
-    let mut span = |from_m: f64, to_m: f64, y_mm: f64| {
-        let (from, to) = (at(from_m, y_mm), at(to_m, y_mm));
-        if let Err(text) = dimension(from, to, &units.tape(to_m - from_m), labels, items) {
+    let y_mm = top_mm + SPANS_MM - TICK_MM - 0.3;
+    let at = |along_m: f64| Spot::new(sight.spot(Place { along_m, up_m: 0.0 }).x_mm, y_mm);
+    for pair in stations(elevation).windows(2) {
+        let (from, to) = (at(pair[0]), at(pair[1]));
+        if let Err(text) = dimension(from, to, &units.tape(pair[1] - pair[0]), labels, items) {
             labels.put_near(middle(from, to), &text, &[(0.0, 1.0), (1.0, 0.0), (-1.0, 0.0)]);
         }
-    };
-    let y_mm = top_mm + SPAN_ROW_MM;
-    for pair in stations(elevation).windows(2) {
-        span(pair[0], pair[1], y_mm);
-    }
-    if let Some((from_m, to_m)) = entrance_span(elevation) {
-        span(from_m, to_m, y_mm + SPAN_ROW_MM);
     }
 }
 
@@ -196,20 +178,52 @@ pub(super) fn names(
         let text = Text::new(0.0, 0.0, TextStyle::Body, line);
         labels.put_near(middle(feedpoint, entrance), &text, &AROUND);
     }
-    let text = Text::new(0.0, 0.0, TextStyle::Body, entrance_words(elevation, units));
-    labels.put_near(Spot::new(entrance.x_mm, entrance.y_mm), &text, &AROUND);
 }
 
+/// Where the entrance is, from the first fastening.
 fn entrance_words(elevation: &Elevation, units: Units) -> String {
-    // Less than this is not worth saying, m.
-    const BESIDE_M: f64 = 0.5;
-    let up = format!("entrance, {} up", units.tape(elevation.entrance.up_m));
-    let behind_m = elevation.entrance_behind_m;
-    if behind_m.abs() < BESIDE_M {
-        return up;
+    let mut words = format!("entrance, {} up", units.tape(elevation.entrance.up_m));
+    let along_m = elevation.entrance.along_m;
+    if along_m.abs() > LEAST_SPAN_M {
+        let side = if along_m > 0.0 { "along" } else { "before the first support" };
+        words = format!("{words}, {} {side}", units.tape(along_m.abs()));
     }
-    let side = if behind_m > 0.0 { "behind" } else { "in front" };
-    format!("{up}, {} {side}", units.tape(behind_m.abs()))
+    let behind_m = elevation.entrance_behind_m;
+    if behind_m.abs() > LEAST_SPAN_M {
+        let side = if behind_m > 0.0 { "behind" } else { "in front" };
+        words = format!("{words}, {} {side}", units.tape(behind_m.abs()));
+    }
+    words
+}
+
+/// Says where the entrance is: below it, beside the names of the supports, or near it.
+pub(super) fn entrance(
+    elevation: &Elevation,
+    sight: &Sight,
+    units: Units,
+    (frame, top_mm): (Frame, f64),
+    labels: &mut Labels,
+) {
+    let at = sight.spot(elevation.entrance);
+    let text = Text::new(0.0, 0.0, TextStyle::Body, entrance_words(elevation, units));
+    if let Err(text) = labels.put(below(at.x_mm, &text, (frame, top_mm), 1)) {
+        labels.put_near(at, &text, &AROUND);
+    }
+}
+
+/// A text in one of some rows from `top_mm` down, as near under a place as the frame allows.
+fn below(x_mm: f64, text: &Text, (frame, top_mm): (Frame, f64), rows: u32) -> Vec<Text> {
+    let half_mm = text.width_mm() / 2.0 + 0.6;
+    let least_mm = frame.left_mm + half_mm;
+    let middle_mm = x_mm.clamp(least_mm, (frame.right_mm() - half_mm).max(least_mm));
+    let shifts = [0.0, 4.0, -4.0, 8.0, -8.0, 14.0, -14.0, 22.0, -22.0];
+    (0..rows)
+        .flat_map(|row| shifts.map(|shift_mm| (row, shift_mm)))
+        .map(|(row, shift_mm)| {
+            let y_mm = top_mm + TextStyle::Body.leading_mm() * (f64::from(row) + 0.85);
+            Text { at: Spot::new(middle_mm + shift_mm, y_mm), anchor: Anchor::Middle, ..text.clone() }
+        })
+        .collect()
 }
 
 /// Names of the supports, in up to two rows at the foot of the drawing.
@@ -226,14 +240,7 @@ pub(super) fn support_names(
         let x_mm = sight.spot(support.foot).x_mm;
         let name = fit(TextStyle::Body, &fonts::printable(&support.name), room_mm);
         let text = Text::new(0.0, 0.0, TextStyle::Body, name).ink(Ink::Support);
-        let half_mm = text.width_mm() / 2.0 + 0.6;
-        let middle_mm =
-            x_mm.clamp(frame.left_mm + half_mm, (frame.right_mm() - half_mm).max(frame.left_mm + half_mm));
-        let rows = (0..2).map(|row| {
-            let y_mm = top_mm + TextStyle::Body.leading_mm() * (f64::from(row) + 0.85);
-            Text { at: Spot::new(middle_mm, y_mm), anchor: Anchor::Middle, ..text.clone() }
-        });
-        if let Err(text) = labels.put(rows) {
+        if let Err(text) = labels.put(below(x_mm, &text, (frame, top_mm), 2)) {
             labels.put_near(Spot::new(x_mm, top_mm), &text, &AROUND);
         }
     }

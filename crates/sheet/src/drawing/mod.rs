@@ -20,7 +20,7 @@ use labels::Labels;
 /// Room beside the outermost supports for heights and signs, mm.
 const SIDE_MM: f64 = 13.0;
 /// Room over the highest support, mm.
-const OVER_MM: f64 = 6.5;
+const OVER_MM: f64 = 6.0;
 
 /// How large the drawing may be.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -48,7 +48,7 @@ pub fn side_view(plan: &Plan, hung: &Hung, units: Units, size: Size) -> SideView
     let elevation = Elevation::new(plan, hung);
     let (low, high) = bounds(&elevation);
     let width_mm = size.width_mm - 2.0 * SIDE_MM;
-    let under_mm = site::EARTH_MM + dimensions::names_mm(&elevation) + dimensions::spans_mm(&elevation);
+    let under_mm = site::EARTH_MM + dimensions::names_mm(&elevation) + dimensions::SPANS_MM;
     let height_mm = (size.height_mm - OVER_MM - under_mm).max(10.0);
     let least = ((high.along_m - low.along_m) / width_mm).max((high.up_m - low.up_m) / height_mm) * 1000.0;
     let ratio = Ratio::round(least, units);
@@ -85,8 +85,12 @@ fn paint(
         labels.avoid(&spots);
     }
     labels.avoid(&[sight.spot(elevation.feedpoint), sight.spot(elevation.entrance)]);
+    for sign in site::outlines(elevation, sight) {
+        labels.avoid(&sign);
+    }
     let below_mm = surface.iter().map(|spot| spot.y_mm).fold(0.0, f64::max) + site::EARTH_MM;
     dimensions::support_names(elevation, sight, frame, below_mm, &mut labels);
+    dimensions::entrance(elevation, sight, units, (frame, below_mm), &mut labels);
     let spans_mm = below_mm + dimensions::names_mm(elevation);
     dimensions::spans(elevation, sight, units, spans_mm, (&mut labels, items));
     dimensions::heights(elevation, sight, units, (&mut labels, items));

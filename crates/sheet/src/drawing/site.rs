@@ -13,6 +13,8 @@ pub(super) const EARTH_MM: f64 = 2.6;
 const HATCH_MM: f64 = 2.4;
 /// Half of a support's width on paper, mm; supports are drawn as signs, only their height is to scale.
 const HALF_SUPPORT_MM: f64 = 3.2;
+/// Half of the side of the entrance's box, mm.
+const HALF_ENTRANCE_MM: f64 = 1.4;
 /// Radius of an insulator, mm.
 const INSULATOR_MM: f64 = 0.9;
 
@@ -61,26 +63,54 @@ pub(super) fn support(support: &SupportSide, sight: &Sight, items: &mut Vec<Item
             items.push(Item::Area { points: base, fill: Ink::Support, outline: None });
         }
         SupportKind::Tree => {
-            let height_mm = foot.y_mm - top.y_mm;
-            let crown = top.y_mm + 0.62 * height_mm;
             let outline = Some((Stroke::Rule, Ink::Support));
-            let points = crown_outline(foot.x_mm, top.y_mm, crown);
+            let points = outline_of(support, sight);
             items.push(Item::Area { points, fill: Ink::Panel, outline });
             items.push(Item::line(foot, top, Stroke::Support, Ink::Support));
         }
         SupportKind::Building => {
-            let eaves = top.y_mm + (foot.y_mm - top.y_mm) * 0.35;
-            let points = vec![
-                at(-1.4, foot.y_mm),
-                at(-1.4, eaves),
-                at(0.0, top.y_mm),
-                at(1.4, eaves),
-                at(1.4, foot.y_mm),
-            ];
             let outline = Some((Stroke::Frame, Ink::Support));
-            items.push(Item::Area { points, fill: Ink::Panel, outline });
+            items.push(Item::Area { points: outline_of(support, sight), fill: Ink::Panel, outline });
         }
     }
+}
+
+/// The outline of a support's sign: a tree's crown, a building's front; nothing for a mast.
+fn outline_of(support: &SupportSide, sight: &Sight) -> Vec<Spot> {
+    let foot = sight.spot(support.foot);
+    let top = sight.spot(Place { up_m: support.top_m, ..support.foot });
+    let at = |x: f64, y: f64| Spot::new(foot.x_mm + x * HALF_SUPPORT_MM, y);
+    match support.kind {
+        SupportKind::Mast => Vec::new(),
+        SupportKind::Tree => crown_outline(foot.x_mm, top.y_mm, top.y_mm + 0.62 * (foot.y_mm - top.y_mm)),
+        SupportKind::Building => {
+            let eaves = top.y_mm + 0.35 * (foot.y_mm - top.y_mm);
+            vec![at(-1.4, foot.y_mm), at(-1.4, eaves), at(0.0, top.y_mm), at(1.4, eaves), at(1.4, foot.y_mm)]
+        }
+    }
+}
+
+/// The box that stands for the entrance.
+fn entrance_frame(elevation: &Elevation, sight: &Sight) -> Frame {
+    let at = sight.spot(elevation.entrance);
+    Frame {
+        left_mm: at.x_mm - HALF_ENTRANCE_MM,
+        top_mm: at.y_mm - HALF_ENTRANCE_MM,
+        width_mm: 2.0 * HALF_ENTRANCE_MM,
+        height_mm: 2.0 * HALF_ENTRANCE_MM,
+    }
+}
+
+/// Closed lines that labels keep off.
+pub(super) fn outlines(elevation: &Elevation, sight: &Sight) -> Vec<Vec<Spot>> {
+    let closed = |mut points: Vec<Spot>| {
+        points.extend(points.first().copied());
+        points
+    };
+    let mut out: Vec<Vec<Spot>> =
+        elevation.supports.iter().map(|support| closed(outline_of(support, sight))).collect();
+    out.push(closed(entrance_frame(elevation, sight).corners().to_vec()));
+    out
 }
 
 /// The outline of a tree's crown: a circle of lobes, stretched between top and crown's foot.

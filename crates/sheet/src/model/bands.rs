@@ -83,7 +83,7 @@ fn range(band: &BandReport, is_channels: bool) -> String {
     let range = units::megahertz_range(band.low_hz, band.high_hz);
     match (is_channels, band.points.len()) {
         (true, 1) => format!("channel {range}"),
-        (true, count) => format!("{count} channels, {range}"),
+        (true, count) => format!("{count} ch. {range}"),
         (false, _) => range,
     }
 }

@@ -49,33 +49,30 @@ fn general(plan: &Plan, report: &Report) -> Vec<Caution> {
     vec![
         caution(
             "Overhead power lines",
-            "Wire, rope or mast must never be able to touch one, also when they fall, break or are blown aside. Every \
-             overhead line is live until its owner says otherwise."
+            "Nothing may be able to touch one, even falling, broken or blown aside. Every line is live until its \
+             owner says otherwise."
                 .to_owned(),
         ),
-        caution("Falls", "Only trained people climb, secured and never alone. Nobody stands below.".to_owned()),
+        caution("Falls", "Only trained, secured people climb, never alone; nobody stands below.".to_owned()),
         caution(
             "RF burns",
             format!(
-                "Wire ends, open line and terminals burn: out of reach of people and animals. Transmitter off and \
-                 secured before anyone touches them.{feed_volts}"
+                "Wire ends, open line and terminals burn: out of everyone's reach; transmitter off and secured before \
+                 touching.{feed_volts}"
             ),
         ),
         caution(
             "RF exposure",
-            "Have the distances that national limits require assessed for this power and duty, and keep people \
-             beyond them."
-                .to_owned(),
+            "Have the distances of the national limits assessed for this power; keep people beyond them.".to_owned(),
         ),
         caution(
             "Lightning and earthing",
-            "Before a storm, disconnect the feed and earth it outside. Earthing and bonding are work for qualified \
-             people."
+            "Before a storm disconnect the feed and earth it outside. Earthing and bonding: qualified people only."
                 .to_owned(),
         ),
         caution(
             "Who decides",
-            "Local codes and licensed practice. These figures come from a model: measure before full power.".to_owned(),
+            "Local codes and licensed practice. The figures are a model's: measure before full power.".to_owned(),
         ),
     ]
 }

@@ -4,8 +4,8 @@ use station::hang::{Hung, Rope, WireEnd};
 use station::plan::{LinePiece, Link, PathPoint, Plan, Wire};
 use station::units::Units;
 
-use super::link_mark;
 use super::ratings::line_name;
+use super::{feed_letter, link_mark};
 use crate::fonts::printable;
 
 /// What is added to the plan's lengths. The defaults are common practice.
@@ -32,6 +32,8 @@ impl Default for Allowances {
 /// Everything to cut.
 #[derive(Clone, Debug, PartialEq)]
 pub struct CutList {
+    /// What all wires are made of; empty where they differ.
+    pub conductor: String,
     /// Wires first, then ropes, then lines.
     pub rows: Vec<CutRow>,
     /// What the columns hold, and where the allowances come from.
@@ -75,10 +77,11 @@ impl CutList {
     pub(super) fn new(plan: &Plan, hung: &Hung, units: Units) -> Self {
         let allowances = Allowances::default();
         let shared = Shared { units, allowances: &allowances };
+        let conductor = common_conductor(hung).map_or_else(String::new, printable);
         let mut rows = Vec::new();
         for (index, arm) in arms(plan).into_iter().enumerate() {
-            let conductor = &hung.wires[arm.wire].conductor.name;
-            rows.push(arm.row(&plan.wires[arm.wire], index + 1, conductor, shared));
+            let own = if conductor.is_empty() { hung.wires[arm.wire].conductor.name.as_str() } else { "" };
+            rows.push(arm.row(&plan.wires[arm.wire], index + 1, own, shared));
         }
         for (index, rope) in hung.ropes.iter().enumerate() {
             rows.push(rope_row(plan, rope, index + 1, shared));
@@ -87,11 +90,11 @@ impl CutList {
             for (from_wire, link) in feed.links.iter().enumerate() {
                 if let Link::Line(piece) = link {
                     let mark = link_mark(feed_index, feed.links.len(), from_wire);
-                    rows.push(line_row(piece, mark, &feed.name, shared));
+                    rows.push(line_row(piece, mark, feed_index, shared));
                 }
             }
         }
-        Self { rows, note: note(units, &allowances) }
+        Self { conductor, rows, note: note(units, &allowances) }
     }
 }
 
@@ -136,16 +139,23 @@ impl Arm {
         let is_whole = self.length_m() >= wire.cut_length_m;
         let route = match (is_whole, wire.path.first(), wire.path.last()) {
             (true, Some(first), Some(last)) => format!("{} to {}", place(first), place(last)),
-            _ => end.map_or_else(String::new, |end| format!("feedpoint to {}", place(end))),
+            _ => end.map_or_else(String::new, |end| format!("to {}", place(end))),
         };
         let lengths = Lengths {
             plan_m: self.length_m(),
             ends_m: 2.0 * allowances.insulator_m,
             extra_m: (allowances.trim_share * self.length_m()).max(allowances.trim_least_m),
         };
-        let detail = format!("{conductor}, {route}");
+        let comma = if conductor.is_empty() { "" } else { ", " };
+        let detail = format!("{conductor}{comma}{route}");
         lengths.row(format!("W{number}"), printable(&wire.name), printable(&detail), units)
     }
+}
+
+/// What all wires are made of, if it is the same.
+fn common_conductor(hung: &Hung) -> Option<&str> {
+    let first = hung.wires.first()?.conductor.name.as_str();
+    hung.wires.iter().all(|wire| wire.conductor.name == first).then_some(first)
 }
 
 fn rope_row(plan: &Plan, rope: &Rope, number: usize, shared: Shared<'_>) -> CutRow {
@@ -164,10 +174,10 @@ fn rope_row(plan: &Plan, rope: &Rope, number: usize, shared: Shared<'_>) -> CutR
     lengths.row(format!("R{number}"), "rope".to_owned(), printable(&detail), units)
 }
 
-fn line_row(piece: &LinePiece, mark: String, feed: &str, shared: Shared<'_>) -> CutRow {
+fn line_row(piece: &LinePiece, mark: String, feed: usize, shared: Shared<'_>) -> CutRow {
     let Shared { units, allowances } = shared;
     let lengths = Lengths { plan_m: piece.length_m, ends_m: 2.0 * allowances.line_end_m, extra_m: 0.0 };
-    let detail = format!("for {feed}");
+    let detail = format!("for feed {}", feed_letter(feed));
     lengths.row(mark, printable(&line_name(&piece.line)), printable(&detail), units)
 }
 

@@ -64,7 +64,7 @@ fn step(plan: &Plan, report: &Report, (feed, index): (usize, usize), units: Unit
             "transformer".to_owned(),
             format!("{} : 1, high side to the wire", units::short(transformer.impedance_ratio)),
         ),
-        Link::Line(piece) => (line_name(&piece.line), units.tape(piece.length_m)),
+        Link::Line(piece) => (format!("{},", line_name(&piece.line)), units.tape(piece.length_m)),
         Link::MatchingUnit(unit) => (
             "matching unit".to_owned(),
             format!(
@@ -100,7 +100,7 @@ impl Stress {
             None => Self { value: "–".to_owned(), at: String::new(), rating: rated, exceeds: false },
             Some((frequency_hz, value)) => Self {
                 value: text(value),
-                at: format!("at {}", units::megahertz(frequency_hz)),
+                at: units::megahertz(frequency_hz),
                 rating: rated,
                 exceeds: rating.is_some_and(|limit| value > limit),
             },

@@ -16,6 +16,8 @@ pub struct Identity {
     pub purpose: String,
     /// Call sign; may be empty.
     pub call_sign: String,
+    /// Its revision, as the user counts them.
+    pub revision: String,
     /// The day on the sheet.
     pub date: String,
     /// Checksum of the plan.
@@ -36,15 +38,16 @@ impl Identity {
         Self {
             purpose: printable(&plan.purpose),
             call_sign: printable(&plan.call_sign),
+            revision: if plan.edition.is_empty() { "–".to_owned() } else { printable(&plan.edition) },
             date: request.date.to_string(),
             transmitter: format!(
-                "{} into {} Ω, full power up to SWR {}",
+                "{}, {} Ω, SWR up to {}",
                 station::units::watts(transmitter.power_w),
                 station::units::short(transmitter.resistance_ohm),
                 station::units::swr(transmitter.swr_limit),
             ),
             model: report.model.name().to_owned(),
-            code: format!("{name}\n{}\nplan {check}", request.date),
+            code: format!("{}\nrevision {}\n{}\nplan check {check}", plan.name, plan.edition, request.date),
             name,
             check,
         }

@@ -3,6 +3,7 @@
 use super::block::{Block, ending, label};
 use super::flow::Section;
 use super::swr_curve;
+use crate::fonts;
 use crate::model::{BandEntry, FeedEntry, SheetModel};
 use crate::scene::{Anchor, Frame};
 use crate::text::Span;
@@ -10,25 +11,28 @@ use crate::tokens::{Ink, Stroke, TextStyle, space};
 use station::report::VerdictKind;
 
 /// Width of the band's name and impedance, mm.
-const BAND_MM: f64 = 32.0;
+const BAND_MM: f64 = 30.0;
 /// Width of the curve with its numbers, mm.
-const CURVE_MM: f64 = 27.0;
+const CURVE_MM: f64 = 26.0;
 /// Height of the curve, mm.
 const CURVE_HEIGHT_MM: f64 = 14.0;
 /// Width of the feed's letter, mm.
 const LETTER_MM: f64 = 5.0;
 /// Width of a standing-wave ratio, mm.
-const SWR_MM: f64 = 12.0;
+const SWR_MM: f64 = 13.5;
 /// Width of the watts, mm.
-const WATTS_MM: f64 = 15.0;
+const WATTS_MM: f64 = 14.0;
 /// Over and under a band, mm.
-const PAD_MM: f64 = 0.5;
+const PAD_MM: f64 = 0.4;
 
 pub(crate) fn section(model: &SheetModel, width_mm: f64) -> Section {
     Section {
         title: "Bands".to_owned(),
-        aside: "frequencies in MHz; verdict at the worst frequency of the band".to_owned(),
-        columns: Some(heads(width_mm)),
+        aside: Block::aside(&format!(
+            "frequencies in MHz; dotted: the limit, SWR {}; verdict at the worst frequency of the band",
+            station::units::swr(model.swr_limit)
+        )),
+        columns: Some(heads(width_mm, model.feeds.len())),
         blocks: model.bands.iter().map(|band| block(band, model.swr_limit, width_mm)).collect(),
     }
 }
@@ -53,7 +57,7 @@ impl Columns {
     }
 }
 
-fn heads(width_mm: f64) -> Block {
+fn heads(width_mm: f64, feeds: usize) -> Block {
     let columns = Columns::new(width_mm);
     let leading_mm = TextStyle::Note.leading_mm();
     let mut block = Block::empty(leading_mm * 2.0 + 0.6);
@@ -61,7 +65,8 @@ fn heads(width_mm: f64) -> Block {
     block.text(0.0, 0.0, head("band, and R ± jX"));
     block.text(0.0, leading_mm, head("at the feedpoint"));
     block.text(BAND_MM + swr_curve::NUMBERS_MM, 0.0, head("SWR without"));
-    block.text(BAND_MM + swr_curve::NUMBERS_MM, leading_mm, head("unit; ┄ limit"));
+    block.text(BAND_MM + swr_curve::NUMBERS_MM, leading_mm, head("unit"));
+    swr_curve::key(&mut block, BAND_MM + swr_curve::NUMBERS_MM + 7.0, leading_mm, feeds);
     let heads = [
         (columns.swr[0], "SWR at", "wire"),
         (columns.swr[1], "without", "unit"),
@@ -99,7 +104,7 @@ fn block(band: &BandEntry, limit: f64, width_mm: f64) -> Block {
     swr_curve::draw(&mut block, frame, &band.curves, limit);
     let mut right_mm = PAD_MM;
     for (index, feed) in band.feeds.iter().enumerate() {
-        right_mm += row(&mut block, feed, index, right_mm, &columns) + 0.4;
+        right_mm += row(&mut block, feed, index, right_mm, &columns) + 0.3;
     }
     block.height_mm = left_mm.max(right_mm).max(frame.bottom_mm()) + PAD_MM;
     block
@@ -109,7 +114,7 @@ fn row(block: &mut Block, feed: &FeedEntry, index: usize, top_mm: f64, columns: 
     block.text(columns.letter, top_mm, label(TextStyle::Strong, &feed.letter).ink(Ink::feed(index)));
     let numbers = [
         (columns.swr[0], TextStyle::Body, &feed.swr_feedpoint),
-        (columns.swr[1], TextStyle::Strong, &feed.swr_before),
+        (columns.swr[1], TextStyle::Body, &feed.swr_before),
         (columns.swr[2], TextStyle::Body, &feed.swr_after),
         (columns.loss, TextStyle::Body, &feed.loss),
         (columns.watts, TextStyle::Strong, &feed.watts),
@@ -117,10 +122,11 @@ fn row(block: &mut Block, feed: &FeedEntry, index: usize, top_mm: f64, columns: 
     for (x_mm, style, number) in numbers.into_iter().filter(|(_, _, number)| !number.is_empty()) {
         block.text(x_mm, top_mm, ending(style, number));
     }
-    if !feed.setting.is_empty() {
-        block.text(columns.setting, top_mm, label(TextStyle::Body, &feed.setting));
-    }
-    let second_mm = top_mm + TextStyle::Body.leading_mm();
+    let loss_mm = fonts::width_mm(TextStyle::Body, &feed.loss);
+    let setting_mm = columns.loss - loss_mm - space::CELL - columns.setting;
+    let setting = Span::new(TextStyle::Strong, &feed.setting);
+    let first_mm = block.paragraph(columns.setting, top_mm, setting_mm, setting);
+    let second_mm = top_mm + first_mm.max(TextStyle::Body.leading_mm());
     let mut room_mm = columns.watts - columns.words;
     if !feed.losses.is_empty() {
         let losses = ending(TextStyle::Note, &feed.losses).ink(Ink::Faint);
@@ -131,6 +137,8 @@ fn row(block: &mut Block, feed: &FeedEntry, index: usize, top_mm: f64, columns: 
         Span::new(TextStyle::Strong, feed.kind.words()).ink(verdict_ink(feed.kind)),
         Span::new(TextStyle::Body, &feed.reason),
     ];
+    let sign = if feed.kind.works() { "✓" } else { "✗" };
+    block.text(columns.letter, second_mm, label(TextStyle::Strong, sign).ink(verdict_ink(feed.kind)));
     let height_mm = block.spans(columns.words, second_mm, room_mm, &spans);
     second_mm - top_mm + height_mm
 }

@@ -18,6 +18,13 @@ impl Block {
         Self { height_mm, items: Vec::new() }
     }
 
+    /// Words beside a section's title, to the left of the origin.
+    pub fn aside(words: &str) -> Self {
+        let mut block = Self::empty(TextStyle::Note.leading_mm());
+        block.text(0.0, 0.0, ending(TextStyle::Note, words).ink(Ink::Faint));
+        block
+    }
+
     /// Adds the items of another block, moved.
     pub fn add(&mut self, other: Self, right_mm: f64, down_mm: f64) {
         self.items.extend(other.items.into_iter().map(|item| item.moved(right_mm, down_mm)));

@@ -13,7 +13,7 @@ const GAP_MM: f64 = 0.9;
 
 pub(crate) fn section(cautions: &[Caution], width_mm: f64) -> Section {
     let blocks = cautions.chunks(TOGETHER).map(|group| columns(group, width_mm)).collect();
-    Section { title: "Cautions".to_owned(), aside: String::new(), columns: None, blocks }
+    Section { title: "Cautions".to_owned(), aside: Block::default(), columns: None, blocks }
 }
 
 /// Down the left column, then down the right one, as even as can be.

@@ -57,13 +57,16 @@ impl Columns {
 pub(crate) fn section(list: &CutList, width_mm: f64) -> Section {
     let columns = Columns::new(list, width_mm);
     let mut blocks: Vec<Block> = list.rows.iter().map(|row| block(row, &columns)).collect();
+    let sum = "plan + ends + extra = cut";
+    let aside =
+        if list.conductor.is_empty() { sum.to_owned() } else { format!("wire: {}; {sum}", list.conductor) };
     let mut note = Block::default();
     let words = Span::new(TextStyle::Note, &list.note).ink(Ink::Faint);
     note.height_mm = space::CELL + note.paragraph(0.0, space::CELL, width_mm, words);
     blocks.push(note);
     Section {
         title: "Cut list".to_owned(),
-        aside: "plan + ends + extra = cut".to_owned(),
+        aside: Block::aside(&aside),
         columns: Some(heads(&columns)),
         blocks,
     }

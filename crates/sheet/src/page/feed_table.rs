@@ -3,7 +3,7 @@
 use super::block::{Block, baseline_mm, ending, label};
 use super::flow::Section;
 use crate::fonts;
-use crate::model::{FeedSchedule, Step, Stress};
+use crate::model::{FeedSchedule, SheetModel, Step, Stress};
 use crate::scene::{Anchor, Frame};
 use crate::text::{Span, fit};
 use crate::tokens::{Ink, Stroke, TextStyle, space};
@@ -13,13 +13,14 @@ const MARK_MM: f64 = 8.5;
 /// Width of the volts with their rating, mm.
 const VOLTS_MM: f64 = 28.0;
 /// Width of the amperes, mm.
-const AMPERES_MM: f64 = 19.0;
+const AMPERES_MM: f64 = 18.5;
 /// Height of the line with the feed's name, mm.
 const NAME_MM: f64 = 6.0;
 
-pub(crate) fn section(feeds: &[FeedSchedule], width_mm: f64) -> Section {
+pub(crate) fn section(model: &SheetModel, width_mm: f64) -> Section {
     let column_mm = (width_mm - space::GUTTER) / 2.0;
-    let blocks = feeds
+    let blocks = model
+        .feeds
         .chunks(2)
         .enumerate()
         .map(|(row, pair)| {
@@ -34,7 +35,10 @@ pub(crate) fn section(feeds: &[FeedSchedule], width_mm: f64) -> Section {
         .collect();
     Section {
         title: "Feed schedule".to_owned(),
-        aside: "from the transmitter to the wire, with the highest stress over all bands".to_owned(),
+        aside: Block::aside(&format!(
+            "from the transmitter ({}) to the wire; highest stress of all bands",
+            model.identity.transmitter
+        )),
         columns: None,
         blocks,
     }

@@ -1,6 +1,6 @@
 //! Sections flow down the pages.
 
-use super::block::{Block, label};
+use super::block::{Block, baseline_mm, label};
 use super::furniture;
 use crate::model::Identity;
 use crate::request::Paper;
@@ -11,8 +11,8 @@ use crate::tokens::{Ink, Stroke, TextStyle, space};
 pub(crate) struct Section {
     /// What it is called.
     pub title: String,
-    /// Said beside the title: units, scales.
-    pub aside: String,
+    /// Beside the title: units, scales. Its items stand to the left of its origin.
+    pub aside: Block,
     /// Column heads, repeated where the section continues.
     pub columns: Option<Block>,
     /// What follows, each on one page.
@@ -36,15 +36,9 @@ impl Section {
         let mut block = Block::empty(self.head_height_mm());
         block.rule(0.0, width_mm, 0.0, Stroke::Support, Ink::Text);
         let title = if is_continued { format!("{}, continued", self.title) } else { self.title.clone() };
-        let title = label(TextStyle::Section, title);
-        let aside_from_mm = title.width_mm() + space::GUTTER;
-        block.text(0.0, TITLE_DROP_MM, title);
-        if !self.aside.is_empty() {
-            let aside = crate::text::fit(TextStyle::Note, &self.aside, width_mm - aside_from_mm);
-            let drop_mm = TITLE_DROP_MM + super::block::baseline_mm(TextStyle::Section)
-                - super::block::baseline_mm(TextStyle::Note);
-            block.text(width_mm, drop_mm, super::block::ending(TextStyle::Note, aside).ink(Ink::Faint));
-        }
+        block.text(0.0, TITLE_DROP_MM, label(TextStyle::Section, title));
+        let drop_mm = TITLE_DROP_MM + baseline_mm(TextStyle::Section) - baseline_mm(TextStyle::Note);
+        block.add(self.aside.clone(), width_mm, drop_mm);
         if let Some(columns) = &self.columns {
             block.add(columns.clone(), 0.0, Self::TITLE_MM);
         }

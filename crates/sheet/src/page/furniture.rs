@@ -2,7 +2,7 @@
 
 use qrcode::{Color, EcLevel, QrCode};
 
-use super::block::{Block, ending, label};
+use super::block::{Block, baseline_mm, ending, label};
 use crate::model::Identity;
 use crate::scene::{Frame, Item};
 use crate::text::{Span, fit};
@@ -13,7 +13,9 @@ pub(crate) const FOOT_MM: f64 = 5.0;
 /// Side of the code, mm.
 const CODE_MM: f64 = 22.0;
 /// Width of the column with date and checksum, mm.
-const FACTS_MM: f64 = 40.0;
+const FACTS_MM: f64 = 46.0;
+/// Width of the names in it, mm.
+const FACT_NAME_MM: f64 = 17.0;
 
 /// The head of the first page: name, purpose, date, check, code.
 pub(crate) fn front_head(identity: &Identity, width_mm: f64) -> Block {
@@ -29,20 +31,18 @@ pub(crate) fn front_head(identity: &Identity, width_mm: f64) -> Block {
     y_mm += block.paragraph(0.0, y_mm, left_mm, Span::new(TextStyle::Strong, kind));
     y_mm +=
         block.paragraph(0.0, y_mm, left_mm, Span::new(TextStyle::Body, &identity.purpose).ink(Ink::Faint));
-    y_mm += block.paragraph(
-        0.0,
-        y_mm,
-        left_mm,
-        Span::new(TextStyle::Body, format!("Transmitter {}", identity.transmitter)),
-    );
 
     let facts_mm = left_mm + space::GUTTER;
-    let facts = [("Date", &identity.date), ("Plan check", &identity.check)];
+    let facts = [("Revision", &identity.revision), ("Date", &identity.date), ("Plan check", &identity.check)];
     let mut fact_mm = 0.0;
     for (name, value) in facts {
-        block.text(facts_mm, fact_mm, label(TextStyle::Note, name).ink(Ink::Faint));
-        block.text(facts_mm, fact_mm + TextStyle::Note.leading_mm(), label(TextStyle::Key, value));
-        fact_mm += TextStyle::Note.leading_mm() + TextStyle::Key.leading_mm() + 1.0;
+        let lower_mm = baseline_mm(TextStyle::Key) - baseline_mm(TextStyle::Note);
+        block.text(facts_mm, fact_mm + lower_mm, label(TextStyle::Note, name).ink(Ink::Faint));
+        let value_mm = facts_mm + FACT_NAME_MM;
+        let value = fit(TextStyle::Key, value, FACTS_MM - FACT_NAME_MM);
+        block.text(value_mm, fact_mm, label(TextStyle::Key, value));
+        fact_mm += TextStyle::Key.leading_mm() + 1.2;
+        block.rule(facts_mm, facts_mm + FACTS_MM, fact_mm - 0.6, Stroke::Hair, Ink::Rule);
     }
     block.add(code(&identity.code), width_mm - CODE_MM, 0.0);
     block.height_mm = y_mm.max(fact_mm).max(CODE_MM) + space::SECTION;
@@ -52,7 +52,7 @@ pub(crate) fn front_head(identity: &Identity, width_mm: f64) -> Block {
 /// The head of the other pages.
 pub(crate) fn running_head(identity: &Identity, width_mm: f64) -> Block {
     let mut block = Block::empty(TextStyle::Section.leading_mm() + space::SECTION);
-    let facts = format!("{}   plan check {}", identity.date, identity.check);
+    let facts = format!("revision {}   {}   plan check {}", identity.revision, identity.date, identity.check);
     let facts = ending(TextStyle::Body, facts);
     let name = fit(TextStyle::Section, &identity.name, width_mm - facts.width_mm() - space::GUTTER);
     block.text(0.0, 0.0, label(TextStyle::Section, name));

@@ -26,7 +26,7 @@ pub(crate) fn lay_out(model: &SheetModel, plan: &Plan, hung: &Hung, request: &Sh
     let width_mm = flow.width_mm();
     let build = [
         cut_table::section(&model.cut_list, width_mm),
-        feed_table::section(&model.feeds, width_mm),
+        feed_table::section(model, width_mm),
         cautions::section(&model.cautions, width_mm),
     ];
     let signed = records::signatures(width_mm);
@@ -40,5 +40,8 @@ pub(crate) fn lay_out(model: &SheetModel, plan: &Plan, hung: &Hung, request: &Sh
     flow.next_page();
     flow.place(band_table::section(model, width_mm));
     flow.place(records::measured(model, width_mm));
+    if let Some(notes) = records::notes(width_mm, flow.room_mm()) {
+        flow.place_at_foot(notes);
+    }
     flow.finish()
 }

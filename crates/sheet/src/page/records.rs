@@ -5,10 +5,12 @@ use super::flow::Section;
 use crate::model::SheetModel;
 use crate::scene::{Anchor, Frame, Item};
 use crate::text::fit;
-use crate::tokens::{Ink, TextStyle, space};
+use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Bands in one row of boxes.
 const BANDS_A_ROW: usize = 12;
+/// Fewer bands than this do not make the boxes wider.
+const LEAST_A_ROW: usize = 6;
 /// Height of a box for a number, mm.
 const BOX_MM: f64 = 7.5;
 /// Width of the row's name, mm.
@@ -38,11 +40,29 @@ pub(crate) fn signatures(width_mm: f64) -> Block {
     block
 }
 
+/// What is left of the page as a box for notes; nothing where a line of writing has no room.
+pub(crate) fn notes(width_mm: f64, room_mm: f64) -> Option<Block> {
+    const LEAST_MM: f64 = 14.0;
+    const LINE_MM: f64 = 8.0;
+    let height_mm = room_mm - space::CELL;
+    (height_mm >= LEAST_MM).then(|| {
+        let mut block = Block::empty(height_mm);
+        block.items.push(Item::writing_box(Frame { left_mm: 0.0, top_mm: 0.0, width_mm, height_mm }));
+        block.text(space::CELL, 0.4, label(TextStyle::Note, "Notes").ink(Ink::Faint));
+        let lines = ((height_mm - 1.0) / LINE_MM).floor() as usize;
+        for line in 1..=lines {
+            let y_mm = line as f64 * LINE_MM;
+            block.rule(2.0 * space::CELL, width_mm - 2.0 * space::CELL, y_mm, Stroke::Hair, Ink::Rule);
+        }
+        block
+    })
+}
+
 /// A box for each band and feed.
 pub(crate) fn measured(model: &SheetModel, width_mm: f64) -> Section {
     Section {
         title: "Measured".to_owned(),
-        aside: "SWR at the transmitter without the matching unit, in the middle of the band".to_owned(),
+        aside: Block::aside("SWR at the transmitter without the matching unit, in the middle of the band"),
         columns: None,
         blocks: model
             .bands
@@ -57,7 +77,8 @@ pub(crate) fn measured(model: &SheetModel, width_mm: f64) -> Section {
 
 fn boxes(bands: &[&str], model: &SheetModel, width_mm: f64) -> Block {
     let mut block = Block::default();
-    let column_mm = (width_mm - NAME_MM) / BANDS_A_ROW as f64;
+    let columns = model.bands.len().clamp(LEAST_A_ROW, BANDS_A_ROW);
+    let column_mm = (width_mm - NAME_MM) / columns as f64;
     let left_mm = |index: usize| NAME_MM + index as f64 * column_mm;
     for (index, name) in bands.iter().enumerate() {
         let name = fit(TextStyle::Note, name, column_mm - space::CELL);

@@ -4,30 +4,33 @@ use station::hang::Hung;
 use station::plan::Plan;
 use station::units::Units;
 
-use super::block::{Block, label};
+use super::block::Block;
 use super::flow::Section;
 use crate::drawing::{Ratio, Size, side_view};
+use crate::fonts;
 use crate::scene::{Frame, Item};
 use crate::text::Span;
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Least height of the section, mm: below it the labels crowd.
-pub(crate) const LEAST_HEIGHT_MM: f64 = 62.0;
+pub(crate) const LEAST_HEIGHT_MM: f64 = 52.0;
 /// Most height of the section, mm: above it the page looks empty.
 pub(crate) const MOST_HEIGHT_MM: f64 = 100.0;
 /// Length of the scale bar that is aimed at, mm.
 const BAR_MM: f64 = 45.0;
 
-/// The bar that shows the scale, with its length.
+/// The bar that shows the scale, with its length, to the left of the origin.
 fn scale_bar(ratio: Ratio, units: Units) -> Block {
     const HEIGHT_MM: f64 = 1.4;
     let bar_m = ratio.bar_m(BAR_MM);
     let length_mm = ratio.paper_mm(bar_m);
-    let mut block = Block::empty(TextStyle::Note.leading_mm());
+    let words = format!("{}    {} printed at full size", bar_words(bar_m, units), ratio.words());
+    let mut block = Block::aside(&words);
+    let left_mm = -fonts::width_mm(TextStyle::Note, &words) - 2.0 - length_mm;
     for part in 0..4 {
         let frame = Frame {
-            left_mm: length_mm * f64::from(part) / 4.0,
-            top_mm: 1.0,
+            left_mm: left_mm + length_mm * f64::from(part) / 4.0,
+            top_mm: (TextStyle::Note.leading_mm() - HEIGHT_MM) / 2.0,
             width_mm: length_mm / 4.0,
             height_mm: HEIGHT_MM,
         };
@@ -35,22 +38,21 @@ fn scale_bar(ratio: Ratio, units: Units) -> Block {
         let outline = Some((Stroke::Hair, Ink::Text));
         block.items.push(Item::Area { points: frame.corners().to_vec(), fill, outline });
     }
-    let words = format!("{}   {} at full size", units.tape(bar_m), ratio.words());
-    block.text(length_mm + 2.0, 0.0, label(TextStyle::Note, words));
     block
+}
+
+/// A bar's length: a round number.
+fn bar_words(bar_m: f64, units: Units) -> String {
+    let length = units.from_metres(bar_m);
+    let decimals = if length >= 1.0 { 0 } else { 2 };
+    format!("{} {}", station::units::fixed(length, decimals), units.symbol())
 }
 
 /// The drawing as a section of the sheet.
 pub(crate) fn section(plan: &Plan, hung: &Hung, units: Units, size: Size) -> Section {
-    let bar_mm = TextStyle::Note.leading_mm() + 1.0;
-    let size = Size { height_mm: size.height_mm - Section::TITLE_MM - space::SECTION - bar_mm, ..size };
+    let size = Size { height_mm: size.height_mm - Section::TITLE_MM - space::SECTION, ..size };
     let view = side_view(plan, hung, units, size);
-    let mut block = Block::empty(view.scene.height_mm);
-    block.items = view.scene.items;
-    let bar = scale_bar(view.ratio, units);
-    let height_mm = bar.height_mm;
-    block.add(bar, 0.0, block.height_mm);
-    block.height_mm += height_mm + 1.0;
+    let mut block = Block { height_mm: view.scene.height_mm, items: view.scene.items };
     if !view.unplaced.is_empty() {
         let words = format!("No room in the drawing for: {}.", view.unplaced.join("; "));
         let y_mm = block.height_mm;
@@ -58,7 +60,7 @@ pub(crate) fn section(plan: &Plan, hung: &Hung, units: Units, size: Size) -> Sec
     }
     Section {
         title: "Site, from the side".to_owned(),
-        aside: "lengths without knots and trimming; see the cut list".to_owned(),
+        aside: scale_bar(view.ratio, units),
         columns: None,
         blocks: vec![block],
     }

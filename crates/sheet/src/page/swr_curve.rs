@@ -1,7 +1,7 @@
 //! A small curve of SWR over one band, with the transmitter's limit.
 
-use super::block::{Block, ending};
-use crate::model::Curve;
+use super::block::{Block, ending, label};
+use crate::model::{Curve, feed_letter};
 use crate::scene::{Frame, Item, Spot};
 use crate::swr_scale;
 use crate::tokens::{Ink, Stroke, TextStyle};
@@ -14,6 +14,29 @@ const NUMBERED: [(f64, &str); 2] = [(2.0, "2"), (10.0, "10")];
 pub(crate) const NUMBERS_MM: f64 = 4.5;
 /// Radius of a channel's dot, mm.
 const DOT_MM: f64 = 0.7;
+
+/// A channel's dot: filled for the first feed, open for the others.
+fn dot(at: Spot, feed: usize) -> Item {
+    let ink = Ink::feed(feed);
+    let fill = if feed == 0 { ink } else { Ink::Background };
+    Item::disc(at, DOT_MM, fill, Some((Stroke::Frame, ink)))
+}
+
+/// What the lines are: the letter of each of the first three feeds with a piece of its line.
+pub(crate) fn key(block: &mut Block, left_mm: f64, top_mm: f64, feeds: usize) {
+    const SAMPLE_MM: f64 = 3.6;
+    let mut x_mm = left_mm;
+    for feed in 0..feeds.min(3) {
+        let letter = label(TextStyle::Note, feed_letter(feed)).ink(Ink::feed(feed));
+        let width_mm = letter.width_mm();
+        block.text(x_mm, top_mm, letter);
+        x_mm += width_mm + 0.5;
+        let y_mm = top_mm + TextStyle::Note.leading_mm() / 2.0;
+        let line = [Spot::new(x_mm, y_mm), Spot::new(x_mm + SAMPLE_MM, y_mm)];
+        block.items.push(Item::line(line[0], line[1], Stroke::feed(feed), Ink::feed(feed)));
+        x_mm += SAMPLE_MM + 0.8;
+    }
+}
 
 /// Draws the curves of one band into a frame, with the scale's numbers on its left.
 pub(crate) fn draw(block: &mut Block, frame: Frame, curves: &[Curve], limit: f64) {
@@ -32,19 +55,11 @@ pub(crate) fn draw(block: &mut Block, frame: Frame, curves: &[Curve], limit: f64
     for (index, curve) in curves.iter().enumerate() {
         let spot = |(place, swr): (f64, f64)| Spot::new(plot.left_mm + place * plot.width_mm, height(swr));
         if curve.is_channels || curve.points.len() < 2 {
-            // Feeds beside each other, not on each other; and not over the edge.
-            let shift_mm = (index as f64 - (curves.len() as f64 - 1.0) / 2.0) * 2.2 * DOT_MM;
-            for &point in &curve.points {
-                let at = spot(point);
-                let x_mm = (at.x_mm + shift_mm).clamp(plot.left_mm + DOT_MM, plot.right_mm() - DOT_MM);
-                let ink = Ink::feed(index);
-                let fill = if index == 0 { ink } else { Ink::Background };
-                block.items.push(Item::disc(
-                    Spot::new(x_mm, at.y_mm),
-                    DOT_MM,
-                    fill,
-                    Some((Stroke::Frame, ink)),
-                ));
+            // Feeds stand beside each other, not on each other; and the outermost channels off the edge.
+            let shift_mm = (index as f64 - (curves.len() as f64 - 1.0) / 2.0) * 2.4 * DOT_MM;
+            for &(place, swr) in &curve.points {
+                let at = spot((0.5 + 0.84 * (place - 0.5), swr));
+                block.items.push(dot(Spot::new(at.x_mm + shift_mm, at.y_mm), index));
             }
         } else {
             let points = curve.points.iter().map(|&point| spot(point)).collect();

@@ -134,6 +134,7 @@ fn relief_post() -> Plan {
         purpose: "District office after the flood: voice and data to the three valley posts and the capital."
             .to_owned(),
         call_sign: "X9RLF".to_owned(),
+        edition: "B".to_owned(),
         site: Site {
             supports: vec![
                 support("north mast", SupportKind::Mast, 0.0, 0.0, 12.0),
@@ -181,6 +182,7 @@ fn long_list() -> Plan {
     plan.name = longest("Coast and mountain coordination centre of the northern", 80);
     plan.purpose = longest(&"It serves seven valleys at length, and says so in many words. ".repeat(6), 400);
     plan.call_sign = longest("X9LONGCALL", 40);
+    plan.edition = longest("2026-11 after the", 20);
     plan.bands = bands(30);
     for support in &mut plan.site.supports {
         support.name = longest(&format!("{} beside the customs house", support.name), 60);
@@ -236,6 +238,7 @@ fn end_fed() -> Plan {
 fn smallest() -> Plan {
     let mut plan = relief_post();
     plan.name = "Q".to_owned();
+    plan.edition = String::new();
     plan.purpose = String::new();
     plan.call_sign = String::new();
     plan.feeds = vec![Feed { name: "direct".to_owned(), links: Vec::new() }];

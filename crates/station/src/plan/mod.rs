@@ -27,6 +27,9 @@ pub struct Plan {
     /// Call sign or station identifier; may be empty.
     #[serde(default)]
     pub call_sign: String,
+    /// Revision of the plan as it stands on paper, counted or lettered by the user: "B"; may be empty.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub edition: String,
     /// Supports, earth, entrance of the feed line.
     pub site: Site,
     /// The wires; the first is the one that most views show.
