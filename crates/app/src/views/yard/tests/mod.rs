@@ -1,0 +1,97 @@
+//! The Yard without a screen: an invented site, pointers, arrow keys, and where things stand.
+
+mod layout;
+mod moves;
+mod wave;
+
+use eframe::egui::{Rect, Vec2, pos2, vec2};
+use station::plan::{
+    Band, BandRange, ConductorChoice, Earth, Feed, Feedpoint, LineChoice, LinePiece, Link, PathPoint, Plan,
+    Point, Site, Support, SupportKind, Transmitter, Wire,
+};
+
+use crate::start;
+
+use super::layout::{plot, stage};
+use super::model::Model;
+use super::side_view::{Camera, SideView};
+
+pub fn support(name: &str, x_m: f64, height_m: f64) -> Support {
+    Support { name: name.to_owned(), kind: SupportKind::Mast, foot: Point::new(x_m, 0.0, 0.0), height_m }
+}
+
+pub fn on(support: &str, height_m: f64) -> PathPoint {
+    PathPoint::OnSupport { support: support.to_owned(), height_m }
+}
+
+/// 30 m of wire in the middle of 40 m between two masts, 10 m up.
+pub fn flat() -> Plan {
+    Plan {
+        name: "Test yard".to_owned(),
+        site: Site {
+            supports: vec![support("west mast", 0.0, 11.0), support("east mast", 40.0, 11.0)],
+            earth: Earth::Mirror,
+            entrance: Point::new(18.0, -5.0, 1.5),
+        },
+        wires: vec![Wire {
+            name: "main wire".to_owned(),
+            path: vec![on("west mast", 10.0), on("east mast", 10.0)],
+            start_m: 5.0,
+            cut_length_m: 30.0,
+            conductor: ConductorChoice::Catalogue("copper-2mm".to_owned()),
+        }],
+        feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
+        feeds: vec![Feed {
+            name: "open line".to_owned(),
+            links: vec![Link::Line(LinePiece {
+                line: LineChoice::Catalogue("open-wire-600".to_owned()),
+                length_m: 15.0,
+            })],
+        }],
+        bands: vec![
+            Band { name: "40 m".to_owned(), range: BandRange::Span { low_hz: 7.0e6, high_hz: 7.2e6 } },
+            Band { name: "10 m".to_owned(), range: BandRange::Span { low_hz: 28.0e6, high_hz: 29.7e6 } },
+        ],
+        transmitter: Transmitter { power_w: 100.0, resistance_ohm: 50.0, swr_limit: 2.0 },
+        ..start::demo()
+    }
+}
+
+/// An inverted V over a mast in the middle.
+pub fn vee() -> Plan {
+    let mut plan = flat();
+    plan.site.supports =
+        vec![support("west post", 0.0, 4.0), support("mast", 20.0, 13.0), support("east post", 40.0, 4.0)];
+    plan.wires[0].path = vec![on("west post", 3.0), on("mast", 12.5), on("east post", 3.0)];
+    plan
+}
+
+/// Ends that hang down, 3 m and 4 m.
+pub fn bent() -> Plan {
+    let mut plan = flat();
+    (plan.wires[0].start_m, plan.wires[0].cut_length_m) = (-3.0, 47.0);
+    plan
+}
+
+/// 80 m, fed at its end.
+pub fn end_fed() -> Plan {
+    let mut plan = flat();
+    plan.site.supports[1].foot.x_m = 84.0;
+    (plan.wires[0].start_m, plan.wires[0].cut_length_m) = (1.0, 80.0);
+    plan.feedpoint.fraction = 0.005;
+    plan
+}
+
+/// The fitted view of a model in a frame of this size.
+pub fn view(model: &Model<'_>, size: Vec2) -> SideView {
+    let plot = plot(Rect::from_min_size(pos2(0.0, 0.0), size));
+    SideView {
+        plane: model.plane,
+        camera: Camera::fit(model.bounds().unwrap(), stage(plot), plot),
+        frame: plot,
+    }
+}
+
+pub fn usual_view(model: &Model<'_>) -> SideView {
+    view(model, vec2(980.0, 460.0))
+}
