@@ -50,7 +50,7 @@ pub(super) fn names_mm(elevation: &Elevation) -> f64 {
 }
 
 /// Height of the row of spans, mm.
-pub(super) const SPANS_MM: f64 = 4.8 + TICK_MM + 0.3;
+pub(super) const SPANS_MM: f64 = 5.4 + TICK_MM + 0.3;
 
 /// Places along the plane where the path is made fast, from left to right.
 fn stations(elevation: &Elevation) -> Vec<f64> {
@@ -190,7 +190,7 @@ fn entrance_words(elevation: &Elevation, units: Units) -> String {
     }
     let behind_m = elevation.entrance_behind_m;
     if behind_m.abs() > LEAST_SPAN_M {
-        let side = if behind_m > 0.0 { "behind" } else { "in front" };
+        let side = if behind_m > 0.0 { "behind the wire" } else { "before the wire" };
         words = format!("{words}, {} {side}", units.tape(behind_m.abs()));
     }
     words

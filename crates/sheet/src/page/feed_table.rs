@@ -9,11 +9,11 @@ use crate::text::{Span, fit};
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Width of the mark, mm.
-const MARK_MM: f64 = 8.5;
+const MARK_MM: f64 = 8.0;
 /// Width of the volts with their rating, mm.
-const VOLTS_MM: f64 = 28.0;
+const VOLTS_MM: f64 = 30.5;
 /// Width of the amperes, mm.
-const AMPERES_MM: f64 = 18.5;
+const AMPERES_MM: f64 = 17.5;
 /// Height of the line with the feed's name, mm.
 const NAME_MM: f64 = 6.0;
 

@@ -18,6 +18,7 @@ use crate::drawing::Size;
 use crate::model::SheetModel;
 use crate::request::SheetRequest;
 use crate::scene::Scene;
+use crate::tokens::space;
 use flow::{Flow, Section};
 
 /// Lays the sheet out: what to build on the first page, how to work it on the second, more where it needs more.
@@ -30,7 +31,7 @@ pub(crate) fn lay_out(model: &SheetModel, plan: &Plan, hung: &Hung, request: &Sh
         cautions::section(&model.cautions, width_mm),
     ];
     let signed = records::signatures(width_mm);
-    let taken_mm = build.iter().map(Section::height_mm).sum::<f64>() + signed.height_mm;
+    let taken_mm = build.iter().map(Section::height_mm).sum::<f64>() + signed.height_mm + space::CELL;
     let height_mm = (flow.room_mm() - taken_mm).clamp(site::LEAST_HEIGHT_MM, site::MOST_HEIGHT_MM);
     flow.place(site::section(plan, hung, request.units, Size { width_mm, height_mm }));
     for section in build {

@@ -51,13 +51,19 @@ fn bar_words(bar_m: f64, units: Units) -> String {
 /// The drawing as a section of the sheet.
 pub(crate) fn section(plan: &Plan, hung: &Hung, units: Units, size: Size) -> Section {
     let size = Size { height_mm: size.height_mm - Section::TITLE_MM - space::SECTION, ..size };
-    let view = side_view(plan, hung, units, size);
-    let mut block = Block { height_mm: view.scene.height_mm, items: view.scene.items };
+    let mut view = side_view(plan, hung, units, size);
+    let mut note = Block::default();
     if !view.unplaced.is_empty() {
+        // A lower drawing leaves room to say it below.
+        let lines_mm = 2.0 * TextStyle::Note.leading_mm();
+        view = side_view(plan, hung, units, Size { height_mm: size.height_mm - lines_mm, ..size });
         let words = format!("No room in the drawing for: {}.", view.unplaced.join("; "));
-        let y_mm = block.height_mm;
-        block.height_mm += block.paragraph(0.0, y_mm, size.width_mm, Span::new(TextStyle::Note, words)) + 0.5;
+        note.height_mm = note.paragraph(0.0, 0.0, size.width_mm, Span::new(TextStyle::Note, words));
     }
+    let mut block = Block { height_mm: view.scene.height_mm, items: view.scene.items };
+    let y_mm = block.height_mm;
+    block.height_mm += note.height_mm;
+    block.add(note, 0.0, y_mm);
     Section {
         title: "Site, from the side".to_owned(),
         aside: scale_bar(view.ratio, units),
