@@ -128,9 +128,9 @@ enum Relation {
 
 impl Relation {
     fn between(p: &Axis, q: &Axis) -> Self {
-        let touching = [-1.0, 1.0]
-            .iter()
-            .any(|&a| [-1.0, 1.0].iter().any(|&b| distance(p.end(a), q.end(b)) < TOUCHING_RADII * p.radius_m));
+        let touching = [-1.0, 1.0].iter().any(|&a| {
+            [-1.0, 1.0].iter().any(|&b| distance(p.end(a), q.end(b)) < TOUCHING_RADII * p.radius_m)
+        });
         if touching { Self::Touching } else { Self::Apart }
     }
 

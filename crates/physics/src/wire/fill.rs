@@ -95,7 +95,8 @@ pub(super) fn matrix(
     frequency_hz: f64,
 ) -> Symmetric {
     let k = wave_number_rad_per_m(frequency_hz);
-    let shapes: Vec<Shapes> = mesh.segments.iter().map(|segment| Shapes::new(k, segment.length_m())).collect();
+    let shapes: Vec<Shapes> =
+        mesh.segments.iter().map(|segment| Shapes::new(k, segment.length_m())).collect();
     let mut matrix = Symmetric::zero(mesh.unknowns.len());
     for coupling in couplings {
         let mut near = coupling.near.iter().peekable();
@@ -129,7 +130,8 @@ pub(super) fn matrix(
         shares.scatter(&mut matrix, (p, p), &[[same, cross], [cross, same]]);
         if let Some(insulation) = &wire.material.insulation {
             // −δ/(jω)·∫I′I′ ds
-            let scale = Complex64::new(0.0, insulation.elastance_m_per_f(wire.radius_m) / (TAU * frequency_hz));
+            let scale =
+                Complex64::new(0.0, insulation.elastance_m_per_f(wire.radius_m) / (TAU * frequency_hz));
             let [same, cross] = Shapes::slope_overlaps(k, length_m).map(|overlap| scale * overlap);
             shares.scatter(&mut matrix, (p, p), &[[same, cross], [cross, same]]);
         }

@@ -60,7 +60,8 @@ pub struct Conductor {
 impl Conductor {
     /// γ = √(jωµσ), 1/m.
     fn propagation_per_m(&self, frequency_hz: f64) -> Complex64 {
-        let depth_m = (PI * frequency_hz * self.permeability_h_per_m() * self.conductivity_s_per_m).sqrt().recip();
+        let depth_m =
+            (PI * frequency_hz * self.permeability_h_per_m() * self.conductivity_s_per_m).sqrt().recip();
         Complex64::new(1.0, 1.0) / depth_m
     }
 

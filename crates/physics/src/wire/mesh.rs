@@ -73,7 +73,8 @@ impl Mesh {
             }
             let last = mesh.segments.len() - 1;
             for segment in first..last {
-                mesh.unknowns.push(Unknown { arms: [arm(segment, End::To, 1.0), arm(segment + 1, End::From, 1.0)] });
+                mesh.unknowns
+                    .push(Unknown { arms: [arm(segment, End::To, 1.0), arm(segment + 1, End::From, 1.0)] });
             }
             end_segments.push([first, last]);
         }
@@ -95,8 +96,10 @@ impl Mesh {
                 .map(|at| (end_segments[at.stretch][usize::from(at.end == End::To)], at.end))
                 .collect();
             // Current from → to is current into the joint at a segment's end, out of it at a segment's beginning.
-            let into = |&(segment, end): &(usize, End)| arm(segment, end, if end == End::To { 1.0 } else { -1.0 });
-            let out_of = |&(segment, end): &(usize, End)| arm(segment, end, if end == End::To { -1.0 } else { 1.0 });
+            let into =
+                |&(segment, end): &(usize, End)| arm(segment, end, if end == End::To { 1.0 } else { -1.0 });
+            let out_of =
+                |&(segment, end): &(usize, End)| arm(segment, end, if end == End::To { -1.0 } else { 1.0 });
             if joint.grounded {
                 self.unknowns.extend(ends.iter().map(|end| Unknown { arms: [into(end), None] }));
             } else if let Some((first, others)) = ends.split_first() {
@@ -148,9 +151,13 @@ fn wanted_lengths(
     highest_hz: f64,
 ) -> Vec<Wanted> {
     let longest_m = crate::constants::SPEED_OF_LIGHT_M_PER_S / highest_hz / fineness.per_wavelength;
-    let slope = fineness.slope();
+    let growth = fineness.growth(longest_m);
+    let farthest_m = growth.distance_of(longest_m);
     let mut at_joints_m: Vec<f64> = (0..skeleton.joints.len())
-        .map(|joint| start_at_joint(structure, skeleton, fineness, joint).min(longest_m))
+        .map(|joint| {
+            let shortest_m = shortest_at_joint(structure, skeleton, fineness, joint);
+            if shortest_m < longest_m { growth.start_m(shortest_m).min(farthest_m) } else { farthest_m }
+        })
         .collect();
     // A short length is felt through smooth vertices and joints; each round carries it one stretch further.
     let mut changed = true;
@@ -159,7 +166,7 @@ fn wanted_lengths(
         for stretch in &skeleton.stretches {
             let [from, to] = stretch.joints;
             for (near, far) in [(from, to), (to, from)] {
-                let felt_m = at_joints_m[near] + slope * stretch.length_m;
+                let felt_m = at_joints_m[near] + stretch.length_m;
                 if felt_m < at_joints_m[far] * (1.0 - 1e-9) {
                     at_joints_m[far] = felt_m;
                     changed = true;
@@ -174,16 +181,17 @@ fn wanted_lengths(
             length_m: stretch.length_m,
             at_ends_m: stretch.joints.map(|joint| at_joints_m[joint]),
             longest_m,
-            slope,
+            growth,
         })
         .collect()
 }
 
-/// Wanted length at a joint for its own sake; infinite where the wire just goes on.
-fn start_at_joint(structure: &Structure, skeleton: &Skeleton, fineness: &Fineness, joint: usize) -> f64 {
+/// Shortest segment at a joint for its own sake; infinite where the wire just goes on.
+fn shortest_at_joint(structure: &Structure, skeleton: &Skeleton, fineness: &Fineness, joint: usize) -> f64 {
     let ends = &skeleton.joints[joint].stretches;
-    let wire = |index: usize| -> &WireShape { &structure.wires[skeleton.stretches[ends[index].stretch].wire] };
-    let largest_m = (0..ends.len()).map(|index| wire(index).radius_m).fold(0.0, f64::max);
+    let wire =
+        |index: usize| -> &WireShape { &structure.wires[skeleton.stretches[ends[index].stretch].wire] };
+    let largest_m = (0..ends.len()).map(|index| finest_radius_m(wire(index))).fold(0.0, f64::max);
     let mut shortest_m = f64::INFINITY;
     let own = match ends.len() {
         1 if skeleton.joints[joint].grounded => f64::INFINITY,
@@ -204,5 +212,19 @@ fn start_at_joint(structure: &Structure, skeleton: &Skeleton, fineness: &Finenes
             shortest_m = shortest_m.min((gap_m / fineness.per_gap).max(fineness.end_radii * largest_m));
         }
     }
-    fineness.start_m(shortest_m)
+    shortest_m
 }
+
+/// Radius that the shortest segment is measured in.
+///
+/// The cover's effect on the charge is taken as local. It is, over lengths above the cover's own thickness; on shorter
+/// segments the matrix would take away more than there is.
+fn finest_radius_m(wire: &WireShape) -> f64 {
+    match &wire.material.insulation {
+        Some(cover) => wire.radius_m.max(COVER_RADII * cover.outer_radius_m),
+        None => wire.radius_m,
+    }
+}
+
+/// Shortest segment of an insulated wire, in radii over the cover.
+const COVER_RADII: f64 = 3.0;

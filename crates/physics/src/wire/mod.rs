@@ -3,13 +3,17 @@
 //! The current on every [`Segment`] of the mesh is a sinusoid of the free-space wave number, given by its
 //! [`EndCurrents`].
 
+mod check;
 mod coupling;
 mod error;
 mod fill;
 mod grading;
+mod load;
 mod material;
 mod mesh;
 mod moments;
+pub mod ports;
+mod power;
 mod segment;
 mod shapes;
 mod skeleton;
@@ -19,7 +23,9 @@ mod tube;
 mod vector;
 
 pub use error::WireError;
+pub use load::{Load, Termination};
 pub use material::{Conductor, Insulation, Material, Metal};
+pub use power::{port_power_w, segment_loss_w};
 pub use segment::{EndCurrents, Segment};
-pub use solution::{Solution, WireModel};
+pub use solution::{Solution, WireModel, mesh_error};
 pub use structure::{Boundary, PortPlace, Structure, WireShape};

@@ -25,7 +25,10 @@ impl Shapes {
         // (1 − y·cot y)/y² and (tan y/y − 1)/y²; series below, where the closed forms cancel.
         let (falling, rising) = if y < 0.03 {
             let y2 = y * y;
-            (1.0 / 3.0 + y2 / 45.0 + 2.0 * y2 * y2 / 945.0, 1.0 / 3.0 + 2.0 * y2 / 15.0 + 17.0 * y2 * y2 / 315.0)
+            (
+                1.0 / 3.0 + y2 / 45.0 + 2.0 * y2 * y2 / 945.0,
+                1.0 / 3.0 + 2.0 * y2 / 15.0 + 17.0 * y2 * y2 / 315.0,
+            )
         } else {
             ((1.0 - y / y.tan()) / (y * y), (y.tan() / y - 1.0) / (y * y))
         };

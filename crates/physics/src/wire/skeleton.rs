@@ -93,8 +93,7 @@ impl Skeleton {
         }
         let mut end = |vertex_m: Option<&Vec3>| {
             let Some(&vertex_m) = vertex_m else { return Degree::Open };
-            let grounded =
-                structure.boundary == Boundary::Mirror && vertex_m[2].abs() <= JOINT_TOLERANCE_M;
+            let grounded = structure.boundary == Boundary::Mirror && vertex_m[2].abs() <= JOINT_TOLERANCE_M;
             if grounded || degrees[self.joint_at(vertex_m)] > 1 { Degree::Joined } else { Degree::Open }
         };
         let ends = |vertices_m: &Vec<Vec3>| [end(vertices_m.first()), end(vertices_m.last())];

@@ -35,47 +35,60 @@ impl Tubes {
             self.near(z)
         };
         // The kernel is even in z, so first and third are odd.
-        Antiderivatives { first: mean.first.copysign(z_m), third: mean.third.copysign(z_m), ..mean }
+        let sign = 1.0_f64.copysign(z_m);
+        Antiderivatives { first: sign * mean.first, third: sign * mean.third, ..mean }
     }
 
-    /// Mean over φ by the midpoint rule.
+    /// Mean over φ by the midpoint rule, with the logarithm of b apart.
     ///
-    /// The integrand is periodic and analytic in a strip |Im φ| < 2·asinh(z/2a) (for equal radii; wider for unequal
-    /// ones), so n points on half a turn leave e^(−2n·2·asinh(z/2a)).
+    /// What is left is periodic and analytic in the strip |Im φ| < 2·asinh(√(z² + (a₁ − a₂)²)/2√(a₁a₂)) = w, so n points
+    /// on half a turn leave e^(−2nw).
     fn near(&self, z: f64) -> Antiderivatives {
-        if z <= 0.0 && self.radius_1_m.total_cmp(&self.radius_2_m).is_eq() {
+        let (a1, a2) = (self.radius_1_m, self.radius_2_m);
+        if z <= 0.0 && a1.total_cmp(&a2).is_eq() {
             // b = 2a·sin(φ/2):  A₂ = −b,  A₄ = b³/9  with the means  b = 4a/π,  b³ = 32a³/3π
-            let a = self.radius_1_m;
-            let (second, fourth) = (-4.0 * a / PI, 32.0 * a * a * a / (27.0 * PI));
+            let (second, fourth) = (-4.0 * a1 / PI, 32.0 * a1 * a1 * a1 / (27.0 * PI));
             return Antiderivatives { second, fourth, ..Antiderivatives::default() };
         }
-        let strip = 2.0 * (0.5 * z / self.radius_1_m.max(self.radius_2_m)).asinh();
+        let strip = 2.0 * (0.5 * z.hypot(a1 - a2) / (a1 * a2).sqrt()).asinh();
         let points = (MIDPOINT_DIGITS / strip).ceil().clamp(4.0, MOST_POINTS);
         let mut sum = Antiderivatives::default();
         let mut index = 0.5;
         while index < points {
-            let phi = PI * index / points;
-            let (a1, a2) = (self.radius_1_m, self.radius_2_m);
             // b² = (a₁ − a₂)² + 4a₁a₂·sin²(φ/2), without cancellation for small φ
-            let half = (0.5 * phi).sin();
+            let half = (0.5 * PI * index / points).sin();
             let b2 = (a1 - a2) * (a1 - a2) + 4.0 * a1 * a2 * half * half;
-            sum.add(&ring(z, b2));
+            let r = (z * z + b2).sqrt();
+            sum.add(&Antiderivatives::of_ring(z, b2, (z + r).ln()));
             index += 1.0;
         }
-        sum.scaled(points.recip())
+        let mut mean = sum.scaled(points.recip());
+        // A₁ holds ln(z + r) − ln b; the terms with ln b follow from its own mean and that of b²·ln b.
+        let [log_b, b2_log_b] = self.logarithms();
+        mean.first -= log_b;
+        mean.second -= z * log_b;
+        mean.third -= 0.5 * z * z * log_b - 0.25 * b2_log_b;
+        mean.fourth -= z * (z * z / 6.0 * log_b - 0.25 * b2_log_b);
+        mean
+    }
+
+    /// Means over φ of ln b (Jensen's formula) and of b²·ln b.
+    fn logarithms(&self) -> [f64; 2] {
+        let (large, small) = (self.radius_1_m.max(self.radius_2_m), self.radius_1_m.min(self.radius_2_m));
+        let log_b = large.ln();
+        [log_b, (large * large + small * small) * log_b + small * small]
     }
 
     /// Mean over φ of the expansion in powers of b/z.
     fn far(&self, z: f64) -> Antiderivatives {
-        let (large, small) = (self.radius_1_m.max(self.radius_2_m), self.radius_1_m.min(self.radius_2_m));
-        // Means over φ:  b², b⁴, b⁶, ln b (Jensen's formula) and b²·ln b
-        let sum = large * large + small * small;
-        let cross = large * large * small * small;
+        // Means over φ of b², b⁴, b⁶
+        let (a1, a2) = (self.radius_1_m, self.radius_2_m);
+        let sum = a1 * a1 + a2 * a2;
+        let cross = a1 * a1 * a2 * a2;
         let b2 = sum;
         let b4 = sum * sum + 2.0 * cross;
         let b6 = sum * (sum * sum + 6.0 * cross);
-        let log_b = large.ln();
-        let b2_log_b = sum * log_b + small * small;
+        let [log_b, b2_log_b] = self.logarithms();
         let z2 = z * z;
         // asinh(z/b) = ln 2z − ln b + b²/4z² − 3b⁴/32z⁴ + 5b⁶/96z⁶
         // r = z·(1 + b²/2z² − b⁴/8z⁴ + b⁶/16z⁶)
@@ -103,22 +116,21 @@ const MIDPOINT_DIGITS: f64 = 10.0;
 /// Bounds the work for points closer than a hundredth of a radius, which a mesh does not have.
 const MOST_POINTS: f64 = 512.0;
 
-/// Antiderivatives of 1/√(z² + b²) for z ≥ 0.
-fn ring(z: f64, b2: f64) -> Antiderivatives {
-    // A₁ = asinh(z/b),   A₂ = z·A₁ − r,   A₃ = (z²/2 − b²/4)·A₁ − ¾·z·r,
-    // A₄ = (z³/6 − b²z/4)·A₁ − 11/36·r³ + 5/12·b²·r
-    let r2 = z * z + b2;
-    let r = r2.sqrt();
-    let first = if z > 0.0 { (z / b2.sqrt()).asinh() } else { 0.0 };
-    Antiderivatives {
-        first,
-        second: z * first - r,
-        third: (0.5 * z * z - 0.25 * b2) * first - 0.75 * z * r,
-        fourth: z * (z * z / 6.0 - 0.25 * b2) * first - 11.0 / 36.0 * r2 * r + 5.0 / 12.0 * b2 * r,
-    }
-}
-
 impl Antiderivatives {
+    /// Antiderivatives of 1/√(z² + b²) for z ≥ 0, given the first.
+    fn of_ring(z: f64, b2: f64, first: f64) -> Self {
+        // A₁ = asinh(z/b),   A₂ = z·A₁ − r,   A₃ = (z²/2 − b²/4)·A₁ − ¾·z·r,
+        // A₄ = (z³/6 − b²z/4)·A₁ − 11/36·r³ + 5/12·b²·r
+        let r2 = z * z + b2;
+        let r = r2.sqrt();
+        Self {
+            first,
+            second: z * first - r,
+            third: (0.5 * z * z - 0.25 * b2) * first - 0.75 * z * r,
+            fourth: z * (z * z / 6.0 - 0.25 * b2) * first - 11.0 / 36.0 * r2 * r + 5.0 / 12.0 * b2 * r,
+        }
+    }
+
     fn add(&mut self, other: &Self) {
         self.first += other.first;
         self.second += other.second;
@@ -150,17 +162,20 @@ mod tests {
             let (a1, a2) = (tubes.radius_1_m, tubes.radius_2_m);
             let half = (0.5 * PI * t * t * t).sin();
             let b2 = (a1 - a2) * (a1 - a2) + 4.0 * a1 * a2 * half * half;
-            sum.add(&ring(z, b2).scaled(3.0 * t * t / f64::from(points)));
+            let ring = Antiderivatives::of_ring(z, b2, (z / b2.sqrt()).asinh());
+            sum.add(&ring.scaled(3.0 * t * t / f64::from(points)));
         }
         sum
     }
 
     #[test]
     fn means_agree_with_brute_force() {
-        for tubes in [Tubes { radius_1_m: 1.0, radius_2_m: 1.0 }, Tubes { radius_1_m: 0.4, radius_2_m: 1.0 }] {
+        for tubes in [Tubes { radius_1_m: 1.0, radius_2_m: 1.0 }, Tubes { radius_1_m: 0.4, radius_2_m: 1.0 }]
+        {
             for z in [0.0, 0.7, 2.0, 11.9, 12.1, 100.0] {
                 let (got, expected) = (tubes.antiderivatives(z), brute(&tubes, z));
-                let near = |a: f64, b: f64, scale: f64| assert!((a - b).abs() < 1e-7 * scale, "{z}: {a} for {b}");
+                let near =
+                    |a: f64, b: f64, scale: f64| assert!((a - b).abs() < 1e-7 * scale, "{z}: {a} for {b}");
                 near(got.first, expected.first, 1.0);
                 near(got.second, expected.second, 1.0 + z);
                 near(got.third, expected.third, 1.0 + z * z);

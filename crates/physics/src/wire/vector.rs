@@ -45,7 +45,7 @@ pub(super) fn nearest(a: [Vec3; 2], b: [Vec3; 2]) -> ([f64; 2], f64) {
         .then(|| [(ab * bo - bb * ao) / determinant, (aa * bo - ab * ao) / determinant])
         .filter(|parts| parts.iter().all(|part| (0.0..=1.0).contains(part)));
     let candidates = inside.into_iter().chain([fixed_s(0.0), fixed_s(1.0), fixed_t(0.0), fixed_t(1.0)]);
-    candidates.map(|parts| (parts, gap(parts))).fold(([0.0; 2], f64::INFINITY), |best, next| {
-        if next.1 < best.1 { next } else { best }
-    })
+    candidates
+        .map(|parts| (parts, gap(parts)))
+        .fold(([0.0; 2], f64::INFINITY), |best, next| if next.1 < best.1 { next } else { best })
 }
