@@ -99,8 +99,38 @@ pub fn verdict(painter: &Painter, centre: Pos2, radius: f32, kind: VerdictKind, 
 pub fn patterned(points: Vec<Pos2>, pattern: Pattern, stroke: Stroke, out: &mut Vec<Shape>) {
     match pattern.dash_and_gap() {
         None => out.push(Shape::line(points, stroke)),
-        Some((dash, gap)) => out.extend(Shape::dashed_line(&points, stroke, dash, gap)),
+        Some((dash, gap)) => out.extend(dashes(&points, dash, gap).map(|dash| Shape::line(dash, stroke))),
     }
+}
+
+/// The dashes of a polyline, each a polyline of its own: egui's own dashes fall to pieces where points lie closer than
+/// a dash is long.
+fn dashes(points: &[Pos2], dash: f32, gap: f32) -> impl Iterator<Item = Vec<Pos2>> {
+    let mut done = Vec::new();
+    let mut open: Vec<Pos2> = points.first().copied().into_iter().collect();
+    let (mut drawing, mut left) = (true, dash);
+    for pair in points.windows(2) {
+        let (mut from, to) = (pair[0], pair[1]);
+        let mut length = (to - from).length();
+        while length > left {
+            from += (to - from) * (left / length);
+            length -= left;
+            if drawing {
+                open.push(from);
+                done.push(std::mem::take(&mut open));
+            } else {
+                open.push(from);
+            }
+            drawing = !drawing;
+            left = if drawing { dash } else { gap };
+        }
+        left -= length;
+        if drawing {
+            open.push(to);
+        }
+    }
+    done.push(open);
+    done.into_iter().filter(|dash| dash.len() > 1)
 }
 
 /// A piece of text in one colour; pieces of different size stand on one middle line.
@@ -124,4 +154,31 @@ pub fn text_in(painter: &Painter, within: Rect, job: LayoutJob) -> bool {
     let at = pos2(within.left(), within.center().y - 0.5 * galley.size().y);
     painter.galley(at, galley, Color32::PLACEHOLDER);
     elided
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn length(points: &[Pos2]) -> f32 {
+        points.windows(2).map(|pair| (pair[1] - pair[0]).length()).sum()
+    }
+
+    #[test]
+    fn dashes_keep_their_length_however_close_the_points_are() {
+        let fine: Vec<Pos2> = (0..=400).map(|i| pos2(0.25 * i as f32, 10.0 + 0.001 * i as f32)).collect();
+        let coarse = [fine[0], fine[400]];
+        for points in [&fine[..], &coarse[..]] {
+            let dashes: Vec<Vec<Pos2>> = dashes(points, 6.0, 4.0).collect();
+            assert_eq!(dashes.len(), 10, "{} points", points.len());
+            for dash in &dashes[..9] {
+                assert!((length(dash) - 6.0).abs() < 0.01, "{}", length(dash));
+            }
+        }
+    }
+
+    #[test]
+    fn every_feed_has_its_letter() {
+        assert_eq!([letter(0), letter(1), letter(2), letter(30)], ['A', 'B', 'C', '?']);
+    }
 }

@@ -1,5 +1,6 @@
 //! Band view: the chosen band in depth, with one cursor for all plots.
 
+mod curve;
 pub mod layout;
 pub mod model;
 mod plots;

@@ -2,11 +2,12 @@
 
 use eframe::egui::{self, Rect, RichText, Role, Sense, TextStyle, UiBuilder, WidgetInfo};
 use egui_plot::{
-    AxisHints, GridInput, GridMark, HLine, Line, LineStyle, MarkerShape, PlotPoint, PlotUi, Points, VLine,
+    AxisHints, GridInput, GridMark, HLine, LineStyle, MarkerShape, PlotPoint, PlotUi, Points, VLine,
 };
 use sheet::tokens::{Ink, Pattern, Pen};
 use station::units;
 
+use super::curve::Patterned;
 use super::layout::Plot;
 use super::{BandState, Shown, model, sample};
 use crate::explain::{self, Explain as _};
@@ -127,7 +128,8 @@ pub(super) fn show(
     } else {
         left.formatter(|mark, _| units::fixed(mark.value, decimals(mark.step_size)))
     };
-    let suffix = if plot.is_along_line() { format!(" {}", shown.snapshot.units.symbol()) } else { String::new() };
+    let suffix =
+        if plot.is_along_line() { format!(" {}", shown.snapshot.units.symbol()) } else { String::new() };
     let bottom = axis(AxisHints::new_x())
         .label_spacing(30.0..=40.0)
         .formatter(move |mark, _| units::fixed(mark.value, decimals(mark.step_size)) + &suffix);
@@ -270,11 +272,8 @@ fn draw<'a>(plot_ui: &mut PlotUi<'a>, shown: &Shown<'_>, curve: &Curve<'a>, is_l
         plot_ui.points(dots.allow_hover(false));
         return;
     }
-    let line = Line::new("curve", curve.points)
-        .stroke(egui::Stroke::new(Pen::Curve.width(), ink))
-        .style(style(curve.pattern))
-        .allow_hover(false);
-    plot_ui.line(line);
+    let stroke = egui::Stroke::new(Pen::Curve.width(), ink);
+    plot_ui.add(Patterned::new(curve.points, curve.pattern, stroke));
 }
 
 /// A dot where the cursor crosses a curve.
@@ -298,14 +297,6 @@ fn shape(pattern: Pattern) -> MarkerShape {
         Pattern::Solid => MarkerShape::Circle,
         Pattern::Dashed => MarkerShape::Square,
         Pattern::Dotted => MarkerShape::Diamond,
-    }
-}
-
-fn style(pattern: Pattern) -> LineStyle {
-    match pattern {
-        Pattern::Solid => LineStyle::Solid,
-        Pattern::Dashed => LineStyle::Dashed { length: 6.0 },
-        Pattern::Dotted => LineStyle::Dotted { spacing: 4.5 },
     }
 }
 

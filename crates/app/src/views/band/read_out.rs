@@ -2,7 +2,7 @@
 
 use eframe::egui::{self, RichText, Role, Sense, Slider, WidgetInfo, vec2};
 use sheet::tokens::Ink;
-use station::report::FrequencyReport;
+use station::report::{FrequencyReport, ProfilePoint};
 use station::units;
 
 use super::{BandState, Shown, model};
@@ -112,15 +112,15 @@ fn along(ui: &mut egui::Ui, shown: &Shown<'_>, state: &BandState) {
     ui.allocate_space(vec2(1.0, 2.0));
     egui::Grid::new("values along the line").spacing([10.0, 4.0]).show(ui, |ui| {
         letters(ui, shown, "");
-        let at = |feed: &station::report::BandFeed| model::along(&feed.profile, along_m);
-        let rows: [(&str, fn(station::report::ProfilePoint) -> String); 2] =
-            [("volts", |p| units::volts(p.peak_v)), ("amperes", |p| units::amperes(p.peak_a))];
-        for (name, text) in rows {
+        let mut row = |name: &str, text: fn(ProfilePoint) -> String| {
             ui.label(RichText::new(name).small().color(faint));
             for feed in &shown.band.feeds {
-                ui.label(RichText::new(at(feed).map_or_else(|| "—".to_owned(), text)).small());
+                let at = model::along(&feed.profile, along_m);
+                ui.label(RichText::new(at.map_or_else(|| "—".to_owned(), text)).small());
             }
             ui.end_row();
-        }
+        };
+        row("volts", |p| units::volts(p.peak_v));
+        row("amperes", |p| units::amperes(p.peak_a));
     });
 }

@@ -12,6 +12,8 @@ use crate::snapshot::Snapshot;
 use crate::theme::color;
 use crate::views::marks;
 
+/// Height of the pick list of lines before it scrolls.
+const PICK_LIST: f32 = 460.0;
 /// Feeds that can stand side by side and still be read.
 const MOST_FEEDS: usize = 3;
 /// Common practice: impedance ratios that transformers are wound for.
@@ -215,6 +217,7 @@ fn line(
     grid(ui, "line fields", |ui| {
         let label = ui.label("kind");
         let response = egui::ComboBox::from_id_salt("kind of line")
+            .height(PICK_LIST)
             .width(ui.available_width())
             .truncate()
             .selected_text(model::line_name(&piece.line))

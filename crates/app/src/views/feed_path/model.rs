@@ -6,6 +6,7 @@ use station::report::{FeedReport, LinkReport, VerdictKind};
 use station::units::{self, Units};
 
 use crate::snapshot::Snapshot;
+use crate::views::lanes::model::Lane;
 use crate::views::marks;
 
 /// One feed from the transmitter (first) to the wire (last).
@@ -17,6 +18,10 @@ pub struct Column<'a> {
     pub name: &'a str,
     /// What the feed needs on the chosen band.
     pub verdict: Option<VerdictKind>,
+    /// The verdict in words, or how much of the band is covered where a part of it is.
+    pub verdict_words: String,
+    /// Whether it can be worked in the middle of the band, where the watts are told.
+    pub works_in_middle: bool,
     /// What the transmitter is set to give, W: as wide as the path can be.
     pub power_w: f64,
     /// What it does give into this feed, W: less where its SWR limit is exceeded.
@@ -95,8 +100,28 @@ fn column<'a>(snapshot: &Snapshot<'a>, index: usize, feed: &'a Feed) -> Column<'
         watts: f.watts_to_wire,
         heat_w: f.watts_to_wire * (1.0 - b.middle_point().wire_efficiency),
     });
-    let verdict = found.and(band).and_then(|b| b.feeds.get(index)).map(|f| f.verdict.kind);
-    Column { feed: index, name: &feed.name, verdict, power_w, given_w, blocks, wire }
+    let verdict = found.and(band).and_then(|b| b.feeds.get(index)).map(|f| &f.verdict);
+    let verdict_words = band.zip(verdict).map_or_else(String::new, |(b, v)| {
+        let lane = Lane::of(snapshot, snapshot.band, b);
+        if v.kind.works() || v.covered_hz.is_empty() {
+            v.kind.words().to_owned()
+        } else {
+            lane.covered(index)
+        }
+    });
+    let works_in_middle = found.is_some_and(|f| f.kind != VerdictKind::OutOfRange);
+    let verdict = verdict.map(|v| v.kind);
+    Column {
+        feed: index,
+        name: &feed.name,
+        verdict,
+        verdict_words,
+        works_in_middle,
+        power_w,
+        given_w,
+        blocks,
+        wire,
+    }
 }
 
 /// What a link is called on screen.
@@ -146,8 +171,13 @@ impl Column<'_> {
             return "being worked out".to_owned();
         };
         format!(
-            "{}: {} of {} reach the wire, {} of them heat the wire itself",
+            "{}{}; in the middle of the band {} of {} reach the wire, {} of them heat the wire itself",
             verdict.words(),
+            if self.verdict_words == verdict.words() {
+                String::new()
+            } else {
+                format!(", {} work", self.verdict_words)
+            },
             units::watts(wire.watts),
             units::watts(self.power_w),
             units::watts(wire.heat_w)

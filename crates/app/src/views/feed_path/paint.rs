@@ -4,7 +4,6 @@ use eframe::egui::epaint::Mesh;
 use eframe::egui::text::LayoutJob;
 use eframe::egui::{self, Color32, Rect, Response, Shape, StrokeKind, TextStyle, pos2, vec2};
 use sheet::tokens::{Ink, Pattern, Pen};
-use station::report::VerdictKind;
 use station::units;
 
 use super::{Picked, View, layout};
@@ -27,7 +26,7 @@ pub(super) fn flow(ui: &egui::Ui, view: &View<'_>) {
     if path.flow.is_empty() {
         return;
     }
-    let idle = view.column.verdict == Some(VerdictKind::OutOfRange);
+    let idle = !view.column.works_in_middle;
     let ink = Ink::feed(view.column.feed);
     let fill = color_with_opacity(ink, ground, if idle { IDLE_FILL } else { FLOW_FILL });
     let [left, right] = path.edges();
@@ -75,7 +74,7 @@ pub(super) fn head(ui: &egui::Ui, view: &View<'_>, response: &Response) {
         let line = inner.with_min_y(inner.center().y);
         marks::verdict(painter, pos2(line.left() + 5.0, line.center().y), 4.5, kind, ground);
         let words = piece(TextStyle::Small.resolve(style), color(Ink::Text, ground));
-        let words = LayoutJob::single_section(kind.words().to_owned(), words);
+        let words = LayoutJob::single_section(view.column.verdict_words.clone(), words);
         text_in(painter, line.with_min_x(line.left() + 15.0), words);
     }
 }

@@ -165,7 +165,7 @@ pub fn thumbnail(within: Rect, wave: &StandingWave, feed: (usize, f64)) -> Thumb
     let strongest = currents().max_by(|a, b| a.norm_sqr().total_cmp(&b.norm_sqr()));
     let (largest_a, (sin, cos)) = strongest.map_or((0.0, (0.0, 1.0)), |i| (i.norm(), i.arg().sin_cos()));
     let potentials = wave.wires.iter().flat_map(|w| &w.potential_v);
-    let largest_v = potentials.map(|v| v.norm_sqr()).fold(0.0, f64::max).sqrt();
+    let largest_v = potentials.fold(0.0, |largest: f64, v| largest.max(v.norm_sqr())).sqrt();
     let half = 0.5 * f64::from(within.height());
     let scale_to = |largest: f64| if largest > 0.0 { half / largest } else { 0.0 };
     let (amperes, volts) = (scale_to(largest_a), scale_to(largest_v));
