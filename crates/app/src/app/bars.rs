@@ -1,10 +1,10 @@
 //! The bars over and under the views.
 
 use eframe::egui::{self, Align, Layout, RichText, Ui};
-use sheet::tokens::Ink;
+use sheet::tokens::{Ground, Ink};
 use station::units::Units;
 
-use super::Wirewright;
+use super::{Wirewright, findings};
 use crate::command::{Command, Desk, Show, Theme, View};
 use crate::explain::{self, Explain as _};
 use crate::{keys, theme};
@@ -106,22 +106,29 @@ impl Wirewright {
     /// Model and time, what is under the pointer, units, light or dark.
     pub(super) fn status_bar(&self, ui: &mut Ui, out: &mut Vec<Command>) {
         let under_pointer = explain::take(ui.ctx());
-        egui::Panel::bottom("status").exact_size(STATUS_HEIGHT).resizable(false).frame(bar(ui)).show(
-            ui,
-            |ui| {
-                ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
-                    self.theme_menu(ui, out);
-                    self.units(ui, out);
-                    ui.separator();
-                    ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
-                        self.model(ui);
-                        ui.separator();
-                        let sentence = self.stop.as_deref().unwrap_or(&under_pointer);
-                        ui.add(egui::Label::new(RichText::new(sentence).small()).truncate());
-                    });
-                });
-            },
-        );
+        let panel = egui::Panel::bottom("status").exact_size(STATUS_HEIGHT).resizable(false).frame(bar(ui));
+        panel.show(ui, |ui| {
+            ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
+                self.theme_menu(ui, out);
+                self.units(ui, out);
+                ui.separator();
+                let rest = Layout::left_to_right(Align::Center);
+                ui.with_layout(rest, |ui| self.sentences(ui, &under_pointer, out));
+            });
+        });
+    }
+
+    /// From left to right: where the numbers come from, what to look at, what is under the pointer.
+    fn sentences(&self, ui: &mut Ui, under_pointer: &str, out: &mut Vec<Command>) {
+        self.model(ui);
+        ui.separator();
+        let found = self.answers.report(&self.document).map_or(&[][..], |report| &report.findings);
+        if !found.is_empty() {
+            findings::show(ui, found, out);
+            ui.separator();
+        }
+        let sentence = self.stop.as_deref().unwrap_or(under_pointer);
+        ui.add(egui::Label::new(RichText::new(sentence).small()).truncate());
     }
 
     fn model(&self, ui: &mut Ui) {
@@ -161,7 +168,11 @@ impl Wirewright {
             (Theme::Light, "Light"),
             (Theme::Dark, "Dark"),
         ];
-        let menu = ui.menu_button(RichText::new("Look").small(), |ui| {
+        let now = match (self.looks.theme, theme::ground_of(ui.visuals())) {
+            (Theme::Dark, _) | (Theme::Desktop, Ground::Dark) => "dark",
+            _ => "light",
+        };
+        let menu = ui.menu_button(RichText::new(now).small(), |ui| {
             for (theme, words) in choices {
                 if ui.radio(self.looks.theme == theme, words).clicked() {
                     out.push(Command::Show(Show::Theme(theme)));
@@ -169,7 +180,7 @@ impl Wirewright {
                 }
             }
         });
-        menu.response.explain("Light or dark");
+        menu.response.explain("Light or dark, or as the desktop");
     }
 }
 

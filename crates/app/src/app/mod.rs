@@ -2,6 +2,7 @@
 
 mod bars;
 mod central;
+mod findings;
 
 use std::path::PathBuf;
 
@@ -124,7 +125,7 @@ impl Wirewright {
     }
 
     /// What came from outside since the last frame.
-    fn poll(&mut self, ctx: &egui::Context) {
+    pub fn poll(&mut self, ctx: &egui::Context) {
         self.desk.poll(ctx, &mut self.document);
         let dropped = ctx.input(|input| input.raw.dropped_files.first().map(|file| file.path().to_owned()));
         if let Some(path) = dropped {
@@ -185,12 +186,9 @@ impl Wirewright {
     }
 }
 
-impl eframe::App for Wirewright {
-    fn logic(&mut self, ctx: &egui::Context, _frame: &mut eframe::Frame) {
-        self.poll(ctx);
-    }
-
-    fn ui(&mut self, ui: &mut egui::Ui, _frame: &mut eframe::Frame) {
+impl Wirewright {
+    /// One frame: paints, and follows the commands that came back.
+    pub fn frame(&mut self, ui: &mut egui::Ui) {
         let ctx = ui.ctx().clone();
         theme::choose(&ctx, self.looks.theme);
         self.move_on(&ctx);
@@ -209,5 +207,15 @@ impl eframe::App for Wirewright {
         }
         self.answers.ask(&ctx, &self.document);
         self.set_title(&ctx);
+    }
+}
+
+impl eframe::App for Wirewright {
+    fn logic(&mut self, ctx: &egui::Context, _frame: &mut eframe::Frame) {
+        self.poll(ctx);
+    }
+
+    fn ui(&mut self, ui: &mut egui::Ui, _frame: &mut eframe::Frame) {
+        self.frame(ui);
     }
 }
