@@ -77,7 +77,8 @@ impl Grid {
 
     /// The nearest line of the grid.
     pub fn round(self, value_m: f64) -> f64 {
-        (value_m / self.step_m).round() * self.step_m
+        // A plan file shows 11.1, not 11.100000000000001: what is left of the product below a micrometre goes.
+        ((value_m / self.step_m).round() * self.step_m * 1e6).round() / 1e6
     }
 }
 

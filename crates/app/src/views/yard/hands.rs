@@ -1,7 +1,7 @@
 //! Hands on the grips: dragging, arrow keys, screen readers.
 
 use eframe::egui::{
-    CursorIcon, EventFilter, Id, Key, Pos2, Rect, Response, Role, Sense, Ui, Vec2, WidgetInfo,
+    CursorIcon, EventFilter, Id, Key, Modifiers, Pos2, Rect, Response, Role, Sense, Ui, Vec2, WidgetInfo,
 };
 
 use crate::command::{Command, Edit};
@@ -200,7 +200,8 @@ fn keys(
     if ARROWS.into_iter().any(|key| ui.input(|i| i.key_released(key))) {
         out.push(Command::EndOfDrag);
     }
-    if ui.input(|i| i.key_pressed(Key::Enter)) {
+    // Consumed, or the number's field would take the same press for the end of typing.
+    if ui.input_mut(|i| i.consume_key(Modifiers::NONE, Key::Enter)) {
         state.type_number = true;
     }
     if ui.input(|i| i.key_pressed(Key::Delete) || i.key_pressed(Key::Backspace)) {

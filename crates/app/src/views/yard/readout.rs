@@ -70,7 +70,7 @@ fn by_keys(ui: &Ui, bench: &Bench<'_>, state: &mut YardState) -> Option<Probe> {
         state.probe = Some(probe);
     }
     response.widget_info(|| {
-        let mut info = WidgetInfo::labeled(Role::Label, ui.is_enabled(), "standing wave read-out");
+        let mut info = WidgetInfo::labeled(Role::Status, ui.is_enabled(), "standing wave read-out");
         info.current_text_value = lines(bench, probe).map(|lines| lines.join(", "));
         info
     });

@@ -171,12 +171,14 @@ fn number(ui: &mut Ui, bench: &Bench<'_>, word: &str, value_m: &mut f64, take_fo
         .max_decimals(2)
         .suffix(format!(" {}", units.symbol()))
         .update_while_editing(false);
+    if take_focus {
+        // Before it is shown: only a field that gains the focus while it is shown selects its text.
+        let field = ui.next_auto_id();
+        ui.memory_mut(|m| m.request_focus(field));
+    }
     let field = ui.add(field).labelled_by(label.id);
     if field.changed() {
         *value_m = units.to_metres(value);
-    }
-    if take_focus {
-        field.request_focus();
     }
     field
 }
