@@ -122,7 +122,7 @@ pub(super) fn show(
     let axis = |hints: AxisHints<'static>| {
         hints.tick_label_font(small.clone()).tick_label_color(color(Ink::Faint, ground))
     };
-    let mut left = axis(AxisHints::new_y()).min_thickness(LEFT_AXIS).label_spacing(14.0..=20.0);
+    let mut left = axis(AxisHints::new_y()).min_thickness(LEFT_AXIS).label_spacing(11.0..=16.0);
     left = if plot.is_ratio() {
         left.formatter(|mark, _| ratio_label(mark.value))
     } else {
