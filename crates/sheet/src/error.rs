@@ -18,6 +18,9 @@ pub enum SheetError {
         /// How many the report has.
         report: usize,
     },
+    /// The picture could not be drawn.
+    #[error("the picture could not be drawn: {0}")]
+    Picture(String),
     /// The PDF could not be written.
     #[error("the PDF could not be written: {0}")]
     Pdf(String),

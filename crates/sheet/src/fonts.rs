@@ -5,7 +5,7 @@
 
 use std::sync::OnceLock;
 
-use ttf_parser::{Face, GlyphId};
+use ttf_parser::{Face, GlyphId, OutlineBuilder};
 
 use crate::tokens::{TextStyle, Weight};
 
@@ -44,8 +44,19 @@ pub fn bytes(weight: Weight) -> &'static [u8] {
 pub(crate) fn glyph(weight: Weight, character: char) -> Glyph {
     let face = face(weight);
     let id = face.glyph_index(character).unwrap_or_default();
-    let advance = face.glyph_hor_advance(id).map_or(0.0, f64::from) / f64::from(face.units_per_em());
+    let advance = face.glyph_hor_advance(id).map_or(0.0, f64::from) / units_per_em(weight);
     Glyph { id, advance }
+}
+
+/// Gives the outline of a glyph, in the font's units, to a builder.
+pub(crate) fn outline(weight: Weight, glyph: Glyph, builder: &mut dyn OutlineBuilder) {
+    // Glyphs without an outline, such as spaces, give nothing.
+    let _ = face(weight).outline_glyph(glyph.id, builder);
+}
+
+/// The font's units in the type size.
+pub(crate) fn units_per_em(weight: Weight) -> f64 {
+    f64::from(face(weight).units_per_em())
 }
 
 /// Width of a line of text, mm.

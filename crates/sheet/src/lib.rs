@@ -1,6 +1,6 @@
 //! Drawings and pages of the station plan sheet: a scene in millimetres, its page layout, and what writes it.
 //!
-//! `plan and report -> model (words and numbers) -> page (layout) -> scene -> pdf, svg, or the window's preview`.
+//! `plan and report -> model (words and numbers) -> page (layout) -> scene -> pdf, svg, png, or the window's preview`.
 
 pub mod drawing;
 mod error;
@@ -8,8 +8,10 @@ pub mod fonts;
 pub mod model;
 mod page;
 pub mod pdf;
+pub mod png;
 mod request;
 pub mod scene;
+pub mod svg;
 pub mod swr_scale;
 pub mod text;
 pub mod tokens;

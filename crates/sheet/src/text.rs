@@ -67,6 +67,26 @@ pub fn wrap(spans: &[Span], width_mm: f64) -> Vec<Vec<Placed>> {
     lines
 }
 
+/// The first of some styles in which a text takes no more than so many lines; the last one where none does.
+#[must_use]
+pub fn style_for(styles: &[TextStyle], text: &str, width_mm: f64, lines: usize) -> TextStyle {
+    let fits = |style: &&TextStyle| wrap(&[Span::new(**style, text)], width_mm).len() <= lines;
+    styles.iter().find(fits).or(styles.last()).copied().unwrap_or(TextStyle::Body)
+}
+
+/// The beginning of a text that fits on so many lines, with an ellipsis where something is missing.
+#[must_use]
+pub fn clamp(style: TextStyle, text: &str, width_mm: f64, lines: usize) -> String {
+    let fits = |text: &str| wrap(&[Span::new(style, text)], width_mm).len() <= lines;
+    if fits(text) {
+        return text.to_owned();
+    }
+    let ends: Vec<usize> = text.char_indices().map(|(at, _)| at).collect();
+    let shortened = |count: usize| format!("{}…", text[..ends[count]].trim_end());
+    let kept = ends.partition_point(|&end| fits(&format!("{}…", text[..end].trim_end())));
+    shortened(kept.saturating_sub(1))
+}
+
 /// The text with a no-break space between a number and its unit.
 fn tie(text: &str) -> String {
     const UNITS: [&str; 17] =
@@ -150,7 +170,7 @@ mod tests {
             for line in &lines {
                 assert!(fonts::width_mm(TextStyle::Body, line) <= width_mm, "{line} at {width_mm}");
             }
-            let without_spaces = |s: &str| s.replace(' ', "");
+            let without_spaces = |s: &str| s.replace([' ', '\u{a0}'], "");
             assert_eq!(without_spaces(&lines.concat()), without_spaces(text));
         }
         assert_eq!(lines_of(text, 200.0).len(), 1);
@@ -169,5 +189,11 @@ mod tests {
         assert_eq!(fit(TextStyle::Body, "north mast", 100.0), "north mast");
         let cut = fit(TextStyle::Body, "the very long name of the north mast", 25.0);
         assert!(cut.ends_with('…') && fonts::width_mm(TextStyle::Body, &cut) <= 25.0, "{cut}");
+        let cut = clamp(TextStyle::Body, "the very long name of the north mast beside the harbour", 25.0, 2);
+        assert!(cut.ends_with('…') && lines_of(&cut, 25.0).len() == 2, "{cut}");
+        assert_eq!(
+            style_for(&[TextStyle::Title, TextStyle::Key], "Saltmarsh relief post", 50.0, 1),
+            TextStyle::Key
+        );
     }
 }

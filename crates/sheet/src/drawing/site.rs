@@ -15,6 +15,9 @@ const HATCH_MM: f64 = 2.4;
 const HALF_SUPPORT_MM: f64 = 3.2;
 /// Half of the side of the entrance's box, mm.
 const HALF_ENTRANCE_MM: f64 = 1.4;
+/// Most height of a tree's crown and of a roof, mm.
+const MOST_CROWN_MM: f64 = 15.0;
+const MOST_ROOF_MM: f64 = 4.5;
 /// Radius of an insulator, mm.
 const INSULATOR_MM: f64 = 0.9;
 
@@ -82,10 +85,12 @@ fn outline_of(support: &SupportSide, sight: &Sight) -> Vec<Spot> {
     let at = |x: f64, y: f64| Spot::new(foot.x_mm + x * HALF_SUPPORT_MM, y);
     match support.kind {
         SupportKind::Mast => Vec::new(),
-        SupportKind::Tree => crown_outline(foot.x_mm, top.y_mm, top.y_mm + 0.62 * (foot.y_mm - top.y_mm)),
+        SupportKind::Tree => {
+            crown_outline(foot.x_mm, top.y_mm, top.y_mm + (0.62 * (foot.y_mm - top.y_mm)).min(MOST_CROWN_MM))
+        }
         SupportKind::Building => {
-            let eaves = top.y_mm + 0.35 * (foot.y_mm - top.y_mm);
-            vec![at(-1.4, foot.y_mm), at(-1.4, eaves), at(0.0, top.y_mm), at(1.4, eaves), at(1.4, foot.y_mm)]
+            let eaves = top.y_mm + (0.35 * (foot.y_mm - top.y_mm)).min(MOST_ROOF_MM);
+            vec![at(-1.8, foot.y_mm), at(-1.8, eaves), at(0.0, top.y_mm), at(1.8, eaves), at(1.8, foot.y_mm)]
         }
     }
 }

@@ -135,11 +135,17 @@ pub fn arms(plan: &Plan) -> Vec<Arm> {
 impl Arm {
     fn row(self, wire: &Wire, number: usize, conductor: &str, shared: Shared<'_>) -> CutRow {
         let Shared { units, allowances } = shared;
-        let end = if self.from_m > 0.0 { wire.path.last() } else { wire.path.first() };
+        let (end, end_name) = if self.from_m > 0.0 {
+            (wire.path.last(), WireEnd::End)
+        } else {
+            (wire.path.first(), WireEnd::Beginning)
+        };
         let is_whole = self.length_m() >= wire.cut_length_m;
         let route = match (is_whole, wire.path.first(), wire.path.last()) {
-            (true, Some(first), Some(last)) => format!("{} to {}", place(first), place(last)),
-            _ => end.map_or_else(String::new, |end| format!("to {}", place(end))),
+            (true, Some(first), Some(last)) => {
+                format!("{} to {}", place(first, WireEnd::Beginning), place(last, WireEnd::End))
+            }
+            _ => end.map_or_else(String::new, |point| format!("to {}", place(point, end_name))),
         };
         let lengths = Lengths {
             plan_m: self.length_m(),
@@ -169,8 +175,13 @@ fn rope_row(plan: &Plan, rope: &Rope, number: usize, shared: Shared<'_>) -> CutR
         _ => 0.0,
     };
     let lengths = Lengths { plan_m: rope.length_m, ends_m: 2.0 * allowances.knot_m, extra_m: halyard_m };
-    let detail =
-        held.map_or_else(|| "holds the wire".to_owned(), |point| format!("to {}, then down", place(point)));
+    let detail = held.map_or_else(
+        || "holds the wire".to_owned(),
+        |point| match point {
+            PathPoint::OnSupport { .. } => format!("to {}, then down", place(point, rope.end)),
+            PathPoint::Free(_) => format!("to {}", place(point, rope.end)),
+        },
+    );
     lengths.row(format!("R{number}"), "rope".to_owned(), printable(&detail), units)
 }
 
@@ -210,9 +221,11 @@ fn note(units: Units, allowances: &Allowances) -> String {
     )
 }
 
-fn place(point: &PathPoint) -> String {
-    match point {
-        PathPoint::OnSupport { support, .. } => support.clone(),
-        PathPoint::Free(_) => "its free point".to_owned(),
+/// What a path is made fast to at an end.
+fn place(point: &PathPoint, end: WireEnd) -> String {
+    match (point, end) {
+        (PathPoint::OnSupport { support, .. }, _) => support.clone(),
+        (PathPoint::Free(_), WireEnd::Beginning) => "the beginning of its path".to_owned(),
+        (PathPoint::Free(_), WireEnd::End) => "the end of its path".to_owned(),
     }
 }

@@ -6,7 +6,7 @@ use super::swr_curve;
 use crate::fonts;
 use crate::model::{BandEntry, FeedEntry, SheetModel};
 use crate::scene::{Anchor, Frame};
-use crate::text::Span;
+use crate::text::{Span, clamp, style_for};
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 use station::report::VerdictKind;
 
@@ -90,9 +90,10 @@ fn block(band: &BandEntry, limit: f64, width_mm: f64) -> Block {
     let mut block = Block::default();
     block.rule(0.0, width_mm, 0.0, Stroke::Rule, Ink::Rule);
     let name_mm = BAND_MM - 1.5;
+    let name_style = style_for(&[TextStyle::Key, TextStyle::Strong], &band.name, name_mm, 1);
     let mut left_mm = PAD_MM;
     for span in [
-        Span::new(TextStyle::Key, &band.name),
+        Span::new(name_style, clamp(name_style, &band.name, name_mm, 3)),
         Span::new(TextStyle::Note, &band.range).ink(Ink::Faint),
         Span::new(TextStyle::Strong, &band.feedpoint),
         Span::new(TextStyle::Note, format!("at {}", band.at)).ink(Ink::Faint),

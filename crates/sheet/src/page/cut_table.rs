@@ -5,7 +5,7 @@ use super::flow::Section;
 use crate::fonts;
 use crate::model::{CutList, CutRow};
 use crate::scene::{Frame, Item};
-use crate::text::Span;
+use crate::text::{Span, clamp};
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Between two columns of numbers, mm.
@@ -86,8 +86,8 @@ fn heads(columns: &Columns) -> Block {
 
 fn block(row: &CutRow, columns: &Columns) -> Block {
     let mut block = Block::default();
-    let spans =
-        [Span::new(TextStyle::Strong, &row.part), Span::new(TextStyle::Body, &row.detail).ink(Ink::Faint)];
+    let spans = [(TextStyle::Strong, &row.part, Ink::Text), (TextStyle::Body, &row.detail, Ink::Faint)]
+        .map(|(style, words, ink)| Span::new(style, clamp(style, words, columns.part_width, 2)).ink(ink));
     // The first line stands in the middle of a row of one line.
     let top_mm = (ROW_MM - TextStyle::Body.leading_mm()) / 2.0;
     let text_mm = block.spans(columns.part, top_mm, columns.part_width, &spans);

@@ -5,7 +5,7 @@ use super::flow::Section;
 use crate::fonts;
 use crate::model::{FeedSchedule, SheetModel, Step, Stress};
 use crate::scene::{Anchor, Frame};
-use crate::text::{Span, fit};
+use crate::text::{Span, clamp, fit};
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Width of the mark, mm.
@@ -72,7 +72,10 @@ fn schedule(feed: &FeedSchedule, index: usize, width_mm: f64) -> Block {
 fn row(block: &mut Block, step: &Step, top_mm: f64, width_mm: f64) -> f64 {
     block.text(0.0, top_mm, label(TextStyle::Strong, &step.mark));
     let text_mm = width_mm - MARK_MM - VOLTS_MM - AMPERES_MM;
-    let spans = [Span::new(TextStyle::Strong, &step.what), Span::new(TextStyle::Body, &step.detail)];
+    let spans = [
+        Span::new(TextStyle::Strong, clamp(TextStyle::Strong, &step.what, text_mm, 3)),
+        Span::new(TextStyle::Body, &step.detail),
+    ];
     let left_mm = block.spans(MARK_MM, top_mm, text_mm, &spans);
     let volts_mm = stress(block, &step.volts, width_mm - AMPERES_MM, top_mm);
     let amperes_mm = stress(block, &step.amperes, width_mm, top_mm);

@@ -5,7 +5,7 @@ use qrcode::{Color, EcLevel, QrCode};
 use super::block::{Block, baseline_mm, ending, label};
 use crate::model::Identity;
 use crate::scene::{Frame, Item};
-use crate::text::{Span, fit};
+use crate::text::{Span, fit, style_for};
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Height of the foot, mm.
@@ -21,7 +21,8 @@ const FACT_NAME_MM: f64 = 17.0;
 pub(crate) fn front_head(identity: &Identity, width_mm: f64) -> Block {
     let mut block = Block::default();
     let left_mm = width_mm - CODE_MM - space::GUTTER - FACTS_MM - space::GUTTER;
-    let mut y_mm = block.paragraph(0.0, 0.0, left_mm, Span::new(TextStyle::Title, &identity.name));
+    let title = style_for(&[TextStyle::Title, TextStyle::Section], &identity.name, left_mm, 1);
+    let mut y_mm = block.paragraph(0.0, 0.0, left_mm, Span::new(title, &identity.name));
     let kind = if identity.call_sign.is_empty() {
         "Station plan sheet".to_owned()
     } else {
@@ -39,8 +40,10 @@ pub(crate) fn front_head(identity: &Identity, width_mm: f64) -> Block {
         let lower_mm = baseline_mm(TextStyle::Key) - baseline_mm(TextStyle::Note);
         block.text(facts_mm, fact_mm + lower_mm, label(TextStyle::Note, name).ink(Ink::Faint));
         let value_mm = facts_mm + FACT_NAME_MM;
-        let value = fit(TextStyle::Key, value, FACTS_MM - FACT_NAME_MM);
-        block.text(value_mm, fact_mm, label(TextStyle::Key, value));
+        let room_mm = FACTS_MM - FACT_NAME_MM;
+        let style = style_for(&[TextStyle::Key, TextStyle::Strong, TextStyle::Note], value, room_mm, 1);
+        let lower_mm = baseline_mm(TextStyle::Key) - baseline_mm(style);
+        block.text(value_mm, fact_mm + lower_mm, label(style, fit(style, value, room_mm)));
         fact_mm += TextStyle::Key.leading_mm() + 1.2;
         block.rule(facts_mm, facts_mm + FACTS_MM, fact_mm - 0.6, Stroke::Hair, Ink::Rule);
     }

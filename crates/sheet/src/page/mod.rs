@@ -32,7 +32,10 @@ pub(crate) fn lay_out(model: &SheetModel, plan: &Plan, hung: &Hung, request: &Sh
     ];
     let signed = records::signatures(width_mm);
     let taken_mm = build.iter().map(Section::height_mm).sum::<f64>() + signed.height_mm + space::CELL;
-    let height_mm = (flow.room_mm() - taken_mm).clamp(site::LEAST_HEIGHT_MM, site::MOST_HEIGHT_MM);
+    let left_mm = flow.room_mm() - taken_mm;
+    // Where all of it cannot be on one page, the drawing need not suffer.
+    let height_mm = if left_mm < site::LEAST_HEIGHT_MM { site::WANTED_HEIGHT_MM } else { left_mm };
+    let height_mm = height_mm.min(site::MOST_HEIGHT_MM);
     flow.place(site::section(plan, hung, request.units, Size { width_mm, height_mm }));
     for section in build {
         flow.place(section);

@@ -2,7 +2,8 @@
 
 use super::block::{Block, label};
 use super::flow::Section;
-use crate::model::SheetModel;
+use crate::fonts;
+use crate::model::{BandEntry, SheetModel};
 use crate::scene::{Anchor, Frame, Item};
 use crate::text::fit;
 use crate::tokens::{Ink, Stroke, TextStyle, space};
@@ -64,24 +65,18 @@ pub(crate) fn measured(model: &SheetModel, width_mm: f64) -> Section {
         title: "Measured".to_owned(),
         aside: Block::aside("SWR at the transmitter without the matching unit, in the middle of the band"),
         columns: None,
-        blocks: model
-            .bands
-            .chunks(BANDS_A_ROW)
-            .map(|bands| {
-                let names: Vec<&str> = bands.iter().map(|band| band.name.as_str()).collect();
-                boxes(&names, model, width_mm)
-            })
-            .collect(),
+        blocks: model.bands.chunks(BANDS_A_ROW).map(|bands| boxes(bands, model, width_mm)).collect(),
     }
 }
 
-fn boxes(bands: &[&str], model: &SheetModel, width_mm: f64) -> Block {
+fn boxes(bands: &[BandEntry], model: &SheetModel, width_mm: f64) -> Block {
     let mut block = Block::default();
     let columns = model.bands.len().clamp(LEAST_A_ROW, BANDS_A_ROW);
     let column_mm = (width_mm - NAME_MM) / columns as f64;
     let left_mm = |index: usize| NAME_MM + index as f64 * column_mm;
-    for (index, name) in bands.iter().enumerate() {
-        let name = fit(TextStyle::Note, name, column_mm - space::CELL);
+    for (index, band) in bands.iter().enumerate() {
+        let is_short = fonts::width_mm(TextStyle::Note, &band.name) <= column_mm - space::CELL;
+        let name = if is_short { &band.name } else { &band.at };
         let middle_mm = left_mm(index) + column_mm / 2.0;
         block.text(middle_mm, 0.0, label(TextStyle::Note, name).anchor(Anchor::Middle));
     }

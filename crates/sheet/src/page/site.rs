@@ -14,6 +14,8 @@ use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Least height of the section, mm: below it the labels crowd.
 pub(crate) const LEAST_HEIGHT_MM: f64 = 52.0;
+/// Height where there is room to choose, mm.
+pub(crate) const WANTED_HEIGHT_MM: f64 = 80.0;
 /// Most height of the section, mm: above it the page looks empty.
 pub(crate) const MOST_HEIGHT_MM: f64 = 100.0;
 /// Length of the scale bar that is aimed at, mm.

@@ -128,7 +128,7 @@ fn copper() -> ConductorChoice {
     })
 }
 
-fn relief_post() -> Plan {
+pub fn relief_post() -> Plan {
     Plan {
         name: "Salt pan relief post".to_owned(),
         purpose: "District office after the flood: voice and data to the three valley posts and the capital."
@@ -177,7 +177,7 @@ fn longest(text: &str, characters: usize) -> String {
     words.take(characters).collect()
 }
 
-fn long_list() -> Plan {
+pub fn long_list() -> Plan {
     let mut plan = relief_post();
     plan.name = longest("Coast and mountain coordination centre of the northern", 80);
     plan.purpose = longest(&"It serves seven valleys at length, and says so in many words. ".repeat(6), 400);

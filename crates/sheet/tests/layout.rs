@@ -1,0 +1,115 @@
+//! Nothing overlaps, nothing leaves the page, and the sheet is as long as promised.
+
+mod support;
+
+use sheet::scene::{Item, Scene, Spot, overlap};
+use sheet::{SheetRequest, lay_out};
+
+/// Printers leave about this much of the edge white (common practice: 4 to 6 mm), mm.
+const PRINTABLE_MM: f64 = 6.0;
+
+fn pages(station: &support::Station, request: &SheetRequest) -> Vec<Scene> {
+    lay_out(&station.plan, &station.report, request).unwrap()
+}
+
+fn every_page(check: impl Fn(&str, &Scene)) {
+    for station in support::stations() {
+        for request in support::requests() {
+            for (index, page) in pages(&station, &request).iter().enumerate() {
+                let which = format!("{}, {request:?}, page {}", station.name, index + 1);
+                check(&which, page);
+            }
+        }
+    }
+}
+
+#[test]
+fn no_two_texts_overlap() {
+    every_page(|which, page| {
+        let boxes: Vec<([Spot; 4], &str)> =
+            page.texts().map(|text| (text.corners(), text.text.as_str())).collect();
+        for (index, (a, words)) in boxes.iter().enumerate() {
+            for (b, others) in &boxes[index + 1..] {
+                assert!(!overlap(a, b), "{which}: \"{words}\" lies on \"{others}\"");
+            }
+        }
+    });
+}
+
+#[test]
+fn nothing_leaves_the_page() {
+    let is_within = |page: &Scene, spot: &Spot, edge_mm: f64| {
+        (edge_mm..=page.width_mm - edge_mm).contains(&spot.x_mm)
+            && (edge_mm..=page.height_mm - edge_mm).contains(&spot.y_mm)
+    };
+    every_page(|which, page| {
+        for text in page.texts() {
+            for corner in text.corners() {
+                assert!(is_within(page, &corner, PRINTABLE_MM), "{which}: \"{}\" at {corner:?}", text.text);
+            }
+        }
+        for item in &page.items {
+            if let Item::Line { points, .. } | Item::Area { points, .. } = item {
+                for spot in points {
+                    assert!(is_within(page, spot, PRINTABLE_MM), "{which}: {item:?}");
+                }
+            }
+        }
+    });
+}
+
+#[test]
+fn no_text_is_smaller_than_eight_points_or_empty() {
+    every_page(|which, page| {
+        for text in page.texts() {
+            assert!(text.style.size_pt() >= 8.0, "{which}: {text:?}");
+            assert!(
+                !text.text.trim().is_empty() && !text.text.contains(char::is_control),
+                "{which}: {text:?}"
+            );
+        }
+    });
+}
+
+#[test]
+fn twelve_bands_on_two_feeds_take_two_pages() {
+    for station in support::stations() {
+        if station.plan.bands.len() > 12 || station.plan.feeds.len() > 2 {
+            continue;
+        }
+        for request in support::requests() {
+            assert_eq!(pages(&station, &request).len(), 2, "{}, {request:?}", station.name);
+        }
+    }
+}
+
+#[test]
+fn thirty_bands_continue_under_repeated_heads() {
+    let stations = support::stations();
+    let station = stations.iter().find(|station| station.plan.bands.len() == 30).unwrap();
+    for request in support::requests() {
+        let pages = pages(station, &request);
+        let has = |page: &Scene, words: &str| page.texts().any(|text| text.text == words);
+        let with_bands: Vec<&Scene> =
+            pages.iter().filter(|page| has(page, "Bands") || has(page, "Bands, continued")).collect();
+        assert!(with_bands.len() >= 3, "{request:?}: {} pages of bands", with_bands.len());
+        for page in &with_bands {
+            for head in ["SWR at", "setting of the unit:", "loss"] {
+                assert!(has(page, head), "{request:?}: no \"{head}\"");
+            }
+        }
+        for (index, page) in pages.iter().enumerate() {
+            let number = format!("page {} of {}", index + 1, pages.len());
+            assert!(has(page, &number), "{request:?}: no \"{number}\"");
+        }
+    }
+}
+
+#[test]
+fn every_page_says_which_model_and_which_plan() {
+    every_page(|which, page| {
+        let words: Vec<&str> = page.texts().map(|text| text.text.as_str()).collect();
+        let has = |part: &str| words.iter().any(|text| text.contains(part));
+        assert!(has("sketch") && has("2026-12-01"), "{which}");
+    });
+}
