@@ -137,6 +137,26 @@ fn another_band_brings_other_curves() {
 }
 
 #[test]
+fn another_band_is_picked_by_name_or_by_key() {
+    let mut desk = open(1, 2);
+    desk.get_by_label("band").click();
+    desk.run();
+    desk.get_by_label("40 m").click();
+    desk.run();
+    assert_eq!(desk.state().band, 3);
+    // The pointer now stands over a plot, so the cursor need not be in the middle.
+    assert!(read_out(&desk).starts_with("7."), "{}", read_out(&desk));
+
+    let mut desk = open(1, 2);
+    desk.key_press(Key::ArrowDown);
+    desk.run();
+    assert_eq!(desk.state().band, 2);
+    desk.key_press(Key::ArrowUp);
+    desk.run();
+    assert_eq!(desk.state().band, 1);
+}
+
+#[test]
 fn a_single_channel_and_no_answer_are_shown_without_harm() {
     let desk = open(11, 3);
     assert!(read_out(&desk).starts_with("8.291 MHz"));

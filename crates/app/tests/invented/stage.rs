@@ -57,6 +57,10 @@ impl<S: Default + 'static> Stage<S> {
                         _ => {}
                     }
                 }
+                if !out.is_empty() {
+                    // As the window does after a change.
+                    ui.request_repaint();
+                }
                 stage.asked.append(&mut out);
             },
             self,

@@ -10,7 +10,8 @@ use eframe::egui::{self, Id, RichText, UiBuilder};
 use sheet::tokens::{Ink, Pattern};
 use station::report::{BandReport, Report};
 
-use crate::command::Command;
+use crate::command::{Command, Show};
+use crate::explain::Explain as _;
 use crate::snapshot::Snapshot;
 use crate::theme::color;
 use crate::views::lanes::model::Lane;
@@ -34,7 +35,7 @@ const DIMMED: f32 = 0.55;
 const DIM_SECONDS: f32 = 0.6;
 
 /// Draws the band view.
-pub fn show(ui: &mut egui::Ui, snapshot: &Snapshot<'_>, state: &mut BandState, _out: &mut Vec<Command>) {
+pub fn show(ui: &mut egui::Ui, snapshot: &Snapshot<'_>, state: &mut BandState, out: &mut Vec<Command>) {
     let found = snapshot.report.and_then(|report| Some((report, report.bands.get(snapshot.band)?)));
     let Some((report, band)) = found else {
         let words = if snapshot.plan.bands.is_empty() { "No band is chosen." } else { "Being worked out." };
@@ -53,7 +54,7 @@ pub fn show(ui: &mut egui::Ui, snapshot: &Snapshot<'_>, state: &mut BandState, _
     let fade = ui.ctx().animate_bool_with_time(Id::unique("band view is stale"), snapshot.stale, DIM_SECONDS);
     ui.scope(|ui| {
         ui.multiply_opacity(1.0 - fade * (1.0 - DIMMED));
-        head(ui, snapshot, report, band);
+        head(ui, snapshot, report, band, out);
         let shown = Shown { snapshot, report, band, curves: &curves };
         egui::ScrollArea::vertical().id_salt("band view").auto_shrink(false).show(ui, |ui| {
             let room = ui.available_rect_before_wrap();
@@ -79,11 +80,17 @@ struct Shown<'a> {
 }
 
 /// Name, frequencies, and each feed's line pattern and verdict.
-fn head(ui: &mut egui::Ui, snapshot: &Snapshot<'_>, report: &Report, band: &BandReport) {
+fn head(
+    ui: &mut egui::Ui,
+    snapshot: &Snapshot<'_>,
+    report: &Report,
+    band: &BandReport,
+    out: &mut Vec<Command>,
+) {
     let ground = snapshot.ground;
     let lane = Lane::of(snapshot, snapshot.band, band);
-    ui.horizontal_wrapped(|ui| {
-        ui.heading(&band.name);
+    ui.horizontal(|ui| {
+        picker(ui, snapshot, report, band, out);
         ui.label(RichText::new(lane.frequencies()).color(color(Ink::Faint, ground)));
     });
     for (feed, name) in report.feed_names.iter().enumerate() {
@@ -104,6 +111,38 @@ fn head(ui: &mut egui::Ui, snapshot: &Snapshot<'_>, report: &Report, band: &Band
         });
     }
     ui.add_space(4.0);
+}
+
+/// The band's name; click it for the others, or step through them by up and down.
+fn picker(
+    ui: &mut egui::Ui,
+    snapshot: &Snapshot<'_>,
+    report: &Report,
+    band: &BandReport,
+    out: &mut Vec<Command>,
+) {
+    let mut wanted = snapshot.band;
+    let picker = egui::ComboBox::from_id_salt("band").selected_text(RichText::new(&band.name).heading());
+    let picker = picker.show_ui(ui, |ui| {
+        for (index, other) in report.bands.iter().enumerate() {
+            ui.selectable_value(&mut wanted, index, &other.name);
+        }
+    });
+    let _ = picker
+        .response
+        .accessible_name("band")
+        .explain("The band that this view shows. Up and down step through all.");
+    if ui.memory(egui::Memory::focused).is_none() {
+        let pressed = |key| ui.input_mut(|input| input.consume_key(egui::Modifiers::NONE, key));
+        if pressed(egui::Key::ArrowDown) {
+            wanted = (wanted + 1).min(report.bands.len() - 1);
+        } else if pressed(egui::Key::ArrowUp) {
+            wanted = wanted.saturating_sub(1);
+        }
+    }
+    if wanted != snapshot.band {
+        out.push(Command::Show(Show::Band(wanted)));
+    }
 }
 
 /// A short piece of line in the pattern of a curve.

@@ -188,11 +188,12 @@ impl<'a> Lane<'a> {
         if !found.verdict.reason.is_empty() {
             text += &format!(", {}", found.verdict.reason);
         }
-        text += &format!("; SWR {}", units::swr(at.before_unit.swr));
+        let middle = self.report.map_or(0.0, |r| r.middle_point().frequency_hz);
+        text += &format!("; at {} SWR {}", units::megahertz(middle), units::swr(at.before_unit.swr));
         if at.setting.is_some() {
             text += &format!(" before and {} after the matching unit", units::swr(at.at_transmitter.swr));
         }
-        text + &format!(", {} to the wire", units::watts(at.watts_to_wire))
+        text + &format!(" and {} to the wire", units::watts(at.watts_to_wire))
     }
 
     /// The whole lane in words, for screen readers.
