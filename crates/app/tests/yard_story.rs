@@ -407,3 +407,55 @@ fn dragging_the_ground_moves_the_view_and_no_plan() {
     assert!((moved - vec2(60.0, -20.0)).length() < 1.0, "{moved:?}");
     assert!(yard.state().asked.is_empty());
 }
+
+#[test]
+fn arrows_bend_the_wire_and_go_on_with_the_new_point() {
+    let mut yard = yard(flat());
+    yard.get_by_role_and_label(Role::Slider, "new point in span 1").focus();
+    yard.run();
+    for _ in 0..3 {
+        yard.key_press(Key::ArrowUp);
+        yard.run();
+    }
+    let path = &yard.state().plan.wires[0].path;
+    assert_eq!(path.len(), 3, "one point, moved three times");
+    assert!(matches!(path[1], PathPoint::Free(at) if (at.z_m - 10.3).abs() < 1e-6), "{path:?}");
+    assert!(yard.get_by_role_and_label(Role::Slider, "apex").is_focused());
+}
+
+#[test]
+fn the_view_stands_still_in_a_drag_and_shows_everything_afterwards() {
+    let mut yard = yard(flat());
+    let (west, east) = (middle(&yard, "support west mast"), middle(&yard, "support east mast"));
+    yard.hover_at(east);
+    yard.run();
+    yard.drag_at(east);
+    yard.run();
+    yard.hover_at(east + vec2(40.0, 0.0));
+    yard.run();
+    // Out over the edge of the window.
+    yard.hover_at(pos2(1400.0, east.y));
+    yard.run();
+    assert!((middle(&yard, "support west mast") - west).length() < 0.5);
+    yard.drop_at(pos2(1400.0, east.y));
+    yard.run();
+    assert!(yard.state().plan.site.supports[1].foot.x_m > 50.0);
+    let moved = middle(&yard, "support east mast");
+    assert!(moved.x < 1000.0 && moved.x > 700.0, "{moved:?}");
+}
+
+#[test]
+fn a_press_elsewhere_lets_go() {
+    let mut yard = yard(flat());
+    let end = middle(&yard, "wire end");
+    yard.hover_at(end);
+    yard.get_by_role_and_label(Role::Slider, "wire end").click();
+    yard.run();
+    assert!(yard.query_by_role(Role::SpinButton).is_some());
+    yard.drag_at(pos2(300.0, 330.0));
+    yard.run();
+    yard.drop_at(pos2(300.0, 330.0));
+    yard.run();
+    assert!(yard.query_by_role(Role::SpinButton).is_none());
+    assert!(!yard.get_by_role_and_label(Role::Slider, "wire end").is_focused());
+}

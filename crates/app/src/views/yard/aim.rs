@@ -51,7 +51,7 @@ impl Model<'_> {
                 // Heights on supports count from the foot, all others from the earth.
                 let foot_m = place.z_m - now.up_m.unwrap_or(place.z_m);
                 Numbers {
-                    along_m: now.along_m.map(|_| self.from_datum(grip, moved)),
+                    along_m: now.along_m.map(|_| self.distance_m(grip, moved)),
                     up_m: now.up_m.map(|_| flat.up_m - foot_m),
                 }
             }

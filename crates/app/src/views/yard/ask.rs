@@ -211,7 +211,7 @@ impl Model<'_> {
             PathPoint::Free(at) => {
                 let (up_m, hint) = held(height_m, low, (f64::INFINITY, ""));
                 let grip = Grip::PathPoint { wire, point };
-                let along_m = along_m.unwrap_or_else(|| self.from_datum(grip, *at));
+                let along_m = along_m.unwrap_or_else(|| self.distance_m(grip, *at));
                 let mut path = on.wire.path.clone();
                 path[point] = PathPoint::Free(self.point_from(grip, *at, along_m, up_m));
                 Some(Asked::one(Edit::PathPoints { wire, path }).hinted(hint))
@@ -233,7 +233,7 @@ impl Model<'_> {
         let (first, last) = self.carries_ends(support);
         // The supports at the two ends keep their order and their distance; the others go anywhere.
         let datum = self.datum(first);
-        let now_m = self.from_datum(grip, self.place(grip)?);
+        let now_m = self.distance_m(grip, self.place(grip)?);
         let low_m = if first != last && now_m > 0.0 { CLOSEST_SUPPORTS_M } else { f64::NEG_INFINITY };
         let too_close = format!("too close to {}", datum.name);
         let (along_m, hint) = held(along_m, (low_m, &too_close), (f64::INFINITY, ""));

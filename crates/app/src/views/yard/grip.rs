@@ -110,10 +110,11 @@ impl Model<'_> {
     fn point_name(&self, wire: usize, point: usize) -> String {
         let up = |index: usize| self.paths.get(wire).and_then(|path| path.get(index)).map(|v| v.at.z_m);
         let before = point.checked_sub(1).and_then(up);
-        if let (Some(before), Some(here), Some(after)) = (before, up(point), up(point + 1)) {
-            if here > before && here > after {
-                return "apex".to_owned();
-            }
+        if let (Some(before), Some(here), Some(after)) = (before, up(point), up(point + 1))
+            && here > before
+            && here > after
+        {
+            return "apex".to_owned();
         }
         match self.path_point(wire, point) {
             Some(PathPoint::OnSupport { support, .. }) => format!("wire on {support}"),
@@ -157,11 +158,11 @@ impl Model<'_> {
             }
             Grip::PathPoint { wire, point } => match self.path_point(wire, point) {
                 Some(PathPoint::OnSupport { height_m, .. }) => Numbers::up(*height_m),
-                Some(PathPoint::Free(at)) => Numbers::both(self.from_datum(grip, *at), at.z_m),
+                Some(PathPoint::Free(at)) => Numbers::both(self.distance_m(grip, *at), at.z_m),
                 None => Numbers::default(),
             },
             Grip::SupportFoot { .. } => {
-                self.place(grip).map_or_else(Numbers::default, |at| Numbers::along(self.from_datum(grip, at)))
+                self.place(grip).map_or_else(Numbers::default, |at| Numbers::along(self.distance_m(grip, at)))
             }
             Grip::SupportTop { support } => {
                 let support = self.plan.site.supports.get(support);
@@ -169,7 +170,7 @@ impl Model<'_> {
             }
             Grip::NewPoint { .. } | Grip::Entrance => self
                 .place(grip)
-                .map_or_else(Numbers::default, |at| Numbers::both(self.from_datum(grip, at), at.z_m)),
+                .map_or_else(Numbers::default, |at| Numbers::both(self.distance_m(grip, at), at.z_m)),
         }
     }
 
@@ -196,7 +197,7 @@ impl Model<'_> {
     }
 
     /// A point's horizontal distance from what its grip counts from, m.
-    pub fn from_datum(&self, grip: Grip, at: Point) -> f64 {
+    pub fn distance_m(&self, grip: Grip, at: Point) -> f64 {
         let datum = self.datum(self.moves_first(grip));
         (self.plane.flat(at).along_m - datum.along_m) * datum.side
     }

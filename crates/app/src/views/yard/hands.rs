@@ -128,12 +128,10 @@ fn hold(
         response.request_focus();
     }
     let Some(drag) = state.drag.clone().filter(|d| d.grip == handle.grip) else { return };
-    if response.dragged() {
-        if let Some(at) = target(ui, &drag) {
-            let asked = drag_to(ui, bench, &drag, at);
-            state.hint = asked.hint.clone();
-            put(asked, out);
-        }
+    if let Some(at) = target(ui, &drag).filter(|_| response.dragged()) {
+        let asked = drag_to(ui, bench, &drag, at);
+        state.hint = asked.hint.clone();
+        put(asked, out);
     }
     if response.drag_stopped() {
         if let Some(edit) = drag.bend.as_ref().and_then(|b| bench.model.ask_let_go(&bench.layout.view, b)) {
@@ -195,6 +193,12 @@ fn keys(
             _ => bench.model.ask(handle.grip, wish),
         };
         state.hint = asked.hint.clone();
+        if let (Grip::NewPoint { wire, span }, false) = (handle.grip, asked.edits.is_empty()) {
+            // The keys go on with the point that has just been made.
+            let made = Grip::PathPoint { wire, point: span + 1 };
+            ui.memory_mut(|m| m.request_focus(id(ui, made)));
+            state.chosen = Some(made);
+        }
         put(asked, out);
     }
     if ARROWS.into_iter().any(|key| ui.input(|i| i.key_released(key))) {
@@ -204,10 +208,10 @@ fn keys(
     if ui.input_mut(|i| i.consume_key(Modifiers::NONE, Key::Enter)) {
         state.type_number = true;
     }
-    if ui.input(|i| i.key_pressed(Key::Delete) || i.key_pressed(Key::Backspace)) {
-        if let Some(edit) = bench.model.ask_removal(handle.grip) {
-            step(edit, out);
-        }
+    if ui.input(|i| i.key_pressed(Key::Delete) || i.key_pressed(Key::Backspace))
+        && let Some(edit) = bench.model.ask_removal(handle.grip)
+    {
+        step(edit, out);
     }
 }
 

@@ -157,7 +157,9 @@ fn steer(
     let resized = state.plot != Some(plot);
     state.plot = Some(plot);
     let mut camera = match state.camera {
-        Some(camera) if state.by_hand || state.drag.is_some() || state.tag_held => camera,
+        Some(camera) if state.drag.is_some() || state.tag_held => camera,
+        // Another plan may lie somewhere else altogether.
+        Some(camera) if state.by_hand && shows(camera, bounds, plot, plane) => camera,
         // Small changes of the site do not move the view.
         Some(camera) if !resized && serves(camera, bounds, plot, plane) => camera,
         _ => fitted(),
@@ -208,11 +210,20 @@ fn steer_by_keys(ui: &Ui, ground: &Response, state: &mut YardState, camera: Came
     camera.panned(by * PAN_PX).zoomed(ZOOM.powf(f64::from(zoom)), plot.center(), plot)
 }
 
+/// The site on the screen.
+fn site_rect(camera: Camera, bounds: Bounds, plot: Rect, plane: side_view::Plane) -> Rect {
+    let view = SideView { plane, camera, frame: plot };
+    Rect::from_two_pos(view.at_flat(bounds.low), view.at_flat(bounds.high))
+}
+
+/// Whether anything of the site is in view.
+fn shows(camera: Camera, bounds: Bounds, plot: Rect, plane: side_view::Plane) -> bool {
+    site_rect(camera, bounds, plot, plane).intersects(plot)
+}
+
 /// Whether the site is still all in view and not lost in it.
 fn serves(camera: Camera, bounds: Bounds, plot: Rect, plane: side_view::Plane) -> bool {
-    let view = SideView { plane, camera, frame: plot };
-    let (low, high) = (view.at_flat(bounds.low), view.at_flat(bounds.high));
-    let site = Rect::from_two_pos(low, high);
+    let site = site_rect(camera, bounds, plot, plane);
     let inside = plot.shrink2(vec2(24.0, 30.0)).contains_rect(site);
     let stage = layout::stage(plot);
     inside && (site.width() > 0.55 * stage.width() || site.height() > 0.55 * stage.height())
