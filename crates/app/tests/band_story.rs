@@ -194,10 +194,11 @@ fn curves_hold_what_the_report_says() {
 }
 
 #[test]
-fn beyond_the_end_of_a_line_there_is_nothing_to_read() {
+fn a_line_is_read_between_computed_places_but_not_beyond_its_end() {
     let at = |from_wire_m, peak_v| ProfilePoint { from_wire_m, peak_v, peak_a: 1.0 };
     let profile = [at(0.0, 10.0), at(2.0, 20.0), at(4.0, 30.0)];
-    assert_eq!(model::along(&profile, 1.2), Some(profile[1]));
+    let between = model::along(&profile, 1.2).expect("on the line");
+    assert!((between.peak_v - 16.0).abs() < 1e-9);
     assert_eq!(model::along(&profile, 4.0), Some(profile[2]));
     assert_eq!(model::along(&profile, 4.5), None);
     assert_eq!(model::along(&[], 0.0), None);

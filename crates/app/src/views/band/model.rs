@@ -130,15 +130,35 @@ pub fn nearest(band: &BandReport, frequency_hz: f64) -> usize {
     (0..band.points.len()).min_by(|a, b| distance(a).total_cmp(&distance(b))).unwrap_or(band.middle)
 }
 
-/// Volts and amperes at a place of a feed line; `None` beyond its end or without a line.
+/// Volts and amperes at a place of a feed line, straight between computed places; `None` beyond its end or without a
+/// line.
 #[must_use]
 pub fn along(profile: &[ProfilePoint], from_wire_m: f64) -> Option<ProfilePoint> {
-    let last = profile.last()?;
-    if from_wire_m < 0.0 || from_wire_m > last.from_wire_m + 1e-6 {
-        return None;
+    let (index, share) = between(profile, |p| p.from_wire_m, from_wire_m)?;
+    let (a, b) = (profile[index], profile[index + 1]);
+    let mix = |from: f64, to: f64| from + share * (to - from);
+    Some(ProfilePoint { from_wire_m, peak_v: mix(a.peak_v, b.peak_v), peak_a: mix(a.peak_a, b.peak_a) })
+}
+
+/// Where a curve crosses the cursor; `None` beyond its ends.
+#[must_use]
+pub fn crossing(curve: &[PlotPoint], x: f64) -> Option<PlotPoint> {
+    if let [only] = curve {
+        return Some(*only);
     }
-    let distance = |p: &&ProfilePoint| (p.from_wire_m - from_wire_m).abs();
-    profile.iter().min_by(|a, b| distance(a).total_cmp(&distance(b))).copied()
+    let (index, share) = between(curve, |p| p.x, x)?;
+    Some(PlotPoint::new(x, curve[index].y + share * (curve[index + 1].y - curve[index].y)))
+}
+
+/// The stretch of a rising list that holds a value: the index of its beginning, and how far along it the value lies.
+fn between<T>(list: &[T], of: impl Fn(&T) -> f64, value: f64) -> Option<(usize, f64)> {
+    // A cursor that was rounded on its way through the units still finds the ends.
+    let rounding = 1e-9 * value.abs().max(1.0);
+    let holds = |pair: &[T]| of(&pair[0]) - rounding <= value && value <= of(&pair[1]) + rounding;
+    let index = list.windows(2).position(holds)?;
+    let (low, high) = (of(&list[index]), of(&list[index + 1]));
+    let share = if high > low { (value - low) / (high - low) } else { 0.0 };
+    Some((index, share.clamp(0.0, 1.0)))
 }
 
 /// A row of the read-out: what it is, what that means, and the value of each feed.

@@ -2,7 +2,8 @@
 
 use eframe::egui::{self, Rect, RichText, Role, Sense, TextStyle, UiBuilder, WidgetInfo};
 use egui_plot::{
-    AxisHints, GridInput, GridMark, HLine, LineStyle, MarkerShape, PlotPoint, PlotUi, Points, VLine,
+    AxisHints, GridInput, GridMark, HLine, LineStyle, MarkerShape, PlotPoint, PlotPoints, PlotUi, Points,
+    VLine,
 };
 use sheet::tokens::{Ink, Pattern, Pen};
 use station::units;
@@ -281,14 +282,11 @@ fn mark<'a>(plot_ui: &mut PlotUi<'a>, shown: &Shown<'_>, curve: &Curve<'a>, curs
     let Some(x) = cursor else {
         return;
     };
-    let distance = |p: &&PlotPoint| (p.x - x).abs();
-    let Some(at) = curve.points.iter().min_by(|a, b| distance(a).total_cmp(&distance(b))) else {
+    let Some(at) = model::crossing(curve.points, x) else {
         return;
     };
-    if x > curve.points[curve.points.len() - 1].x + 1e-9 {
-        return;
-    }
-    let dot = Points::new("at the cursor", std::slice::from_ref(at)).shape(shape(curve.pattern)).radius(DOT);
+    let dot =
+        Points::new("at the cursor", PlotPoints::Owned(vec![at])).shape(shape(curve.pattern)).radius(DOT);
     plot_ui.points(dot.color(color(curve.ink, shown.snapshot.ground)).allow_hover(false));
 }
 

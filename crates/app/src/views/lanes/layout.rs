@@ -45,8 +45,8 @@ pub fn columns(x: Rangef, feeds: usize) -> Columns {
     let free = (width - pin - name - impedance - (3.0 + count) * GAP - EDGE).max(120.0);
     // Where room is short, words need it more than pictures.
     let pictures = if free < 500.0 { (0.14, 0.27) } else { (0.19, 0.32) };
-    let wave = (pictures.0 * free).clamp(44.0, 150.0);
-    let strip = (pictures.1 * free / count).clamp(34.0, 132.0);
+    let wave = (pictures.0 * free).clamp(44.0, 190.0);
+    let strip = (pictures.1 * free / count).clamp(34.0, 180.0);
     let gauge = free - wave - count * strip;
     let mut left = x.min + 4.0;
     let mut take = |width: f32, gap: f32| {
