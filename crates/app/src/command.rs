@@ -1,6 +1,9 @@
 //! What the views ask for. Drawing returns commands; the document is the one place that changes the plan.
 
-use station::plan::{Band, ConductorChoice, Earth, Feed, LineChoice, Link, PathPoint, Plan, Point, Transmitter};
+use station::plan::{
+    Band, ConductorChoice, Earth, Feed, LineChoice, Link, PathPoint, Plan, Point, Support, SupportKind,
+    Transmitter,
+};
 use station::units::Units;
 
 /// Something a view or a key asks for.
@@ -25,36 +28,106 @@ pub enum Command {
 #[allow(missing_docs)] // Field names carry the units and the plan's own words.
 pub enum Edit {
     /// Move one end of a wire along its path; the cut length follows, the other end stays.
-    WireBeginning { wire: usize, start_m: f64 },
-    CutLength { wire: usize, cut_length_m: f64 },
+    WireBeginning {
+        wire: usize,
+        start_m: f64,
+    },
+    CutLength {
+        wire: usize,
+        cut_length_m: f64,
+    },
     /// Cut length and where it begins in one step.
-    WireSpan { wire: usize, start_m: f64, cut_length_m: f64 },
+    WireSpan {
+        wire: usize,
+        start_m: f64,
+        cut_length_m: f64,
+    },
     /// Height of one path point over its support's foot (or over earth for a free point).
-    PathHeight { wire: usize, point: usize, height_m: f64 },
+    PathHeight {
+        wire: usize,
+        point: usize,
+        height_m: f64,
+    },
     /// Replace the whole path: points added, moved sideways, made fast to another support, or taken away.
-    PathPoints { wire: usize, path: Vec<PathPoint> },
-    Conductor { wire: usize, conductor: ConductorChoice },
+    PathPoints {
+        wire: usize,
+        path: Vec<PathPoint>,
+    },
+    Conductor {
+        wire: usize,
+        conductor: ConductorChoice,
+    },
     FeedFraction(f64),
     /// Move a support; wires on it follow.
-    SupportFoot { support: usize, foot: Point },
+    SupportFoot {
+        support: usize,
+        foot: Point,
+    },
     /// Height of a support. What is made fast at its top (within 5 cm) follows the top; nothing is left above it.
-    SupportHeight { support: usize, height_m: f64 },
+    SupportHeight {
+        support: usize,
+        height_m: f64,
+    },
+    AddSupport(Support),
+    /// Refused while a wire hangs on it.
+    RemoveSupport {
+        support: usize,
+    },
+    /// The wires that hang on it follow the new name.
+    RenameSupport {
+        support: usize,
+        name: String,
+    },
+    SupportKind {
+        support: usize,
+        kind: SupportKind,
+    },
     Earth(Earth),
     Entrance(Point),
-    LinkLength { feed: usize, link: usize, length_m: f64 },
-    LineKind { feed: usize, link: usize, line: LineChoice },
-    SetLink { feed: usize, link: usize, with: Link },
-    InsertLink { feed: usize, link: usize, new: Link },
-    RemoveLink { feed: usize, link: usize },
+    LinkLength {
+        feed: usize,
+        link: usize,
+        length_m: f64,
+    },
+    LineKind {
+        feed: usize,
+        link: usize,
+        line: LineChoice,
+    },
+    SetLink {
+        feed: usize,
+        link: usize,
+        with: Link,
+    },
+    InsertLink {
+        feed: usize,
+        link: usize,
+        new: Link,
+    },
+    RemoveLink {
+        feed: usize,
+        link: usize,
+    },
     AddFeed(Feed),
-    CopyFeed { feed: usize },
-    RemoveFeed { feed: usize },
-    RenameFeed { feed: usize, name: String },
+    CopyFeed {
+        feed: usize,
+    },
+    RemoveFeed {
+        feed: usize,
+    },
+    RenameFeed {
+        feed: usize,
+        name: String,
+    },
     Transmitter(Transmitter),
     Bands(Vec<Band>),
     Name(String),
     Purpose(String),
     CallSign(String),
+    /// What the sheet prints as its edition.
+    Edition(String),
+    /// Smallest share of the watts that must reach the wire.
+    LeastShare(f64),
     /// Replace everything (open a file, paste).
     Whole(Box<Plan>),
 }
@@ -81,6 +154,7 @@ pub enum View {
     Yard,
     Band,
     Sheet,
+    Station,
 }
 
 /// Light, dark, or what the desktop says.

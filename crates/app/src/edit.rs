@@ -38,6 +38,14 @@ pub enum Refusal {
     /// It would take away the last one.
     #[error("a plan needs at least one feed")]
     LastFeed,
+    /// It would leave a wire in the air.
+    #[error("the wire \"{wire}\" hangs on {support}: make it fast elsewhere first")]
+    Carries {
+        /// The support's name.
+        support: String,
+        /// The wire's name.
+        wire: String,
+    },
     /// It has no length to set.
     #[error("link {number} of this feed is not a piece of line")]
     NotALine {

@@ -39,7 +39,7 @@ fn entry(
 
 /// All of them. Those with more modifiers stand first: the shorter ones would answer to them, too.
 #[must_use]
-pub fn table() -> [Entry; 16] {
+pub fn table() -> [Entry; 17] {
     use Heard::{Always, WhenNotTyping, WhenNothingHasFocus};
     [
         entry((CTRL_SHIFT, Key::S), Always, "Save the plan under another name", |_| {
@@ -56,6 +56,7 @@ pub fn table() -> [Entry; 16] {
         entry((CTRL, Key::Num1), Always, "Look at the yard", |_| Command::Show(Show::View(View::Yard))),
         entry((CTRL, Key::Num2), Always, "Look at one band", |_| Command::Show(Show::View(View::Band))),
         entry((CTRL, Key::Num3), Always, "Look at the sheet", |_| Command::Show(Show::View(View::Sheet))),
+        entry((CTRL, Key::Num4), Always, "Look at the station", |_| Command::Show(Show::View(View::Station))),
         entry((PLAIN, Key::ArrowUp), WhenNothingHasFocus, "Choose the band before", |looks| {
             Command::Show(Show::Band(looks.band.saturating_sub(1)))
         }),

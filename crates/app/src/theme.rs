@@ -42,6 +42,12 @@ pub fn wash(ink: Ink, ground: Ground) -> Color32 {
     color(Ink::Background, ground).lerp_to_gamma(color(ink, ground), WASH)
 }
 
+/// The thinnest line that separates.
+#[must_use]
+pub fn hairline(ink: Ink, ground: Ground) -> Stroke {
+    Stroke::new(HAIRLINE, color(ink, ground))
+}
+
 /// The ground that a ui is drawn on now.
 #[must_use]
 pub fn ground_of(visuals: &egui::Visuals) -> Ground {
@@ -198,7 +204,9 @@ mod tests {
                 let ratio = contrast(color(ink, ground), color(Ink::Background, ground));
                 assert!(ratio >= 4.5, "{ink:?} on {ground:?}: {ratio:.2}");
             }
-            for ink in [Ink::Text, Ink::Faint, Ink::Works, Ink::WorksWithUnit, Ink::OutOfRange, Ink::Overstressed] {
+            for ink in
+                [Ink::Text, Ink::Faint, Ink::Works, Ink::WorksWithUnit, Ink::OutOfRange, Ink::Overstressed]
+            {
                 let ratio = contrast(color(ink, ground), color(Ink::Panel, ground));
                 assert!(ratio >= 4.5, "{ink:?} on panels, {ground:?}: {ratio:.2}");
             }

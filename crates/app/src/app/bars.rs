@@ -77,6 +77,11 @@ impl Wirewright {
     /// From right to left, because the bar is filled from its right end.
     fn tabs(&self, ui: &mut Ui, out: &mut Vec<Command>) {
         for (view, words, sentence) in [
+            (
+                View::Station,
+                "Station",
+                "What the station is: names, supports, wire, earth, and the bands that must work",
+            ),
             (View::Sheet, "Sheet", "The page for the crew, as it will print"),
             (View::Band, "Band", "The chosen band in depth: impedance, SWR, the feed line"),
             (View::Yard, "Yard", "The site to scale, the standing wave, and a lane for each band"),

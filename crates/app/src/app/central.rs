@@ -51,6 +51,11 @@ impl Wirewright {
                     .frame(body(Ink::Background).inner_margin(Margin::same(10)))
                     .show(ui, |ui| views.band(ui, &snapshot, out));
             }
+            View::Station => {
+                egui::CentralPanel::default()
+                    .frame(body(Ink::Panel).inner_margin(Margin::same(10)))
+                    .show(ui, |ui| views.station(ui, &snapshot, out));
+            }
             View::Sheet => {
                 let paper = self.looks.paper;
                 egui::CentralPanel::default()

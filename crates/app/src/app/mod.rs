@@ -10,7 +10,7 @@ use eframe::egui;
 use station::plan::Plan;
 
 use crate::answers::Answers;
-use crate::command::{Command, Desk as DeskCommand};
+use crate::command::{Command, Desk as DeskCommand, View};
 use crate::desk::{Chooser, Desk, Notice, SettingsFile};
 use crate::document::Document;
 use crate::looks::Looks;
@@ -46,6 +46,8 @@ pub struct Wirewright {
     views: Views,
     /// Why the last dragged number went no further.
     stop: Option<String>,
+    /// Commands of keys that were pressed while something was typed: followed once the field has been left.
+    later: Vec<Command>,
     /// As the window's title bar shows it now.
     title: String,
 }
@@ -71,6 +73,7 @@ impl Wirewright {
             answers: Answers::new(move || ctx.request_repaint()),
             views: Views::default(),
             stop: None,
+            later: Vec::new(),
             title: String::new(),
         }
     }
@@ -153,7 +156,7 @@ impl Wirewright {
 
     /// Lets the RF cycle run while it can be seen.
     fn move_on(&mut self, ctx: &egui::Context) {
-        if self.looks.moving && self.looks.view != crate::command::View::Sheet {
+        if self.looks.moving && matches!(self.looks.view, View::Yard | View::Band) {
             let step = f64::from(ctx.input(|input| input.stable_dt)).min(LONGEST_STEP_S);
             self.looks.advance(step);
             ctx.request_repaint_after_secs(MOTION_STEP_S as f32);
@@ -194,8 +197,18 @@ impl Wirewright {
         self.move_on(&ctx);
         let mut commands = Vec::new();
         self.paint(ui, &mut commands);
+        commands.append(&mut self.later);
         if !self.desk.is_asking() {
-            commands.extend(keys::pressed(&ctx, &self.looks));
+            let pressed = keys::pressed(&ctx, &self.looks);
+            match ctx.memory(egui::Memory::focused).filter(|_| ctx.text_edit_focused()) {
+                // What stands in the field belongs to the plan that is saved: the field is left first.
+                Some(field) if !pressed.is_empty() => {
+                    ctx.memory_mut(|memory| memory.surrender_focus(field));
+                    ctx.request_repaint();
+                    self.later = pressed;
+                }
+                _ => commands.extend(pressed),
+            }
         }
         self.desk.show_dialog(&ctx, &mut self.document);
         for command in commands {

@@ -25,15 +25,21 @@ impl Handle {
             Edit::SupportFoot { support, .. } | Edit::SupportHeight { support, .. } => (*support, 0),
             Edit::LinkLength { feed, link, .. } | Edit::SetLink { feed, link, .. } => (*feed, *link),
             Edit::RenameFeed { feed, .. } => (*feed, 0),
+            Edit::RenameSupport { support, .. } => (*support, 0),
             Edit::FeedFraction(_)
             | Edit::Entrance(_)
             | Edit::Transmitter(_)
             | Edit::Bands(_)
             | Edit::Name(_)
             | Edit::Purpose(_)
-            | Edit::CallSign(_) => (0, 0),
+            | Edit::CallSign(_)
+            | Edit::Edition(_)
+            | Edit::LeastShare(_) => (0, 0),
             Edit::Conductor { .. }
             | Edit::Earth(_)
+            | Edit::AddSupport(_)
+            | Edit::RemoveSupport { .. }
+            | Edit::SupportKind { .. }
             | Edit::LineKind { .. }
             | Edit::InsertLink { .. }
             | Edit::RemoveLink { .. }

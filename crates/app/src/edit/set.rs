@@ -14,7 +14,12 @@ pub fn set(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
         | Edit::PathHeight { .. }
         | Edit::PathPoints { .. }
         | Edit::Conductor { .. } => wire(plan, edit),
-        Edit::SupportFoot { .. } | Edit::SupportHeight { .. } => support(plan, edit),
+        Edit::SupportFoot { .. }
+        | Edit::SupportHeight { .. }
+        | Edit::SupportKind { .. }
+        | Edit::AddSupport(_)
+        | Edit::RemoveSupport { .. }
+        | Edit::RenameSupport { .. } => support(plan, edit),
         Edit::LinkLength { .. }
         | Edit::LineKind { .. }
         | Edit::SetLink { .. }
@@ -41,6 +46,8 @@ fn simple(plan: &mut Plan, edit: &Edit) {
         Edit::Name(name) => plan.name.clone_from(name),
         Edit::Purpose(purpose) => plan.purpose.clone_from(purpose),
         Edit::CallSign(call_sign) => plan.call_sign.clone_from(call_sign),
+        Edit::Edition(edition) => plan.edition.clone_from(edition),
+        Edit::LeastShare(share) => plan.least_share_to_wire = *share,
         Edit::Whole(whole) => plan.clone_from(whole),
         _ => {}
     }
@@ -87,6 +94,30 @@ fn support(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
             let name = support.name.clone();
             follow_top(plan, &name, before_m, *height_m);
         }
+        Edit::SupportKind { support, kind } => {
+            get(&mut plan.site.supports, *support, "support")?.kind = *kind;
+        }
+        Edit::AddSupport(support) => plan.site.supports.push(support.clone()),
+        Edit::RemoveSupport { support } => {
+            let name = get(&mut plan.site.supports, *support, "support")?.name.clone();
+            if let Some(wire) =
+                plan.wires.iter().find(|wire| wire.path.iter().any(|point| is_on(point, &name)))
+            {
+                return Err(Refusal::Carries { support: name, wire: wire.name.clone() });
+            }
+            plan.site.supports.remove(*support);
+        }
+        Edit::RenameSupport { support, name } => {
+            let support = get(&mut plan.site.supports, *support, "support")?;
+            let old = std::mem::replace(&mut support.name, name.clone());
+            for point in plan.wires.iter_mut().flat_map(|wire| &mut wire.path) {
+                if let PathPoint::OnSupport { support, .. } = point
+                    && *support == old
+                {
+                    support.clone_from(name);
+                }
+            }
+        }
         _ => {}
     }
     Ok(())
@@ -103,6 +134,11 @@ fn follow_top(plan: &mut Plan, support: &str, before_m: f64, after_m: f64) {
             *height_m = after_m;
         }
     }
+}
+
+/// Whether a path point is made fast to the support of this name.
+fn is_on(point: &PathPoint, name: &str) -> bool {
+    matches!(point, PathPoint::OnSupport { support, .. } if support == name)
 }
 
 fn link(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {

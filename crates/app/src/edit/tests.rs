@@ -1,7 +1,8 @@
 //! Each edit on the demo, and the stops of dragged numbers.
 
 use station::plan::{
-    ConductorChoice, Earth, LineChoice, Link, MatchingUnit, PathPoint, Plan, Point, Transformer, Transmitter,
+    ConductorChoice, Earth, LineChoice, Link, MatchingUnit, PathPoint, Plan, Point, SupportKind, Transformer,
+    Transmitter,
 };
 
 use super::*;
@@ -78,6 +79,26 @@ fn the_site_follows() {
 }
 
 #[test]
+fn supports_come_and_go_and_are_renamed_with_their_wires() {
+    let mut third = start::demo().site.supports[0].clone();
+    third.name = "lone pine".to_owned();
+    third.kind = SupportKind::Tree;
+    let plan = after(Edit::AddSupport(third.clone()));
+    assert_eq!(plan.site.supports[2], third);
+    let back = apply(&plan, &Edit::RemoveSupport { support: 2 }).unwrap().plan;
+    assert_eq!(back, start::demo());
+    assert!(refused(Edit::RemoveSupport { support: 0 }).contains("hangs on west mast"));
+
+    let plan = after(Edit::RenameSupport { support: 0, name: "lee mast".to_owned() });
+    assert_eq!(plan.site.supports[0].name, "lee mast");
+    assert!(matches!(&plan.wires[0].path[0], PathPoint::OnSupport { support, .. } if support == "lee mast"));
+    let plan = after(Edit::SupportKind { support: 1, kind: SupportKind::Tree });
+    assert_eq!(plan.site.supports[1].kind, SupportKind::Tree);
+    // A name that stands already would make one support of two.
+    assert!(refused(Edit::RenameSupport { support: 0, name: "east mast".to_owned() }).contains("east mast"));
+}
+
+#[test]
 fn the_feeds_follow() {
     let plan = after(Edit::LinkLength { feed: 1, link: 0, length_m: 21.0 });
     assert!(matches!(&plan.feeds[1].links[0], Link::Line(piece) if near(piece.length_m, 21.0)));
@@ -118,6 +139,8 @@ fn words_and_lists_follow() {
     assert_eq!(after(Edit::Name("Dune hut".to_owned())).name, "Dune hut");
     assert_eq!(after(Edit::Purpose("Practice".to_owned())).purpose, "Practice");
     assert_eq!(after(Edit::CallSign("Q0X".to_owned())).call_sign, "Q0X");
+    assert_eq!(after(Edit::Edition("B".to_owned())).edition, "B");
+    assert!(near(after(Edit::LeastShare(0.3)).least_share_to_wire, 0.3));
     let transmitter = Transmitter { power_w: 25.0, ..start::demo().transmitter };
     assert_eq!(after(Edit::Transmitter(transmitter.clone())).transmitter, transmitter);
     let bands = start::demo().bands[..2].to_vec();

@@ -6,12 +6,10 @@ use std::io::{ErrorKind, Write as _};
 
 use station::evaluate::Evaluator;
 use station::report::json;
+use station::validate::FREQUENCIES_HZ;
 
 use super::HeadlessError;
 use crate::cli::ReportArgs;
-
-/// Frequencies that `--at` takes, MHz: what the model is for.
-const RANGE_MHZ: (f64, f64) = (1.0, 60.0);
 
 /// Prints the report.
 ///
@@ -34,7 +32,7 @@ pub fn run(args: &ReportArgs) -> Result<(), HeadlessError> {
 }
 
 fn frequencies_hz(at_mhz: &[f64]) -> Result<Vec<f64>, HeadlessError> {
-    let (low, high) = RANGE_MHZ;
+    let (low, high) = (FREQUENCIES_HZ.start() / 1e6, FREQUENCIES_HZ.end() / 1e6);
     at_mhz
         .iter()
         .map(|&value| {

@@ -6,9 +6,11 @@
 
 pub mod band;
 pub mod feed_path;
+mod fields;
 pub mod lanes;
 pub mod marks;
 pub mod sheet;
+pub mod station;
 pub mod swr_scale;
 mod together;
 pub mod yard;

@@ -2,7 +2,7 @@
 
 use eframe::egui::Ui;
 
-use super::{band, feed_path, lanes, sheet, yard};
+use super::{band, feed_path, lanes, sheet, station, yard};
 use crate::command::{Command, Paper};
 use crate::snapshot::Snapshot;
 
@@ -14,6 +14,7 @@ pub struct Views {
     band: band::BandState,
     feed_path: feed_path::FeedPathState,
     sheet: sheet::SheetState,
+    station: station::StationState,
 }
 
 impl Views {
@@ -40,5 +41,10 @@ impl Views {
     /// The page for the crew.
     pub fn sheet(&mut self, ui: &mut Ui, snapshot: &Snapshot<'_>, paper: Paper, out: &mut Vec<Command>) {
         sheet::show(ui, snapshot, paper, &mut self.sheet, out);
+    }
+
+    /// The station in words and numbers.
+    pub fn station(&mut self, ui: &mut Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {
+        station::show(ui, snapshot, &mut self.station, out);
     }
 }

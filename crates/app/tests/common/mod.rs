@@ -114,6 +114,20 @@ impl Window {
         self.watch(3);
     }
 
+    /// Clicks the first of several things with this name that stand at the same height as another thing or below it.
+    pub fn click_first(&mut self, name: &str, beside: &str) {
+        let top = self
+            .harness
+            .query_all_by_value(beside)
+            .next()
+            .unwrap_or_else(|| panic!("nothing says {beside}"))
+            .rect()
+            .top();
+        let found = self.harness.query_all_by_label(name).filter(|node| node.rect().bottom() > top);
+        found.min_by(|a, b| a.rect().top().total_cmp(&b.rect().top())).unwrap().click();
+        self.watch(3);
+    }
+
     pub fn has(&self, name: &str) -> bool {
         self.harness.query_all_by_label(name).next().is_some()
     }

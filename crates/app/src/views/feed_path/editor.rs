@@ -4,14 +4,16 @@ use eframe::egui::{self, RichText};
 use sheet::tokens::Ink;
 use station::plan::{Feed, LineChoice, LinePiece, Link, MatchingUnit, Transformer};
 
-use super::fields::{Quantity, button, quantity};
 use super::{FeedPathState, Picked, lines, model};
 use crate::command::{Command, Edit, Show};
 use crate::explain::Explain as _;
 use crate::snapshot::Snapshot;
 use crate::theme::color;
+use crate::views::fields::{Quantity, button, quantity};
 use crate::views::marks;
 
+/// Most letters of a feed's name.
+const LONGEST_NAME: usize = 60;
 /// Height of the pick list of lines before it scrolls.
 const PICK_LIST: f32 = 460.0;
 /// Feeds that can stand side by side and still be read.
@@ -67,7 +69,7 @@ fn transmitter(ui: &mut egui::Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command
         "Power into a matched load: all watts, volts and amperes are for this power.",
         set.power_w,
         " W",
-        0.1..=10_000.0,
+        0.001..=100_000.0,
         1.0,
         1,
     );
@@ -85,7 +87,7 @@ fn transmitter(ui: &mut egui::Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command
         "The highest standing-wave ratio at which the transmitter still gives full power.",
         set.swr_limit,
         "",
-        1.05..=10.0,
+        1.05..=20.0,
         0.02,
         2,
     );
@@ -139,7 +141,7 @@ fn feed_fields(
             out.push(Command::Edit(Edit::RemoveFeed { feed }));
             choose(feed.saturating_sub(1), state, out);
         }
-        insert(ui, (feed, planned.links.len()), "Insert at transmitter", state, out);
+        insert(ui, snapshot, (feed, planned.links.len()), "Insert at transmitter", state, out);
     });
     let hint = RichText::new("Click a link of a path to change it.").small();
     ui.label(hint.color(color(Ink::Faint, snapshot.ground)));
@@ -158,8 +160,9 @@ fn name(ui: &mut egui::Ui, feed: usize, planned: &Feed, state: &mut FeedPathStat
         Some((of, typed)) if *of == feed => typed.clone(),
         _ => planned.name.clone(),
     };
-    let response =
-        ui.add(egui::TextEdit::singleline(&mut text).desired_width(f32::INFINITY)).labelled_by(label.id);
+    let response = ui
+        .add(egui::TextEdit::singleline(&mut text).char_limit(LONGEST_NAME).desired_width(f32::INFINITY))
+        .labelled_by(label.id);
     if response.changed() {
         state.name = Some((feed, text.clone()));
     }
@@ -198,8 +201,8 @@ fn link_fields(
         }
     }
     ui.horizontal_wrapped(|ui| {
-        insert(ui, (feed, link + 1), "Insert above", state, out);
-        insert(ui, (feed, link), "Insert below", state, out);
+        insert(ui, snapshot, (feed, link + 1), "Insert above", state, out);
+        insert(ui, snapshot, (feed, link), "Insert below", state, out);
         if button(ui, true, "Remove", "Takes this link out of the feed.") {
             out.push(Command::Edit(Edit::RemoveLink { feed, link }));
             state.picked = Some(Picked::Feed(feed));
@@ -238,7 +241,7 @@ fn line(
             value: piece.length_m,
             unit,
             suffix: if snapshot.units == station::units::Units::Feet { " ft" } else { " m" },
-            range: 0.0..=1_000.0 / unit,
+            range: 0.05 / unit..=2_000.0 / unit,
             speed: 0.1 / unit,
             decimals: 2,
         };
@@ -257,7 +260,7 @@ fn ratio(ui: &mut egui::Ui, (feed, link): (usize, usize), transformer: Transform
             value: transformer.impedance_ratio,
             unit: 1.0,
             suffix: " : 1",
-            range: 0.01..=200.0,
+            range: 0.01..=100.0,
             speed: 0.05,
             decimals: 2,
         };
@@ -296,10 +299,10 @@ fn unit_fields(ui: &mut egui::Ui, unit: MatchingUnit, out: &mut Vec<Command>) ->
     let capacitor = "The capacitor can be set from nothing to this capacitance.";
     let q = "Reactance over resistance of the part: the higher, the fewer watts it burns.";
     let fields = [
-        field("largest coil", coil, unit.inductance_max_h, 1e-6, " µH", 0.1..=500.0, 0.1),
-        field("largest capacitor", capacitor, unit.capacitance_max_f, 1e-12, " pF", 5.0..=20_000.0, 2.0),
-        field("Q of the coil", q, unit.coil_q, 1.0, "", 5.0..=2_000.0, 1.0),
-        field("Q of the capacitor", q, unit.capacitor_q, 1.0, "", 10.0..=20_000.0, 5.0),
+        field("largest coil", coil, unit.inductance_max_h, 1e-6, " µH", 0.01..=1_000.0, 0.1),
+        field("largest capacitor", capacitor, unit.capacitance_max_f, 1e-12, " pF", 1.0..=1e6, 2.0),
+        field("Q of the coil", q, unit.coil_q, 1.0, "", 5.0..=10_000.0, 1.0),
+        field("Q of the capacitor", q, unit.capacitor_q, 1.0, "", 5.0..=100_000.0, 5.0),
     ];
     let mut changed = false;
     grid(ui, "matching unit fields", |ui| {
@@ -328,7 +331,7 @@ fn rating(ui: &mut egui::Ui, rating_peak_v: &mut Option<f64>, out: &mut Vec<Comm
     }
     if let Some(rating_v) = rating_peak_v {
         let field = egui::DragValue::new(rating_v)
-            .range(10.0..=50_000.0)
+            .range(10.0..=100_000.0)
             .clamp_existing_to_range(false)
             .speed(10.0)
             .max_decimals(0)
@@ -351,18 +354,31 @@ fn rating(ui: &mut egui::Ui, rating_peak_v: &mut Option<f64>, out: &mut Vec<Comm
 /// A menu that puts a new link at a place of the feed.
 fn insert(
     ui: &mut egui::Ui,
+    snapshot: &Snapshot<'_>,
     (feed, link): (usize, usize),
     words: &str,
     state: &mut FeedPathState,
     out: &mut Vec<Command>,
 ) {
+    let links = snapshot.plan.feeds.get(feed).map_or(&[][..], |f| &f.links);
+    let has_unit = links.iter().any(|l| matches!(l, Link::MatchingUnit(_)));
     let menu = ui.menu_button(words, |ui| {
-        for (words, new) in [
-            ("feed line", new_line()),
-            ("transformer", Link::Transformer(Transformer { impedance_ratio: 4.0 })),
-            ("matching unit", new_unit()),
+        let transformer = Link::Transformer(Transformer { impedance_ratio: 4.0 });
+        for (words, enabled, sentence, new) in [
+            ("feed line", true, "A piece of coaxial cable; its kind can be changed.", new_line()),
+            ("transformer", true, "An ideal transformer, 4 : 1 at first.", transformer),
+            (
+                "matching unit",
+                !has_unit,
+                if has_unit {
+                    "A feed has one matching unit at most."
+                } else {
+                    "A coil and a capacitor, set for each frequency."
+                },
+                new_unit(),
+            ),
         ] {
-            if ui.button(words).clicked() {
+            if button(ui, enabled, words, sentence) {
                 out.push(Command::Edit(Edit::InsertLink { feed, link, new }));
                 state.picked = Some(Picked::Link { feed, link });
                 ui.close();

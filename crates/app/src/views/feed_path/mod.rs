@@ -1,7 +1,6 @@
 //! Feed path: the feeds side by side, each as wide as the watts that are left, and the editor of the picked link.
 
 mod editor;
-mod fields;
 pub mod layout;
 mod lines;
 pub mod model;
@@ -49,6 +48,9 @@ const DIMMED: f32 = 0.55;
 const DIM_SECONDS: f32 = 0.6;
 /// Metres of line for each point that a block is dragged.
 const METRES_PER_POINT: f64 = 0.05;
+
+/// A line cannot be dragged shorter, m.
+const LEAST_LINE_M: f64 = 0.05;
 
 /// Draws the feed paths and the editor below them.
 pub fn show(ui: &mut egui::Ui, snapshot: &Snapshot<'_>, state: &mut FeedPathState, out: &mut Vec<Command>) {
@@ -158,7 +160,7 @@ impl View<'_> {
         if let Some(piece) = line {
             let points = f64::from(response.drag_delta().y);
             if response.dragged() && points != 0.0 {
-                let length_m = (piece.length_m + METRES_PER_POINT * points).max(0.0);
+                let length_m = (piece.length_m + METRES_PER_POINT * points).max(LEAST_LINE_M);
                 out.push(Command::Edit(Edit::LinkLength { feed, link: block.link, length_m }));
             }
             if response.drag_stopped() {

@@ -6,7 +6,7 @@ use crate::command::Command;
 use crate::explain::Explain as _;
 
 /// How a value of the plan stands in a field.
-pub(super) struct Quantity<'a> {
+pub(in crate::views) struct Quantity<'a> {
     /// The label before it.
     pub label: &'a str,
     /// What it is, in one sentence.
@@ -26,7 +26,11 @@ pub(super) struct Quantity<'a> {
 }
 
 /// A row with a label and a number; the new value in SI when it changes.
-pub(super) fn quantity(ui: &mut egui::Ui, quantity: &Quantity<'_>, out: &mut Vec<Command>) -> Option<f64> {
+pub(in crate::views) fn quantity(
+    ui: &mut egui::Ui,
+    quantity: &Quantity<'_>,
+    out: &mut Vec<Command>,
+) -> Option<f64> {
     let label = ui.label(quantity.label);
     let mut shown = quantity.value / quantity.unit;
     let field = DragValue::new(&mut shown)
@@ -53,9 +57,9 @@ fn end_of_drag(response: &Response, out: &mut Vec<Command>) {
 }
 
 /// A button with its sentence; true when pressed.
-pub(super) fn button(ui: &mut egui::Ui, enabled: bool, words: &str, sentence: &str) -> bool {
+pub(in crate::views) fn button(ui: &mut egui::Ui, enabled: bool, words: &str, sentence: &str) -> bool {
     let response = ui.add_enabled(enabled, egui::Button::new(words));
     let pressed = response.clicked();
-    let _ = response.explain(sentence);
+    let _ = response.on_disabled_hover_text(sentence).explain(sentence);
     pressed
 }
