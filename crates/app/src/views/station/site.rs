@@ -1,0 +1,245 @@
+//! What stands on the site, what lies under it, and what the wire is made of.
+
+use eframe::egui::{ComboBox, Id, Ui};
+use station::catalogue;
+use station::plan::{ConductorChoice, Earth, Point, Support, SupportKind};
+
+use super::typed::{TextField, Typed};
+use super::{grid, group};
+use crate::command::{Command, Edit};
+use crate::explain::Explain as _;
+use crate::snapshot::Snapshot;
+use crate::views::fields::{Quantity, button, quantity};
+
+/// Reach of a site in any direction, m.
+const REACH_M: f64 = 5_000.0;
+/// Highest support, m.
+const HIGHEST_M: f64 = 300.0;
+/// A new support stands this far beyond the last one, m.
+const NEXT_SUPPORT_M: f64 = 10.0;
+/// Height of a pick list, points.
+const PICK_LIST: f32 = 420.0;
+
+/// A coordinate of a point: label, sentence, value in metres, and the point with another value.
+type Coordinate = (&'static str, &'static str, f64, fn(Point, f64) -> Point);
+
+/// A length of the plan in its field.
+fn length<'a>(snapshot: &Snapshot<'_>, label: &'a str, sentence: &'a str, value_m: f64) -> Quantity<'a> {
+    let unit = snapshot.units.to_metres(1.0);
+    let suffix = if snapshot.units == station::units::Units::Feet { " ft" } else { " m" };
+    let reach = REACH_M / unit;
+    Quantity {
+        label,
+        sentence,
+        value: value_m,
+        unit,
+        suffix,
+        range: -reach..=reach,
+        speed: 0.05 / unit,
+        decimals: 2,
+    }
+}
+
+/// Conductor, cut length, place of the feedpoint; earth; entrance.
+pub(super) fn wire_and_earth(ui: &mut Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {
+    grid(ui, "wire and earth", |ui| {
+        for (wire, planned) in snapshot.plan.wires.iter().enumerate() {
+            ui.label(&planned.name);
+            conductor(ui, wire, &planned.conductor, out);
+            ui.end_row();
+            let sentence = "Electrical length of wire between its two ends; the sheet adds what knots need.";
+            let field = Quantity {
+                range: 0.5..=1e6,
+                ..length(snapshot, "cut length", sentence, planned.cut_length_m)
+            };
+            if let Some(cut_length_m) = quantity(ui, &field, out) {
+                out.push(Command::Edit(Edit::CutLength { wire, cut_length_m }));
+            }
+        }
+        let fed_at = Quantity {
+            label: "fed at",
+            sentence: "Share of the wire between its beginning and the feedpoint: 50 % is the centre.",
+            value: snapshot.plan.feedpoint.fraction,
+            unit: 0.01,
+            suffix: " %",
+            range: 0.0..=100.0,
+            speed: 0.1,
+            decimals: 1,
+        };
+        if let Some(fraction) = quantity(ui, &fed_at, out) {
+            out.push(Command::Edit(Edit::FeedFraction(fraction)));
+        }
+        let label = ui.label("earth").id;
+        earth(ui, label, &snapshot.plan.site.earth, out);
+        ui.end_row();
+        entrance(ui, snapshot, out);
+    });
+}
+
+fn conductor(ui: &mut Ui, wire: usize, chosen: &ConductorChoice, out: &mut Vec<Command>) {
+    let (name, sentence) = match chosen {
+        ConductorChoice::Own(data) => {
+            (data.name.clone(), format!("{}, the station's own figures", data.name))
+        }
+        ConductorChoice::Catalogue(id) => match catalogue::conductor_entry(id) {
+            Ok(entry) => (entry.data.name.clone(), format!("{}. Figures: {}", entry.hint, entry.data.source)),
+            Err(error) => (id.clone(), error.to_string()),
+        },
+    };
+    let picker =
+        ComboBox::from_id_salt(("conductor", wire)).selected_text(name).height(PICK_LIST).show_ui(ui, |ui| {
+            for entry in catalogue::conductors() {
+                let is_chosen = matches!(chosen, ConductorChoice::Catalogue(id) if *id == entry.id);
+                if ui.selectable_label(is_chosen, &entry.data.name).explain(&entry.hint).clicked()
+                    && !is_chosen
+                {
+                    let conductor = ConductorChoice::Catalogue(entry.id.clone());
+                    out.push(Command::Edit(Edit::Conductor { wire, conductor }));
+                }
+            }
+        });
+    picker.response.accessible_name("conductor").explain(sentence);
+}
+
+fn earth(ui: &mut Ui, label: Id, chosen: &Earth, out: &mut Vec<Command>) {
+    let ideal = [
+        (Earth::NoEarth, "No earth", "Free space, for comparison"),
+        (Earth::Mirror, "Mirror", "Perfect ground, for comparison"),
+    ];
+    let (name, sentence) = match chosen {
+        Earth::NoEarth => ("No earth".to_owned(), "Free space, for comparison".to_owned()),
+        Earth::Mirror => ("Mirror".to_owned(), "Perfect ground, for comparison".to_owned()),
+        Earth::Own(soil) => ("own figures".to_owned(), soil_sentence(*soil)),
+        Earth::Catalogue(id) => match catalogue::soil_entry(id) {
+            Ok(entry) => (entry.name.clone(), format!("{}: {}", entry.hint, soil_sentence(entry.soil))),
+            Err(error) => (id.clone(), error.to_string()),
+        },
+    };
+    let picker = ComboBox::from_id_salt("earth").selected_text(name).height(PICK_LIST).show_ui(ui, |ui| {
+        for (earth, name, hint) in ideal {
+            if ui.selectable_label(*chosen == earth, name).explain(hint).clicked() && *chosen != earth {
+                out.push(Command::Edit(Edit::Earth(earth)));
+            }
+        }
+        ui.separator();
+        for entry in catalogue::soils() {
+            let earth = Earth::Catalogue(entry.id.clone());
+            let sentence = format!("{}: {}", entry.hint, soil_sentence(entry.soil));
+            if ui.selectable_label(*chosen == earth, &entry.name).explain(sentence).clicked()
+                && *chosen != earth
+            {
+                out.push(Command::Edit(Edit::Earth(earth)));
+            }
+        }
+    });
+    picker.response.labelled_by(label).explain(sentence);
+}
+
+fn soil_sentence(soil: station::plan::Soil) -> String {
+    let conductivity = station::units::short(soil.conductivity_s_per_m * 1e3);
+    format!(
+        "relative permittivity {}, {conductivity} mS/m",
+        station::units::short(soil.relative_permittivity)
+    )
+}
+
+fn entrance(ui: &mut Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {
+    let at = snapshot.plan.site.entrance;
+    let fields: [Coordinate; 3] = [
+        ("east", "Where the feed line enters the station.", at.x_m, |p, x_m| Point { x_m, ..p }),
+        ("north", "Where the feed line enters the station.", at.y_m, |p, y_m| Point { y_m, ..p }),
+        ("up", "Height of the entrance over the earth.", at.z_m, |p, z_m| Point { z_m, ..p }),
+    ];
+    ui.label("entrance");
+    group(ui, "entrance", |ui| {
+        for (label, sentence, value_m, moved) in fields {
+            if let Some(value_m) = quantity(ui, &length(snapshot, label, sentence, value_m), out) {
+                out.push(Command::Edit(Edit::Entrance(moved(at, value_m))));
+            }
+        }
+    });
+    ui.end_row();
+}
+
+/// Masts, trees, buildings: each with its name, kind, place and height.
+pub(super) fn supports(ui: &mut Ui, snapshot: &Snapshot<'_>, typed: &mut Typed, out: &mut Vec<Command>) {
+    for (index, support) in snapshot.plan.site.supports.iter().enumerate() {
+        ui.push_id(("support", index), |ui| one_support(ui, snapshot, (index, support), typed, out));
+        ui.add_space(6.0);
+    }
+    if button(ui, true, "Add a support", "Another mast; its kind, place and height can be changed") {
+        out.push(Command::Edit(Edit::AddSupport(next_support(&snapshot.plan.site.supports))));
+    }
+}
+
+fn one_support(
+    ui: &mut Ui,
+    snapshot: &Snapshot<'_>,
+    (index, support): (usize, &Support),
+    typed: &mut Typed,
+    out: &mut Vec<Command>,
+) {
+    ui.horizontal(|ui| {
+        let name = format!("name of support {}", index + 1);
+        let sentence = "Wires are made fast to a support by its name.";
+        let field =
+            TextField { name: &name, label: None, sentence, text: &support.name, width: 150.0, rows: 1 };
+        if let (_, Some(name)) = typed.show(ui, &field) {
+            out.push(Command::Edit(Edit::RenameSupport { support: index, name }));
+            out.push(Command::EndOfDrag);
+        }
+        kind(ui, index, support.kind, out);
+        if button(ui, true, "Remove", "Takes this support away; no wire may hang on it") {
+            out.push(Command::Edit(Edit::RemoveSupport { support: index }));
+        }
+    });
+    let foot = support.foot;
+    group(ui, &support.name, |ui| {
+        let place: [Coordinate; 2] = [
+            ("east", "Its foot, to the east.", foot.x_m, |p, x_m| Point { x_m, ..p }),
+            ("north", "Its foot, to the north.", foot.y_m, |p, y_m| Point { y_m, ..p }),
+        ];
+        for (label, sentence, value_m, moved) in place {
+            if let Some(value_m) = quantity(ui, &length(snapshot, label, sentence, value_m), out) {
+                out.push(Command::Edit(Edit::SupportFoot { support: index, foot: moved(foot, value_m) }));
+            }
+        }
+        let unit = snapshot.units.to_metres(1.0);
+        let height = length(snapshot, "height", "Its height over its foot.", support.height_m);
+        let height = Quantity { range: 0.0..=HIGHEST_M / unit, ..height };
+        if let Some(height_m) = quantity(ui, &height, out) {
+            out.push(Command::Edit(Edit::SupportHeight { support: index, height_m }));
+        }
+    });
+}
+
+fn kind(ui: &mut Ui, index: usize, kind: SupportKind, out: &mut Vec<Command>) {
+    let words = |kind| match kind {
+        SupportKind::Mast => "mast",
+        SupportKind::Tree => "tree",
+        SupportKind::Building => "building",
+    };
+    let picker = ComboBox::from_id_salt("kind").width(84.0).selected_text(words(kind)).show_ui(ui, |ui| {
+        for choice in [SupportKind::Mast, SupportKind::Tree, SupportKind::Building] {
+            if ui.selectable_label(kind == choice, words(choice)).clicked() && kind != choice {
+                out.push(Command::Edit(Edit::SupportKind { support: index, kind: choice }));
+            }
+        }
+    });
+    picker.response.accessible_name(format!("kind of support {}", index + 1)).explain("What it is");
+}
+
+/// As high as the last one, a little further on, under a name of its own.
+fn next_support(supports: &[Support]) -> Support {
+    let name = (1_usize..)
+        .map(|number| format!("mast {number}"))
+        .find(|name| supports.iter().all(|support| support.name != *name))
+        .unwrap_or_default();
+    let east_m = supports.iter().map(|support| support.foot.x_m).fold(0.0, f64::max);
+    Support {
+        name,
+        kind: SupportKind::Mast,
+        foot: Point::new(east_m + NEXT_SUPPORT_M, 0.0, 0.0),
+        height_m: supports.last().map_or(10.0, |support| support.height_m),
+    }
+}
