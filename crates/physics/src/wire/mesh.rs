@@ -3,12 +3,12 @@
 use super::error::WireError;
 use super::grading::{Fineness, Wanted};
 use super::segment::Segment;
-use super::skeleton::{End, Skeleton};
+use super::skeleton::{End, Skeleton, StretchEnd};
 use super::structure::{Structure, WireShape};
 use super::vector::{Vec3, distance, dot, lerp, sub};
 
 /// Segments of all wires and the unknown currents between them.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Default)]
 pub(super) struct Mesh {
     pub segments: Vec<Segment>,
     /// Wire that each segment belongs to.
@@ -17,7 +17,18 @@ pub(super) struct Mesh {
     pub port_of: Vec<Option<usize>>,
     /// Straight line that each segment lies on: segments with the same number are collinear.
     pub line_of: Vec<usize>,
+    /// Unknowns of the runs first, then those of joints.
     pub unknowns: Vec<Unknown>,
+    /// Segments that follow one another without a fork.
+    pub runs: Vec<Run>,
+}
+
+/// Unknowns `first_unknown + i` between segments `first_segment + i` and `first_segment + i + 1`.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) struct Run {
+    pub first_segment: usize,
+    pub first_unknown: usize,
+    pub unknowns: usize,
 }
 
 /// A current that flows out of one segment into another, one ampere where they meet and none at their far ends.
@@ -50,13 +61,7 @@ impl Mesh {
         highest_hz: f64,
     ) -> Result<Self, WireError> {
         let wanted = wanted_lengths(structure, skeleton, fineness, highest_hz);
-        let mut mesh = Self {
-            segments: Vec::new(),
-            wire_of: Vec::new(),
-            port_of: Vec::new(),
-            line_of: Vec::new(),
-            unknowns: Vec::new(),
-        };
+        let mut mesh = Self::default();
         let mut end_segments = Vec::with_capacity(skeleton.stretches.len());
         for (index, (stretch, wanted)) in skeleton.stretches.iter().zip(&wanted).enumerate() {
             let [from_m, to_m] = stretch.joints.map(|joint| skeleton.joints[joint].position_m);
@@ -72,10 +77,7 @@ impl Mesh {
                 mesh.line_of.push(index);
             }
             let last = mesh.segments.len() - 1;
-            for segment in first..last {
-                mesh.unknowns
-                    .push(Unknown { arms: [arm(segment, End::To, 1.0), arm(segment + 1, End::From, 1.0)] });
-            }
+            mesh.chain(first, last, skeleton.goes_on(index));
             end_segments.push([first, last]);
         }
         mesh.join(skeleton, &end_segments);
@@ -87,9 +89,29 @@ impl Mesh {
         Ok(mesh)
     }
 
+    /// Adds the unknowns of a stretch, and of its joint to the one before if that goes straight on.
+    fn chain(&mut self, first: usize, last: usize, goes_on: bool) {
+        let from = if goes_on { first - 1 } else { first };
+        match self.runs.last_mut() {
+            Some(run) if goes_on => run.unknowns += last - from,
+            _ => self.runs.push(Run {
+                first_segment: first,
+                first_unknown: self.unknowns.len(),
+                unknowns: last - from,
+            }),
+        }
+        for segment in from..last {
+            self.unknowns
+                .push(Unknown { arms: [arm(segment, End::To, 1.0), arm(segment + 1, End::From, 1.0)] });
+        }
+    }
+
     /// Unknowns of the joints: Kirchhoff's law holds because each takes from one arm what it gives to another.
     fn join(&mut self, skeleton: &Skeleton, end_segments: &[[usize; 2]]) {
         for joint in &skeleton.joints {
+            if joint.stretches.iter().any(|at| at.end == End::From && skeleton.goes_on(at.stretch)) {
+                continue;
+            }
             let ends: Vec<(usize, End)> = joint
                 .stretches
                 .iter()
@@ -129,8 +151,15 @@ impl Mesh {
 }
 
 impl Skeleton {
+    /// Whether a stretch is the plain continuation of the one before it.
+    fn goes_on(&self, stretch: usize) -> bool {
+        let joint = &self.joints[self.stretches[stretch].joints[0]];
+        let both = stretch > 0 && joint.stretches.len() == 2 && !joint.grounded;
+        both && joint.stretches.contains(&StretchEnd { stretch: stretch - 1, end: End::To })
+    }
+
     /// Unit vector from a joint along a stretch.
-    pub fn outward(&self, at: super::skeleton::StretchEnd) -> Vec3 {
+    pub fn outward(&self, at: StretchEnd) -> Vec3 {
         let stretch = &self.stretches[at.stretch];
         let [from_m, to_m] = stretch.joints.map(|joint| self.joints[joint].position_m);
         let along = if at.end == End::From { sub(to_m, from_m) } else { sub(from_m, to_m) };
@@ -188,42 +217,34 @@ fn wanted_lengths(
 
 /// Shortest segment at a joint for its own sake; infinite where the wire just goes on.
 fn shortest_at_joint(structure: &Structure, skeleton: &Skeleton, fineness: &Fineness, joint: usize) -> f64 {
-    let ends = &skeleton.joints[joint].stretches;
-    let wire =
-        |index: usize| -> &WireShape { &structure.wires[skeleton.stretches[ends[index].stretch].wire] };
-    let largest_m = (0..ends.len()).map(|index| finest_radius_m(wire(index))).fold(0.0, f64::max);
-    let mut shortest_m = f64::INFINITY;
-    let own = match ends.len() {
-        1 if skeleton.joints[joint].grounded => f64::INFINITY,
-        1 => fineness.end_radii * largest_m,
-        2 => {
-            let cosine = -dot(skeleton.outward(ends[0]), skeleton.outward(ends[1]));
+    let at = &skeleton.joints[joint];
+    let wires = || at.stretches.iter().map(|end| &structure.wires[skeleton.stretches[end.stretch].wire]);
+    let largest_m = wires().map(|wire| wire.radius_m).fold(0.0, f64::max);
+    let own = match at.stretches[..] {
+        [_] if at.grounded => f64::INFINITY,
+        [_] => fineness.end_radii * largest_m,
+        [a, b] => {
+            let cosine = -dot(skeleton.outward(a), skeleton.outward(b));
             let smooth = cosine >= SMOOTH_BEND_DEG.to_radians().cos();
-            let same = wire(0).radius_m.total_cmp(&wire(1).radius_m).is_eq();
+            let same = wires().all(|wire| wire.radius_m.total_cmp(&largest_m).is_eq());
             if smooth && same { f64::INFINITY } else { fineness.bend_radii * largest_m }
         }
         _ => fineness.bend_radii * largest_m,
     };
-    shortest_m = shortest_m.min(own);
-    let ports = || ends.iter().map(|at| skeleton.stretches[at.stretch].port);
-    for port in ports().flatten() {
-        if ports().any(|other| other != Some(port)) || skeleton.joints[joint].grounded {
-            let gap_m = structure.ports[port].gap_m;
-            shortest_m = shortest_m.min((gap_m / fineness.per_gap).max(fineness.end_radii * largest_m));
-        }
-    }
-    shortest_m
+    let ports = || at.stretches.iter().map(|end| skeleton.stretches[end.stretch].port);
+    let is_edge = |port: &usize| at.grounded || ports().any(|other| other != Some(*port));
+    let gap_m = ports()
+        .flatten()
+        .filter(is_edge)
+        .map(|port| structure.ports[port].gap_m / fineness.per_gap)
+        .fold(f64::INFINITY, f64::min);
+    own.min(gap_m.max(fineness.end_radii * largest_m)).max(wires().map(thinnest_local_m).fold(0.0, f64::max))
 }
 
-/// Radius that the shortest segment is measured in.
-///
-/// The cover's effect on the charge is taken as local. It is, over lengths above the cover's own thickness; on shorter
-/// segments the matrix would take away more than there is.
-fn finest_radius_m(wire: &WireShape) -> f64 {
-    match &wire.material.insulation {
-        Some(cover) => wire.radius_m.max(COVER_RADII * cover.outer_radius_m),
-        None => wire.radius_m,
-    }
+/// Shortest segment for which the cover's effect on the charge is local, as it is taken to be: not much shorter than
+/// the cover is thick. On shorter ones the matrix would take away more than there is.
+fn thinnest_local_m(wire: &WireShape) -> f64 {
+    wire.material.insulation.map_or(0.0, |cover| COVER_RADII * cover.outer_radius_m)
 }
 
 /// Shortest segment of an insulated wire, in radii over the cover.
