@@ -99,12 +99,13 @@ impl Plot {
 
     fn ranges(self, shown: &Shown<'_>) -> ((f64, f64), (f64, f64)) {
         let curves = shown.curves;
-        let along = (-0.02 * curves.longest, 1.02 * curves.longest);
+        // Some air at the lower left, where the first labels of both axes meet.
+        let along = (-0.06 * curves.longest, 1.02 * curves.longest);
         match self {
             Self::Impedance => (curves.mhz, curves.ohms),
             Self::AtFeedpoint | Self::Before | Self::After => (curves.mhz, (-0.03, 1.03)),
-            Self::Volts => (along, (0.0, curves.tops.0)),
-            Self::Amperes => (along, (0.0, curves.tops.1)),
+            Self::Volts => (along, (-0.05 * curves.tops.0, curves.tops.0)),
+            Self::Amperes => (along, (-0.05 * curves.tops.1, curves.tops.1)),
         }
     }
 }
