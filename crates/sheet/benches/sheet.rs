@@ -1,5 +1,7 @@
 //! How long a sheet takes: layout, PDF, SVG, picture. The target for the PDF is 300 ms, the aim 100 ms.
 
+#![allow(clippy::unwrap_used)] // A panic is the failure.
+
 #[path = "../tests/support/mod.rs"]
 mod support;
 

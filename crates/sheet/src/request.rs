@@ -64,7 +64,7 @@ impl fmt::Display for Date {
 
 /// Days of a month in the Gregorian calendar.
 fn days_of(year: u16, month: u16) -> u16 {
-    let is_leap = (year % 4 == 0 && year % 100 != 0) || year % 400 == 0;
+    let is_leap = (year.is_multiple_of(4) && !year.is_multiple_of(100)) || year.is_multiple_of(400);
     match month {
         2 if is_leap => 29,
         2 => 28,

@@ -1,12 +1,25 @@
 //! Nothing overlaps, nothing leaves the page, and the sheet is as long as promised.
 
+#![allow(clippy::unwrap_used)] // A panic is the failure.
+
 mod support;
 
-use sheet::scene::{Item, Scene, Spot, overlap};
+use sheet::scene::{Item, Scene, Spot, Text, overlap};
 use sheet::{SheetRequest, lay_out};
 
 /// Printers leave about this much of the edge white (common practice: 4 to 6 mm), mm.
 const PRINTABLE_MM: f64 = 6.0;
+
+/// Least gap between the boxes of two texts beside each other, mm: a narrow space.
+const GAP_MM: f64 = 0.7;
+
+/// The box of a text, wider by the least gap.
+fn widened(text: &Text) -> [Spot; 4] {
+    let [a, b, c, d] = text.corners();
+    let (sin, cos) = text.turn_deg.to_radians().sin_cos();
+    let shift = |p: Spot| Spot::new(p.x_mm + GAP_MM * cos, p.y_mm + GAP_MM * sin);
+    [a, shift(b), shift(c), d]
+}
 
 fn pages(station: &support::Station, request: &SheetRequest) -> Vec<Scene> {
     lay_out(&station.plan, &station.report, request).unwrap()
@@ -27,7 +40,7 @@ fn every_page(check: impl Fn(&str, &Scene)) {
 fn no_two_texts_overlap() {
     every_page(|which, page| {
         let boxes: Vec<([Spot; 4], &str)> =
-            page.texts().map(|text| (text.corners(), text.text.as_str())).collect();
+            page.texts().map(|text| (widened(text), text.text.as_str())).collect();
         for (index, (a, words)) in boxes.iter().enumerate() {
             for (b, others) in &boxes[index + 1..] {
                 assert!(!overlap(a, b), "{which}: \"{words}\" lies on \"{others}\"");

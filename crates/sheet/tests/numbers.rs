@@ -1,5 +1,7 @@
 //! What the report says stands on the paper, and can be taken from the PDF again.
 
+#![allow(clippy::unwrap_used)] // A panic is the failure.
+
 mod support;
 
 use std::collections::HashSet;
@@ -194,7 +196,7 @@ fn the_title_is_the_plans() {
     let station = support::station("relief post", support::relief_post());
     let pdf = pdf_for(&station.plan, &station.report, &request(Paper::A4, Units::Metres)).unwrap();
     let document = Document::load_mem(&pdf).unwrap();
-    let info = document.trailer.get(b"Info").and_then(|info| info.as_reference()).unwrap();
+    let info = document.trailer.get(b"Info").and_then(lopdf::Object::as_reference).unwrap();
     let info = document.get_object(info).unwrap().as_dict().unwrap();
     let title = String::from_utf8_lossy(info.get(b"Title").unwrap().as_str().unwrap()).into_owned();
     assert!(title.contains("Salt pan relief post"), "{title}");

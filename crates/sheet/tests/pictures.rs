@@ -1,5 +1,7 @@
 //! The same scene as SVG and as a picture, and a code that a telephone can read.
 
+#![allow(clippy::unwrap_used)] // A panic is the failure.
+
 mod support;
 
 use sheet::scene::Scene;

@@ -1,6 +1,6 @@
 //! Invented stations, evaluated, and the demo stations.
 
-#![allow(dead_code)] // Each test binary uses its part.
+#![allow(dead_code, clippy::unwrap_used)] // Each test binary uses its part; a panic is the failure.
 
 use sheet::{Date, Paper, SheetRequest};
 use station::evaluate::Evaluator;
