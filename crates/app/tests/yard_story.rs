@@ -68,7 +68,7 @@ impl Desk {
         show(ui, &snapshot, &mut self.yard, &mut out);
         for command in &out {
             if let Command::Edit(edit) = command {
-                self.plan = edit::apply(&self.plan, edit).unwrap().plan;
+                self.plan = edit::apply(&self.plan, edit).expect("the Yard asks for what can be done").plan;
             }
         }
         self.asked.extend(out);
@@ -78,7 +78,7 @@ impl Desk {
 type Yard = Harness<'static, Desk>;
 
 fn yard(plan: Plan) -> Yard {
-    let report = Evaluator::new().evaluate(&plan, 1).unwrap();
+    let report = Evaluator::new().evaluate(&plan, 1).expect("a sound plan");
     let yard = YardState::default();
     let desk = Desk { plan, report, yard, units: Units::Metres, moving: false, asked: Vec::new() };
     let mut harness = Harness::builder()

@@ -7,6 +7,8 @@ use eframe::egui::{Pos2, Rect, Vec2, vec2};
 const CLEARANCE: f32 = 2.0;
 /// How far apart two tries on one side are, px.
 const STRIDE: f32 = 7.0;
+/// How far a label below and to a side begins from its anchor, px: clear of a mast.
+const CORNER: f32 = 8.0;
 /// How much farther away a better side may be, px.
 const RELUCTANCE: f32 = 28.0;
 
@@ -18,6 +20,8 @@ pub enum Side {
     Below,
     Left,
     Right,
+    BelowLeft,
+    BelowRight,
 }
 
 /// What a label asks for.
@@ -65,6 +69,15 @@ impl Board {
         self.frame.contains_rect(rect) && !self.taken.iter().any(|t| t.intersects(rect))
     }
 
+    /// Takes a certain place if nothing stands there.
+    pub fn take(&mut self, rect: Rect) -> bool {
+        let free = self.is_free(rect);
+        if free {
+            self.block(rect);
+        }
+        free
+    }
+
     /// Finds a place and takes it.
     pub fn place(&mut self, wanted: &Wanted<'_>) -> Option<Placed> {
         let (first, last) = (*wanted.reach.start(), *wanted.reach.end());
@@ -97,6 +110,8 @@ pub fn beside(anchor: Pos2, side: Side, distance: f32, size: Vec2) -> Rect {
         Side::Below => vec2(0.0, distance + 0.5 * size.y),
         Side::Left => vec2(-distance - 0.5 * size.x, 0.0),
         Side::Right => vec2(distance + 0.5 * size.x, 0.0),
+        Side::BelowLeft => vec2(-CORNER - 0.5 * size.x, distance + 0.5 * size.y),
+        Side::BelowRight => vec2(CORNER + 0.5 * size.x, distance + 0.5 * size.y),
     };
     Rect::from_center_size(anchor + offset, size)
 }

@@ -16,6 +16,8 @@ use super::wave::{Size, Wave, WaveMark};
 pub const GUTTER: Vec2 = vec2(44.0, 24.0);
 /// Reach of a grip around its middle, px.
 pub const GRIP_PX: f32 = 11.0;
+/// How far off the wire the sign of a loop or node stands, where it gives way, px.
+const SIGN_PX: f32 = 15.0;
 /// Closest that two grips stand, px.
 const GRIP_GAP_PX: f32 = 20.0;
 /// Space between the plot's edge and what stands at it, px.
@@ -178,6 +180,7 @@ impl<'a> Layout<'a> {
         };
         layout.lay_waves(model, asking);
         layout.lay_handles(model);
+        layout.lay_signs();
         layout.lay_texts(model, asking, measure);
         layout
     }
@@ -191,6 +194,21 @@ impl<'a> Layout<'a> {
             let Some(wave) = Wave::along(&self.view, wire, source, size) else { continue };
             self.marks.extend(wave.marks(&self.view, wire));
             self.waves.push((index, wave));
+        }
+    }
+
+    /// At the feedpoint the sign of a loop or node stands off the wire, so that both can be seen.
+    fn lay_signs(&mut self) {
+        let Some(feedpoint) = self.handles.iter().find(|h| h.grip == Grip::Feedpoint) else { return };
+        for mark in &mut self.marks {
+            if feedpoint.at.distance(mark.at) > GRIP_PX {
+                continue;
+            }
+            let free = |at: &Pos2| {
+                self.handles.iter().all(|h| h.grip.is_new_point() || h.at.distance(*at) > GRIP_PX)
+            };
+            let tries = [SIGN_PX, -SIGN_PX, 2.5 * SIGN_PX].map(|px| mark.at + mark.off * px);
+            mark.sign = tries.into_iter().find(free).unwrap_or(tries[0]);
         }
     }
 

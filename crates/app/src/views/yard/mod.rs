@@ -166,7 +166,7 @@ fn steer(
     };
     let pointer =
         ui.input(|i| i.pointer.hover_pos()).filter(|p| plot.contains(*p) && ui.rect_contains_pointer(plot));
-    let zoom = f64::from(ui.input(|i| i.zoom_delta()));
+    let zoom = f64::from(ui.input(eframe::egui::InputState::zoom_delta));
     if let (Some(pointer), true) = (pointer, (zoom - 1.0).abs() > 1e-6) {
         camera = camera.zoomed(zoom, pointer, plot);
         state.by_hand = true;

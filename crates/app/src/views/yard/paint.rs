@@ -185,14 +185,10 @@ fn paint_wave(painter: &Painter, wave: &Wave<'_>, look: &Look<'_>) {
 }
 
 fn paint_marks(painter: &Painter, layout: &Layout<'_>, look: &Look<'_>) {
-    let feedpoint = layout.handles.iter().find(|h| h.grip == Grip::Feedpoint).map(|h| h.at);
     for mark in &layout.marks {
-        // At the feedpoint the mark stands off the wire, so that both can be seen.
-        let hidden = feedpoint.is_some_and(|at| at.distance(mark.at) < GRIP_PX);
-        let at = if hidden { mark.at + mark.off * 15.0 } else { mark.at };
         match mark.mark.kind {
-            MarkKind::CurrentLoop => things::lozenge(painter, at, look),
-            MarkKind::CurrentNode => things::circle(painter, at, look),
+            MarkKind::CurrentLoop => things::lozenge(painter, mark.sign, look),
+            MarkKind::CurrentNode => things::circle(painter, mark.sign, look),
         }
     }
 }

@@ -17,8 +17,6 @@ const WORDY: usize = 4;
 const OUTLINE_STRIDE: usize = 3;
 /// Reach around a wire's end in which the mark of a node already says the volts, px.
 const END_REACH_PX: f32 = 14.0;
-/// Height from which there is room for the legend, px.
-const LEGEND_FROM_PX: f32 = 200.0;
 /// Room that the legend needs, px.
 pub const LEGEND: Vec2 = vec2(470.0, 16.0);
 
@@ -55,6 +53,7 @@ impl<'a> Layout<'a> {
         writer.board.block(self.buttons);
         self.write_heading(&mut writer, asking);
         self.block_things(&mut writer.board);
+        self.write_legend(&mut writer, asking);
         self.write_supports(&mut writer, model);
         self.write_marks(&mut writer);
         self.write_ends(&mut writer);
@@ -63,8 +62,7 @@ impl<'a> Layout<'a> {
     }
 
     fn write_heading(&mut self, writer: &mut Writer<'_, '_>, asking: &Asking<'_>) {
-        let plot = self.view.frame;
-        let corner = plot.left_top() + vec2(EDGE_PX, EDGE_PX);
+        let corner = self.view.frame.left_top() + vec2(EDGE_PX, EDGE_PX);
         let choices = match asking.band {
             None => vec!["no answer yet".to_owned()],
             Some(band) => {
@@ -83,13 +81,16 @@ impl<'a> Layout<'a> {
         let rect = Rect::from_min_size(corner, size);
         writer.board.block(rect);
         writer.texts.push(Text { rect, text: text.clone(), ink: Ink::Text, size: Type::Body });
-        let top =
-            if corner.x + LEGEND.x > self.buttons.left() { self.buttons.bottom() } else { rect.bottom() };
-        let legend = Rect::from_min_size(pos2(corner.x, top + 4.0), LEGEND);
-        if asking.band.is_some() && plot.height() > LEGEND_FROM_PX && legend.right() < plot.right() {
-            writer.board.block(legend);
-            self.legend = Some(legend);
-        }
+    }
+
+    /// The legend goes under the heading, if nothing else is there.
+    fn write_legend(&mut self, writer: &mut Writer<'_, '_>, asking: &Asking<'_>) {
+        let Some(heading) = writer.texts.first().map(|text| text.rect) else { return };
+        let beside_buttons = heading.left() + LEGEND.x < self.buttons.left();
+        let top = if beside_buttons { heading.bottom() } else { self.buttons.bottom().max(heading.bottom()) };
+        let legend = Rect::from_min_size(pos2(heading.left(), top + 4.0), LEGEND);
+        let wanted = asking.band.is_some() && !self.marks.is_empty();
+        self.legend = (wanted && writer.board.take(legend)).then_some(legend);
     }
 
     /// Labels keep out of the wave, the lines, the supports and the grips.
@@ -109,6 +110,9 @@ impl<'a> Layout<'a> {
         }
         for support in &self.supports {
             board.block(Rect::from_two_pos(support.foot, support.top).expand2(vec2(4.0, 2.0)));
+        }
+        for mark in &self.marks {
+            board.block(Rect::from_center_size(mark.sign, Vec2::splat(14.0)));
         }
         for handle in self.handles.iter().filter(|h| !h.grip.is_new_point()) {
             board.block(Rect::from_center_size(handle.at, Vec2::splat(14.0)));
@@ -140,7 +144,8 @@ impl<'a> Layout<'a> {
                 if mark.off.x >= 0.0 { (Side::Right, Side::Left) } else { (Side::Left, Side::Right) };
             // On a steep wire there is more room beside it than above it.
             let steep = mark.off.x.abs() > mark.off.y.abs();
-            let sides = if steep { [out, back, first, second] } else { [first, second, out, back] };
+            let [a, b, c, d] = if steep { [out, back, first, second] } else { [first, second, out, back] };
+            let sides = [a, b, c, d, Side::BelowLeft, Side::BelowRight];
             let mut choices = vec![format!("{words} {number}"), number];
             if self.marks.len() > WORDY {
                 choices.remove(0);

@@ -118,6 +118,8 @@ impl Sample {
 pub struct WaveMark {
     /// Its place on the wire.
     pub at: Pos2,
+    /// Where its sign is drawn: at its place, or off the wire where a grip is in the way.
+    pub sign: Pos2,
     /// Away from the wire, on the side of plus.
     pub off: Vec2,
     /// What it is and where.
@@ -246,7 +248,7 @@ impl<'a> Wave<'a> {
             let arc_m = mark.arc_m / self.stretch;
             let run_px = track.run_px(arc_m);
             let at = view.at(wire.point_at(arc_m));
-            WaveMark { at, off: track.off(run_px), mark, reading: self.read(arc_m) }
+            WaveMark { at, sign: at, off: track.off(run_px), mark, reading: self.read(arc_m) }
         };
         self.source.marks.iter().map(mark).collect()
     }
