@@ -37,20 +37,20 @@ fn entry(
     Entry { keys: KeyboardShortcut::new(modifiers, key), heard, words, command }
 }
 
-/// All of them. Those with more modifiers stand first: the shorter ones would answer to them, too.
+/// All of them, in the order of the list.
 #[must_use]
 pub fn table() -> [Entry; 17] {
     use Heard::{Always, WhenNotTyping, WhenNothingHasFocus};
     [
-        entry((CTRL_SHIFT, Key::S), Always, "Save the plan under another name", |_| {
-            Command::Desk(Desk::SaveAs)
-        }),
-        entry((CTRL_SHIFT, Key::Z), WhenNotTyping, "Redo the step that was undone", |_| Command::Redo),
         entry((CTRL, Key::N), Always, "New plan", |_| Command::Desk(Desk::NewPlan)),
         entry((CTRL, Key::O), Always, "Open a plan", |_| Command::Desk(Desk::Open)),
         entry((CTRL, Key::S), Always, "Save the plan", |_| Command::Desk(Desk::Save)),
+        entry((CTRL_SHIFT, Key::S), Always, "Save the plan under another name", |_| {
+            Command::Desk(Desk::SaveAs)
+        }),
         entry((CTRL, Key::P), Always, "Save the sheet as PDF", |_| Command::Desk(Desk::SaveSheet)),
         entry((CTRL, Key::Z), WhenNotTyping, "Undo the last step", |_| Command::Undo),
+        entry((CTRL_SHIFT, Key::Z), WhenNotTyping, "Redo the step that was undone", |_| Command::Redo),
         entry((CTRL, Key::Y), WhenNotTyping, "Redo the step that was undone", |_| Command::Redo),
         entry((CTRL, Key::Q), Always, "Quit", |_| Command::Desk(Desk::Quit)),
         entry((CTRL, Key::Num1), Always, "Look at the yard", |_| Command::Show(Show::View(View::Yard))),
@@ -74,7 +74,10 @@ pub fn table() -> [Entry; 17] {
 pub fn pressed(ctx: &egui::Context, looks: &Looks) -> Vec<Command> {
     let typing = ctx.text_edit_focused();
     let focused = ctx.memory(|memory| memory.focused().is_some());
-    table()
+    let mut table = table();
+    // Those with Shift first: the same key without it would answer to them, too.
+    table.sort_by_key(|entry| !entry.keys.modifiers.shift);
+    table
         .into_iter()
         .filter(|entry| match entry.heard {
             Heard::Always => true,

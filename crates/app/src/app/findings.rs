@@ -1,6 +1,6 @@
 //! What the evaluator wants the user to know, in the status bar: how many, and on a click each sentence.
 
-use eframe::egui::{Color32, Label, RichText, Ui};
+use eframe::egui::{Align, Color32, Label, Layout, RichText, Ui};
 use sheet::tokens::{Ground, Ink};
 use station::report::{Finding, Place, Weight};
 
@@ -17,9 +17,11 @@ pub(super) fn show(ui: &mut Ui, findings: &[Finding], out: &mut Vec<Command>) {
     let words = RichText::new(counted(findings)).small().color(color(worst, ground));
     let menu = ui.menu_button(words, |ui| {
         ui.set_width(LIST_WIDTH);
-        for finding in findings {
-            entry(ui, finding, ground, out);
-        }
+        ui.with_layout(Layout::top_down(Align::Min), |ui| {
+            for finding in findings {
+                entry(ui, finding, ground, out);
+            }
+        });
     });
     menu.response.explain("What to look at before you build; click for the sentences");
 }

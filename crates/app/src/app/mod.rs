@@ -210,6 +210,7 @@ impl Wirewright {
                 _ => commands.extend(pressed),
             }
         }
+        drop_hint(&ctx);
         self.desk.show_dialog(&ctx, &mut self.document);
         for command in commands {
             self.obey(&ctx, command);
@@ -221,6 +222,20 @@ impl Wirewright {
         self.answers.ask(&ctx, &self.document);
         self.set_title(&ctx);
     }
+}
+
+/// While a file is held over the window.
+fn drop_hint(ctx: &egui::Context) {
+    if ctx.input(|input| input.raw.hovered_files.is_empty()) {
+        return;
+    }
+    let area =
+        egui::Area::new(egui::Id::unique("drop hint")).anchor(egui::Align2::CENTER_CENTER, egui::Vec2::ZERO);
+    area.order(egui::Order::Foreground).interactable(false).show(ctx, |ui| {
+        egui::Frame::popup(ui.style())
+            .inner_margin(24.0)
+            .show(ui, |ui| ui.heading("Let go to open this plan"));
+    });
 }
 
 impl eframe::App for Wirewright {

@@ -20,6 +20,7 @@ enum Reply {
 }
 
 const WIDTH: f32 = 460.0;
+const MARGIN: f32 = 18.0;
 
 impl Desk {
     /// Paints the dialog that is open, and the bar of the notice through [`Desk::show_notice`] elsewhere.
@@ -158,7 +159,8 @@ fn type_a_path(ui: &mut egui::Ui, typed: &mut Typed, recent: &[std::path::PathBu
 
 /// A box over the dimmed window. Escape and a click beside it close it.
 fn modal(ctx: &egui::Context, content: impl FnOnce(&mut egui::Ui) -> Reply) -> Reply {
-    let response = egui::Modal::new(Id::unique("dialog")).show(ctx, |ui| {
+    let frame = egui::Frame::popup(&ctx.global_style()).inner_margin(MARGIN);
+    let response = egui::Modal::new(Id::unique("dialog")).frame(frame).show(ctx, |ui| {
         ui.set_width(WIDTH.min(ui.ctx().content_rect().width() - 40.0));
         content(ui)
     });

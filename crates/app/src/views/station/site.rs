@@ -167,9 +167,11 @@ pub(super) fn supports(ui: &mut Ui, snapshot: &Snapshot<'_>, typed: &mut Typed, 
         ui.push_id(("support", index), |ui| one_support(ui, snapshot, (index, support), typed, out));
         ui.add_space(6.0);
     }
-    if button(ui, true, "Add a support", "Another mast; its kind, place and height can be changed") {
-        out.push(Command::Edit(Edit::AddSupport(next_support(&snapshot.plan.site.supports))));
-    }
+    ui.horizontal(|ui| {
+        if button(ui, true, "Add a support", "Another mast; its kind, place and height can be changed") {
+            out.push(Command::Edit(Edit::AddSupport(next_support(&snapshot.plan.site.supports))));
+        }
+    });
 }
 
 fn one_support(
