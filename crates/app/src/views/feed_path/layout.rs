@@ -16,6 +16,7 @@ const TRANSMITTER: f32 = 34.0;
 const NAME: f32 = 19.0;
 const LINE: f32 = 15.0;
 const BLOCK_PAD: f32 = 3.0;
+const BLOCK_SIDE: f32 = 6.0;
 /// A column narrower than this has no room for two figures side by side.
 const NARROW: f32 = 104.0;
 /// The path between two blocks, at least and at most.
@@ -69,14 +70,14 @@ fn block_height(width: f32) -> f32 {
 /// The line of a block's name.
 #[must_use]
 pub fn name_line(block: Rect) -> Rect {
-    let inner = block.shrink2([8.0, BLOCK_PAD].into());
+    let inner = block.shrink2([BLOCK_SIDE, BLOCK_PAD].into());
     inner.with_max_y(inner.top() + NAME - 1.0)
 }
 
 /// A line of a block's figures.
 #[must_use]
 pub fn figure_line(block: Rect, index: usize) -> Rect {
-    let inner = block.shrink2([8.0, BLOCK_PAD].into());
+    let inner = block.shrink2([BLOCK_SIDE, BLOCK_PAD].into());
     let top = inner.top() + NAME + index as f32 * LINE;
     Rect::from_x_y_ranges(inner.x_range(), top..=top + LINE)
 }

@@ -87,11 +87,10 @@ fn column<'a>(snapshot: &Snapshot<'a>, index: usize, feed: &'a Feed) -> Column<'
             left_w -= f.links[link].watts_lost;
             Figures { watts_in, watts_out: left_w, link: f.links[link] }
         });
-        let setting = found.map(|f| f.setting.is_some());
         Block {
             link,
             name: link_name(&feed.links[link]),
-            detail: detail(&feed.links[link], setting, snapshot.units),
+            detail: detail(&feed.links[link], found, snapshot.units),
             figures,
         }
     });
@@ -145,14 +144,15 @@ pub fn line_name(line: &LineChoice) -> String {
     }
 }
 
-fn detail(link: &Link, unit_is_set: Option<bool>, units: Units) -> String {
+fn detail(link: &Link, found: Option<&FeedReport>, units: Units) -> String {
     match link {
         Link::Transformer(transformer) => format!("{} : 1", units::short(transformer.impedance_ratio)),
         Link::Line(piece) => units.length(piece.length_m),
-        Link::MatchingUnit(_) => match unit_is_set {
+        Link::MatchingUnit(_) => match found.map(|f| (f.setting, f.shortfall)) {
             None => String::new(),
-            Some(true) => "set".to_owned(),
-            Some(false) => "bypassed".to_owned(),
+            Some((Some(_), _)) => "set".to_owned(),
+            Some((None, Some(_))) => "no setting".to_owned(),
+            Some((None, None)) => "bypassed".to_owned(),
         },
     }
 }

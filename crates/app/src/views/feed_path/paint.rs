@@ -141,18 +141,24 @@ pub(super) fn block(ui: &egui::Ui, view: &View<'_>, place: usize, response: &Res
             units::amperes(link.rms_a),
         ]);
     }
-    let narrow = layout::is_narrow(rect.width());
-    for (index, text) in texts.into_iter().enumerate() {
-        let job = LayoutJob::single_section(text, small.clone());
-        if narrow {
-            text_in(ui.painter(), layout::figure_line(rect, index), job);
-            continue;
+    let job = |text: &str| LayoutJob::single_section(text.to_owned(), small.clone());
+    if layout::is_narrow(rect.width()) {
+        for (index, text) in texts.iter().enumerate() {
+            text_in(ui.painter(), layout::figure_line(rect, index), job(text));
         }
-        // Two figures share a line: one from the left, one from the right.
-        let line = layout::figure_line(rect, index / 2);
-        let galley = marks::one_line(ui.painter(), job, line.width());
-        let x = if index % 2 == 0 { line.left() } else { line.right() - galley.size().x };
-        ui.painter().galley(pos2(x, line.center().y - 0.5 * galley.size().y), galley, Color32::PLACEHOLDER);
+        return;
+    }
+    // Two figures share a line: one from the left, one from the right.
+    for (index, pair) in texts.chunks(2).enumerate() {
+        let line = layout::figure_line(rect, index);
+        let mut end = line.right();
+        if let Some(text) = pair.get(1) {
+            let right = marks::one_line(ui.painter(), job(text), line.width());
+            let at = pos2(end - right.size().x, line.center().y - 0.5 * right.size().y);
+            ui.painter().galley(at, right, Color32::PLACEHOLDER);
+            end = at.x - 3.0;
+        }
+        text_in(ui.painter(), line.with_max_x(end), job(&pair[0]));
     }
 }
 
