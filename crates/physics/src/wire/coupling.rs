@@ -4,6 +4,7 @@
 //! their distances serve the part of the kernel that depends on frequency. Pairs that are near against their length get
 //! the static part as exact moments instead, as a correction to what the Gauss points give.
 
+use super::lanes::{PAD, padded};
 use super::moments::{Axis, Moments, collinear, skew};
 use super::segment::Segment;
 use super::vector::{Vec3, advance, distance, dot, mirrored, nearest, sub};
@@ -17,22 +18,29 @@ const NEAR: f64 = 1.5;
 /// Pairs of segments, lower triangle with the diagonal, row by row.
 #[derive(Clone, Debug)]
 pub(super) struct Coupling {
-    /// Distances of Gauss points, m: − to −, − to +, + to −, + to +, first sign that of the row's segment.
-    pub distance_m: [Vec<f64>; 4],
-    /// 1/R, 1/m.
-    pub inverse_per_m: [Vec<f64>; 4],
-    /// Cosine of the angle between the two currents.
-    pub cosine: Vec<f64>,
-    /// Corrections of near pairs, by row, then column.
-    pub near: Vec<Near>,
+    rows: Vec<Row>,
+    /// Of every row, in blocks of [`PAD`] pairs, [`FIELDS`] fields after one another: distances of Gauss points in m
+    /// (− to −, − to +, + to −, + to +, first sign that of the row's segment), 1/R, and the cosine between the currents.
+    table: Vec<f64>,
+    /// Static corrections, by row.
+    near: Vec<Near>,
     /// −1 for images of current and charge in the mirror.
     pub sign: f64,
+}
+
+/// Fields of a pair.
+pub(super) const FIELDS: usize = 9;
+
+/// One row's part in the tables.
+#[derive(Clone, Copy, Debug)]
+struct Row {
+    table: [usize; 2],
+    near: [usize; 2],
 }
 
 /// Static correction of a near pair, in sums over pairs of Gauss points, 1/m.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Near {
-    pub row: usize,
     pub column: usize,
     /// Of Σ 1/R, Σ ±1/R with the row's sign, with the column's, with both.
     pub sums: [f64; 4],
@@ -55,46 +63,64 @@ impl Coupling {
             Sources::Themselves => axes.clone(),
             Sources::Images => axes.iter().map(Axis::image).collect(),
         };
-        let pairs = segments.len() * (segments.len() + 1) / 2;
+        let length = (0..axes.len()).map(|row| FIELDS * padded(row + 1)).sum();
         let mut coupling = Self {
-            distance_m: std::array::from_fn(|_| Vec::with_capacity(pairs)),
-            inverse_per_m: std::array::from_fn(|_| Vec::with_capacity(pairs)),
-            cosine: Vec::with_capacity(pairs),
+            rows: Vec::with_capacity(axes.len()),
+            table: vec![0.0; length],
             near: Vec::new(),
             sign: if sources == Sources::Images { -1.0 } else { 1.0 },
         };
+        let mut begin = 0;
         for (row, p) in axes.iter().enumerate() {
+            let first_near = coupling.near.len();
             for (column, q) in source_axes[..=row].iter().enumerate() {
                 let relation = match sources {
                     Sources::Themselves if line_of[row] == line_of[column] => Relation::OneLine,
                     Sources::Images if p.is_vertical_over(q) => Relation::OneLine,
                     _ => Relation::between(p, q),
                 };
-                coupling.push(p, q, &relation, (row, column));
+                coupling.set(p, q, &relation, (begin, column));
             }
+            let end = begin + FIELDS * padded(row + 1);
+            coupling.rows.push(Row { table: [begin, end], near: [first_near, coupling.near.len()] });
+            begin = end;
         }
         coupling
     }
 
-    fn push(&mut self, p: &Axis, q: &Axis, relation: &Relation, (row, column): (usize, usize)) {
+    /// Blocks of fields of a row.
+    pub fn table(&self, row: usize) -> &[f64] {
+        let [begin, end] = self.rows[row].table;
+        &self.table[begin..end]
+    }
+
+    /// Static corrections of a row.
+    pub fn near(&self, row: usize) -> &[Near] {
+        let [begin, end] = self.rows[row].near;
+        &self.near[begin..end]
+    }
+
+    /// Fills in the pair of a row that begins at `begin` with a column.
+    fn set(&mut self, p: &Axis, q: &Axis, relation: &Relation, (begin, column): (usize, usize)) {
         let c2 = relation.softening2(p, q);
         let [p_points, q_points] = [p, q].map(|axis| [axis.end(-GAUSS), axis.end(GAUSS)]);
         let distances = [(0, 0), (0, 1), (1, 0), (1, 1)].map(|(a, b)| {
             let d = sub(p_points[a], q_points[b]);
             (dot(d, d) + c2).sqrt()
         });
+        let at = begin + FIELDS * PAD * (column / PAD) + column % PAD;
         for (index, distance_m) in distances.into_iter().enumerate() {
-            self.distance_m[index].push(distance_m);
-            self.inverse_per_m[index].push(distance_m.recip());
+            self.table[at + PAD * index] = distance_m;
+            self.table[at + PAD * (4 + index)] = distance_m.recip();
         }
-        self.cosine.push(dot(p.direction, q.direction));
+        self.table[at + PAD * 8] = dot(p.direction, q.direction);
         let moments = match relation {
             _ if !p.is_near(q) => return,
             Relation::OneLine => collinear(p, q),
             _ if p.length_m <= q.length_m => skew(p, q, c2.sqrt()),
             _ => skew(q, p, c2.sqrt()).exchanged(),
         };
-        self.near.push(Near { row, column, sums: moments.correction(p, q, distances) });
+        self.near.push(Near { column, sums: moments.correction(p, q, distances) });
     }
 }
 

@@ -1,174 +1,269 @@
 //! The matrix of the moment method at one frequency.
-
-use std::f64::consts::TAU;
+//!
+//! Everything here is over jkη/4π, the factor that all couplings share.
 
 use num_complex::Complex64;
+use pulp::{Arch, Simd, WithSimd};
 
-use super::coupling::{Coupling, GAUSS};
-use super::mesh::{Arm, Mesh};
+use super::coupling::{Coupling, FIELDS, GAUSS};
+use super::lanes::{Lanes, PAD, padded};
+use super::mesh::{Mesh, Run};
 use super::shapes::Shapes;
-use super::skeleton::End;
-use super::structure::WireShape;
-use crate::constants::{VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
+use super::shares::Shares;
+use super::symmetric::Symmetric;
 
-/// A symmetric complex matrix, lower triangle row by row, real and imaginary parts apart.
-#[derive(Clone, Debug, Default)]
-pub(super) struct Symmetric {
-    pub order: usize,
-    pub re: Vec<f64>,
-    pub im: Vec<f64>,
-}
-
-impl Symmetric {
-    pub fn zero(order: usize) -> Self {
-        let length = order * (order + 1) / 2;
-        Self { order, re: vec![0.0; length], im: vec![0.0; length] }
-    }
-
-    pub fn at(&self, row: usize, column: usize) -> Complex64 {
-        let index = Self::index(row.max(column), row.min(column));
-        Complex64::new(self.re[index], self.im[index])
-    }
-
-    fn index(row: usize, column: usize) -> usize {
-        row * (row + 1) / 2 + column
-    }
-
-    fn add(&mut self, row: usize, column: usize, value: Complex64) {
-        let index = Self::index(row, column);
-        self.re[index] += value.re;
-        self.im[index] += value.im;
-    }
-}
-
-/// Impedances between the end currents of two segments, Ω: `ohm[a][b]` with 0 for the beginning, 1 for the end.
-type Block = [[Complex64; 2]; 2];
-
-/// Which unknowns have a share in the current at an end of a segment.
-#[derive(Clone, Debug)]
-pub(super) struct Shares {
-    /// By segment, then beginning and end: unknown and its sign there.
-    at_ends: Vec<[Vec<(usize, f64)>; 2]>,
-}
-
-impl Shares {
-    pub fn new(mesh: &Mesh) -> Self {
-        let mut at_ends = vec![[Vec::new(), Vec::new()]; mesh.segments.len()];
-        for (index, unknown) in mesh.unknowns.iter().enumerate() {
-            for &Arm { segment, end, sign } in unknown.arms.iter().flatten() {
-                at_ends[segment][usize::from(end == End::To)].push((index, sign));
-            }
-        }
-        Self { at_ends }
-    }
-
-    /// Adds the block of two segments to the matrix.
-    fn scatter(&self, matrix: &mut Symmetric, (p, q): (usize, usize), block: &Block) {
-        for (a, a_shares) in self.at_ends[p].iter().enumerate() {
-            for (b, b_shares) in self.at_ends[q].iter().enumerate() {
-                for &(u, u_sign) in a_shares {
-                    for &(v, v_sign) in b_shares {
-                        let ohm = u_sign * v_sign * block[a][b];
-                        if p == q {
-                            if u >= v {
-                                matrix.add(u, v, ohm);
-                            }
-                        } else if u == v {
-                            // The transposed block counts as well.
-                            matrix.add(u, v, 2.0 * ohm);
-                        } else {
-                            matrix.add(u.max(v), u.min(v), ohm);
-                        }
-                    }
-                }
-            }
-        }
-    }
-}
-
-/// Matrix of all couplings and of the wires' own impedance.
+/// Matrix of all couplings, plus `own[segment]`: what a segment's end currents do to themselves and to each other.
 pub(super) fn matrix(
     mesh: &Mesh,
     shares: &Shares,
     couplings: &[Coupling],
-    wires: &[WireShape],
-    frequency_hz: f64,
+    own: &[[Complex64; 2]],
+    k: f64,
 ) -> Symmetric {
-    let k = wave_number_rad_per_m(frequency_hz);
-    let shapes: Vec<Shapes> =
-        mesh.segments.iter().map(|segment| Shapes::new(k, segment.length_m())).collect();
     let mut matrix = Symmetric::zero(mesh.unknowns.len());
-    for coupling in couplings {
-        let mut near = coupling.near.iter().peekable();
-        let mut pair = 0;
-        for p in 0..shapes.len() {
-            for q in 0..=p {
-                let mut sums = wave_sums(coupling, k, pair);
-                while let Some(entry) = near.next_if(|near| near.row == p && near.column == q) {
-                    for (sum, correction) in sums.iter_mut().zip(entry.sums) {
-                        *sum += correction;
-                    }
-                }
-                if p == q && coupling.sign > 0.0 {
-                    let length_m = mesh.segments[p].length_m();
-                    // −k²R/2, the kernel's next term, has a kink that two points miss.
-                    sums[0] -= 0.5 * k * k * length_m * KINK_EVEN;
-                    sums[3] -= 0.5 * k * k * length_m * KINK_ODD;
-                }
-                let block = block(&shapes[p], &shapes[q], coupling.cosine[pair], &sums);
-                let scale = Complex64::new(0.0, coupling.sign * k * VACUUM_IMPEDANCE_OHM / (2.0 * TAU));
-                shares.scatter(&mut matrix, (p, q), &block.map(|row| row.map(|sum| scale * sum)));
-                pair += 1;
-            }
-        }
-    }
-    for (p, segment) in mesh.segments.iter().enumerate() {
-        let wire = &wires[mesh.wire_of[p]];
-        let length_m = segment.length_m();
-        let series = wire.material.series_impedance_ohm_per_m(wire.radius_m, frequency_hz);
-        let [same, cross] = Shapes::overlaps(k, length_m).map(|overlap| series * overlap);
-        shares.scatter(&mut matrix, (p, p), &[[same, cross], [cross, same]]);
-        if let Some(insulation) = &wire.material.insulation {
-            // −δ/(jω)·∫I′I′ ds
-            let scale =
-                Complex64::new(0.0, insulation.elastance_m_per_f(wire.radius_m) / (TAU * frequency_hz));
-            let [same, cross] = Shapes::slope_overlaps(k, length_m).map(|overlap| scale * overlap);
-            shares.scatter(&mut matrix, (p, p), &[[same, cross], [cross, same]]);
-        }
-    }
+    let columns = Columns::new(mesh, k);
+    let fill = Fill { mesh, shares, couplings, own, columns: &columns, k, matrix: &mut matrix };
+    Arch::new().dispatch(fill);
     matrix
 }
 
-/// Exact ∫∫R minus the two-point rule's, over L³/4, even and odd: 4/3·(1 − √3/2)/… of the functions 1 and ξ.
-const KINK_EVEN: f64 = 4.0 / 3.0 - 2.0 * GAUSS;
-const KINK_ODD: f64 = 2.0 * GAUSS - 0.8;
-
-/// Σ e^(−jkR)/R over the pairs of Gauss points: plain, with the row's sign, with the column's, with both.
-fn wave_sums(coupling: &Coupling, k: f64, pair: usize) -> [Complex64; 4] {
-    let [mm, mp, pm, pp] = std::array::from_fn(|index| {
-        let (sin, cos) = (k * coupling.distance_m[index][pair]).sin_cos();
-        let inverse = coupling.inverse_per_m[index][pair];
-        Complex64::new(cos * inverse, -sin * inverse)
-    });
-    [mm + mp + pm + pp, pm + pp - mm - mp, mp + pp - mm - pm, mm + pp - mp - pm]
+/// Shapes of all segments as sources, halved, in blocks of [`PAD`] segments: even, odd and even slope.
+struct Columns {
+    shapes: Vec<Shapes>,
+    table: Vec<f64>,
 }
 
-/// Impedances over jkη/4π between end currents.
-fn block(p: &Shapes, q: &Shapes, cosine: f64, sums: &[Complex64; 4]) -> Block {
-    let [ee, oe, eo, oo] = *sums;
-    // Of the mean of the end currents (even) and of half their difference (odd): A-part − Φ-part
-    let even_even = cosine * p.even * q.even * ee - p.even_slope * q.even_slope * oo;
-    let even_odd = cosine * p.even * q.odd * eo - p.even_slope * q.odd_slope * oe;
-    let odd_even = cosine * p.odd * q.even * oe - p.odd_slope * q.even_slope * eo;
-    let odd_odd = cosine * p.odd * q.odd * oo - p.odd_slope * q.odd_slope * ee;
-    [
-        [
-            0.25 * (even_even - even_odd - odd_even + odd_odd),
-            0.25 * (even_even + even_odd - odd_even - odd_odd),
-        ],
-        [
-            0.25 * (even_even - even_odd + odd_even - odd_odd),
-            0.25 * (even_even + even_odd + odd_even + odd_odd),
-        ],
-    ]
+impl Columns {
+    fn new(mesh: &Mesh, k: f64) -> Self {
+        let shapes: Vec<Shapes> =
+            mesh.segments.iter().map(|segment| Shapes::new(k, segment.length_m())).collect();
+        let mut table = vec![0.0; 3 * padded(shapes.len())];
+        for (column, shape) in shapes.iter().enumerate() {
+            let at = 3 * PAD * (column / PAD) + column % PAD;
+            table[at] = 0.5 * shape.even;
+            table[at + PAD] = 0.5 * shape.odd;
+            table[at + 2 * PAD] = 0.5 * shape.even_slope;
+        }
+        Self { shapes, table }
+    }
+}
+
+/// Couplings of the two end currents of one segment with those of all before it and its own.
+pub(super) struct Blocks {
+    /// Real parts, then imaginary parts, of beginning–beginning, beginning–end, end–beginning, end–end; the row's end
+    /// first.
+    parts: [Vec<f64>; 8],
+}
+
+/// Which end, as an index.
+pub(super) const BEGINNING: usize = 0;
+pub(super) const END: usize = 1;
+
+impl Blocks {
+    fn zero(segments: usize) -> Self {
+        Self { parts: std::array::from_fn(|_| vec![0.0; padded(segments)]) }
+    }
+
+    pub fn at(&self, row_end: usize, column_end: usize, column: usize) -> Complex64 {
+        let part = 2 * row_end + column_end;
+        Complex64::new(self.parts[part][column], self.parts[4 + part][column])
+    }
+
+    fn add_own(&mut self, column: usize, [same, cross]: [Complex64; 2]) {
+        for (part, value) in [same, cross, cross, same].into_iter().enumerate() {
+            self.parts[part][column] += value.re;
+            self.parts[4 + part][column] += value.im;
+        }
+    }
+}
+
+struct Fill<'a> {
+    mesh: &'a Mesh,
+    shares: &'a Shares,
+    couplings: &'a [Coupling],
+    own: &'a [[Complex64; 2]],
+    columns: &'a Columns,
+    k: f64,
+    matrix: &'a mut Symmetric,
+}
+
+impl WithSimd for Fill<'_> {
+    type Output = ();
+
+    #[inline(always)]
+    fn with_simd<S: Simd>(self, simd: S) {
+        let segments = self.mesh.segments.len();
+        let mut sums = vec![0.0; SUMS * padded(segments)];
+        let mut blocks = Blocks::zero(segments);
+        for row in 0..segments {
+            for part in &mut blocks.parts {
+                part[..padded(row + 1)].fill(0.0);
+            }
+            for coupling in self.couplings {
+                let sums = &mut sums[..SUMS * padded(row + 1)];
+                wave_sums(simd, coupling.table(row), self.k, sums);
+                for near in coupling.near(row) {
+                    add_sums(sums, near.column, near.sums);
+                }
+                if coupling.sign > 0.0 {
+                    add_sums(sums, row, kink(self.k, self.mesh.segments[row].length_m()));
+                }
+                let shapes = &self.columns.shapes[row];
+                let scale = RowScale::new(simd, shapes, coupling.sign);
+                add_blocks(simd, &scale, [sums, &self.columns.table, coupling.table(row)], &mut blocks);
+            }
+            blocks.add_own(row, self.own[row]);
+            for run in &self.mesh.runs {
+                add_run(self.matrix, self.shares, row, run, &blocks);
+            }
+            self.shares.add_joints(self.matrix, self.mesh, row, &blocks);
+        }
+    }
+}
+
+/// Sums of a pair: Σ e^(−jkR)/R plain, with the row's sign, with the column's, with both; real parts, then imaginary.
+const SUMS: usize = 8;
+
+#[inline(always)]
+fn add_sums(sums: &mut [f64], column: usize, terms: [f64; 4]) {
+    let at = SUMS * PAD * (column / PAD) + column % PAD;
+    for (index, term) in terms.into_iter().enumerate() {
+        sums[at + PAD * index] += term;
+    }
+}
+
+/// What two points miss of −k²R/2, the kernel's term with a kink, on a segment's own.
+fn kink(k: f64, length_m: f64) -> [f64; 4] {
+    // Exact ∫∫R and ∫∫3ξξ′R over L²/4, minus the sums of the Gauss points: L·(4/3 − 2/√3) and L·(2/√3 − 4/5)
+    let scale = -0.5 * k * k * length_m;
+    [scale * (4.0 / 3.0 - 2.0 * GAUSS), 0.0, 0.0, scale * (2.0 * GAUSS - 0.8)]
+}
+
+/// Fills in the sums of a row.
+#[inline(always)]
+fn wave_sums<S: Simd>(simd: S, table: &[f64], k: f64, sums: &mut [f64]) {
+    let per = PAD / S::F64_LANES;
+    let (table, _) = S::as_simd_f64s(table);
+    let (sums, _) = S::as_mut_simd_f64s(sums);
+    let turns_per_m = Lanes::splat(simd, k / std::f64::consts::TAU);
+    for (fields, sums) in table.chunks_exact(FIELDS * per).zip(sums.chunks_exact_mut(SUMS * per)) {
+        for part in 0..per {
+            let field = |index: usize| Lanes::new(simd, fields[index * per + part]);
+            let wave = |index: usize| {
+                let inverse = field(4 + index);
+                let [cos, minus_sin] = (field(index) * turns_per_m).wave();
+                [cos * inverse, minus_sin * inverse]
+            };
+            let waves = [wave(0), wave(1), wave(2), wave(3)];
+            for complex_part in 0..2 {
+                let [mm, mp, pm, pp] = waves.map(|wave| wave[complex_part]);
+                let (m_plus, m_minus) = (mm + mp, mp - mm);
+                let (p_plus, p_minus) = (pm + pp, pp - pm);
+                let at = 4 * complex_part;
+                sums[at * per + part] = (m_plus + p_plus).value;
+                sums[(at + 1) * per + part] = (p_plus - m_plus).value;
+                sums[(at + 2) * per + part] = (m_minus + p_minus).value;
+                sums[(at + 3) * per + part] = (p_minus - m_minus).value;
+            }
+        }
+    }
+}
+
+/// Shapes of the row's segment, halved, with the coupling's sign.
+struct RowScale<S: Simd> {
+    even: Lanes<S>,
+    odd: Lanes<S>,
+    even_slope: Lanes<S>,
+    odd_slope: Lanes<S>,
+    /// The same for all segments.
+    column_odd_slope: Lanes<S>,
+}
+
+impl<S: Simd> RowScale<S> {
+    #[inline(always)]
+    fn new(simd: S, shapes: &Shapes, sign: f64) -> Self {
+        let half = |value: f64| Lanes::splat(simd, 0.5 * sign * value);
+        Self {
+            even: half(shapes.even),
+            odd: half(shapes.odd),
+            even_slope: half(shapes.even_slope),
+            odd_slope: half(shapes.odd_slope),
+            column_odd_slope: Lanes::splat(simd, 0.5 * shapes.odd_slope),
+        }
+    }
+}
+
+/// Adds a row's couplings between end currents: vector potential minus scalar potential.
+#[inline(always)]
+fn add_blocks<S: Simd>(simd: S, row: &RowScale<S>, [sums, columns, table]: [&[f64]; 3], blocks: &mut Blocks) {
+    let per = PAD / S::F64_LANES;
+    let (sums, _) = S::as_simd_f64s(sums);
+    let (columns, _) = S::as_simd_f64s(columns);
+    let (table, _) = S::as_simd_f64s(table);
+    let count = table.len() / FIELDS;
+    let parts = blocks.parts.each_mut().map(|part| {
+        let (part, _) = S::as_mut_simd_f64s(part);
+        &mut part[..count]
+    });
+    let pairs = sums
+        .chunks_exact(SUMS * per)
+        .zip(columns.chunks_exact(3 * per))
+        .zip(table.chunks_exact(FIELDS * per));
+    for (chunk, ((sums, columns), fields)) in pairs.enumerate() {
+        for part in 0..per {
+            let column = |index: usize| Lanes::new(simd, columns[index * per + part]);
+            let cosine = Lanes::new(simd, fields[8 * per + part]);
+            let (even, odd, even_slope) = (cosine * column(0), cosine * column(1), column(2));
+            let odd_slope = row.column_odd_slope;
+            let place = chunk * per + part;
+            for complex_part in 0..2 {
+                let sum = |index: usize| Lanes::new(simd, sums[(4 * complex_part + index) * per + part]);
+                let (ee, oe, eo, oo) = (sum(0), sum(1), sum(2), sum(3));
+                // Of the mean of the end currents (even) and of half their difference (odd)
+                let even_even = (row.even_slope * oo).times_from(even_slope, (row.even * ee) * even);
+                let even_odd = (row.even_slope * oe).times_from(odd_slope, (row.even * eo) * odd);
+                let odd_even = (row.odd_slope * eo).times_from(even_slope, (row.odd * oe) * even);
+                let odd_odd = (row.odd_slope * ee).times_from(odd_slope, (row.odd * oo) * odd);
+                let (fe, te) = (even_even - odd_even, even_even + odd_even);
+                let (fo, to) = (even_odd - odd_odd, even_odd + odd_odd);
+                for (index, value) in [fe - fo, fe + fo, te - to, te + to].into_iter().enumerate() {
+                    let target = &mut parts[4 * complex_part + index][place];
+                    *target = (Lanes::new(simd, *target) + value).value;
+                }
+            }
+        }
+    }
+}
+
+/// Adds a segment's couplings to the unknowns of a run, for the unknowns that the segment itself has in runs.
+///
+/// An unknown between two segments has the end of the first and the beginning of the second. Couplings with segments
+/// after this one come with their rows.
+#[inline(always)]
+fn add_run(matrix: &mut Symmetric, shares: &Shares, row: usize, run: &Run, blocks: &Blocks) {
+    let Some(before) = row.checked_sub(run.first_segment) else { return };
+    // Unknowns with both segments up to this one, and whether one begins with it.
+    let whole = before.min(run.unknowns);
+    let begins = before < run.unknowns;
+    for row_end in [BEGINNING, END] {
+        let Some(unknown) = shares.in_run(row, row_end) else { continue };
+        let low = matrix.index(unknown, run.first_unknown);
+        for (offset, target) in [(0, &mut matrix.re), (4, &mut matrix.im)] {
+            let part = offset + 2 * row_end;
+            let begin = run.first_segment;
+            let at_beginning = &blocks.parts[part + BEGINNING][begin + 1..=begin + whole];
+            let at_end = &blocks.parts[part + END][begin..begin + whole];
+            let target = &mut target[low..low + whole];
+            for ((target, a), b) in target.iter_mut().zip(at_end).zip(at_beginning) {
+                *target += a + b;
+            }
+        }
+        if begins && row_end == END {
+            matrix.add(unknown, run.first_unknown + whole, blocks.at(END, END, row));
+        }
+        if row_end == BEGINNING && whole > 0 && unknown == run.first_unknown + whole - 1 {
+            // The unknown's own two arms act on each other both ways.
+            matrix.add(unknown, unknown, blocks.at(BEGINNING, END, row - 1));
+        }
+    }
 }

@@ -1,19 +1,23 @@
 //! The solver: a structure made ready, and its solutions.
 
+use std::f64::consts::TAU;
+
 use nalgebra::DMatrix;
 use num_complex::Complex64;
 
 use super::check::{self, LOWEST_HZ};
 use super::coupling::{Coupling, Sources};
 use super::error::WireError;
-use super::fill::{self, Shares};
+use super::fill;
 use super::grading::Fineness;
 use super::mesh::{Arm, Mesh};
 use super::power::{port_power_w, segment_loss_w};
 use super::segment::{EndCurrents, Segment};
+use super::shapes::Shapes;
+use super::shares::Shares;
 use super::skeleton::{End, Skeleton};
-use super::structure::{Boundary, Structure};
-use crate::constants::wave_number_rad_per_m;
+use super::structure::{Boundary, Structure, WireShape};
+use crate::constants::{VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
 
 /// A structure with its mesh and everything about it that does not depend on frequency.
 #[derive(Clone, Debug)]
@@ -105,20 +109,52 @@ impl WireModel {
             let (lowest_hz, highest_hz) = (LOWEST_HZ, self.highest_hz);
             return Err(WireError::FrequencyOutOfRange { frequency_hz, lowest_hz, highest_hz });
         }
-        let matrix =
-            fill::matrix(&self.mesh, &self.shares, &self.couplings, &self.structure.wires, frequency_hz);
-        let n = matrix.order;
-        let dense = DMatrix::from_fn(n, n, |row, column| matrix.at(row, column));
-        let drive = self.drive(frequency_hz);
-        let coefficients_a_per_v =
-            dense.lu().solve(&drive).ok_or(WireError::Singular { frequency_hz, residual: 1.0 })?;
-        let port_admittance_s = drive.transpose() * &coefficients_a_per_v;
+        let k = wave_number_rad_per_m(frequency_hz);
+        // Everything over jkη/4π
+        let scale_s = Complex64::new(0.0, -2.0 * TAU / (k * VACUUM_IMPEDANCE_OHM));
+        let own = self.own_impedances(scale_s, frequency_hz);
+        let matrix = fill::matrix(&self.mesh, &self.shares, &self.couplings, &own, k);
+        let drive = self.drive(k);
+        let (solution, residual) =
+            matrix.solve(&drive).ok_or(WireError::Singular { frequency_hz, residual: f64::INFINITY })?;
+        if !(residual < LARGEST_RESIDUAL) {
+            return Err(WireError::Singular { frequency_hz, residual });
+        }
+        let coefficients_a_per_v = solution * scale_s;
+        let port_admittance_s = drive.map(Complex64::from).tr_mul(&coefficients_a_per_v);
         Ok(Solution { frequency_hz, port_admittance_s, coefficients_a_per_v })
     }
 
-    /// Volts along the wire that each unknown sees per volt of each port.
-    fn drive(&self, frequency_hz: f64) -> DMatrix<Complex64> {
+    /// Metal and cover of each segment, times `scale_s`: at each end, and between its ends.
+    fn own_impedances(&self, scale_s: Complex64, frequency_hz: f64) -> Vec<[Complex64; 2]> {
         let k = wave_number_rad_per_m(frequency_hz);
+        let per_wire: Vec<[Complex64; 2]> = self
+            .structure
+            .wires
+            .iter()
+            .map(|WireShape { material, radius_m, .. }| {
+                let series = material.series_impedance_ohm_per_m(*radius_m, frequency_hz);
+                // −δ/(jω) on the charges
+                let cover = material.insulation.map_or(0.0, |cover| cover.elastance_m_per_f(*radius_m));
+                [series * scale_s, Complex64::new(0.0, cover / (TAU * frequency_hz)) * scale_s]
+            })
+            .collect();
+        let own = |(segment, &wire): (&Segment, &usize)| {
+            let length_m = segment.length_m();
+            let [metal, cover] = per_wire[wire];
+            let mut own = Shapes::overlaps(k, length_m).map(|overlap| metal * overlap);
+            if cover != Complex64::ZERO {
+                for (own, overlap) in own.iter_mut().zip(Shapes::slope_overlaps(k, length_m)) {
+                    *own += cover * overlap;
+                }
+            }
+            own
+        };
+        self.mesh.segments.iter().zip(&self.mesh.wire_of).map(own).collect()
+    }
+
+    /// Volts along the wire that each unknown sees per volt of each port.
+    fn drive(&self, k: f64) -> DMatrix<f64> {
         let mut drive = DMatrix::zeros(self.mesh.unknowns.len(), self.structure.ports.len());
         for (index, unknown) in self.mesh.unknowns.iter().enumerate() {
             for &Arm { segment, sign, .. } in unknown.arms.iter().flatten() {
@@ -175,6 +211,9 @@ impl WireModel {
             .collect()
     }
 }
+
+/// Largest part of a port's voltage that a solution may leave unexplained.
+const LARGEST_RESIDUAL: f64 = 1e-6;
 
 /// Solution at one frequency.
 #[derive(Clone, Debug, PartialEq)]
