@@ -13,6 +13,7 @@ mod grid;
 mod judge;
 mod sketch;
 mod watts;
+mod wire;
 
 use physics::line::LineError;
 use physics::sinusoid::SketchError;
@@ -21,8 +22,8 @@ use thiserror::Error;
 use self::chain::Chain;
 use self::grid::Grid;
 use self::judge::judge;
-use self::sketch::{BandSolution, WireSolution};
 use self::watts::Passage;
+use self::wire::{BandSolution, WireSolution};
 use crate::catalogue::CatalogueError;
 use crate::hang::{HangError, Hung, hang};
 use crate::plan::{Feed, Plan};

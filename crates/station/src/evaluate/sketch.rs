@@ -8,28 +8,11 @@ use physics::sinusoid::{
 
 use super::EvaluateError;
 use super::grid::Grid;
+use super::wire::{BandSolution, Cut, WirePoint, WireSolution, places};
 use crate::catalogue;
 use crate::hang::{Hung, HungWire};
 use crate::plan::{ConductorData, Earth};
 use crate::report::{Mark, MarkKind, StandingWave, WireWave};
-
-/// The wire at all frequencies.
-#[derive(Clone, Debug)]
-pub(super) struct WireSolution {
-    pub bands: Vec<BandSolution>,
-}
-
-/// The wire on one band.
-#[derive(Clone, Debug)]
-pub(super) struct BandSolution {
-    /// One answer per frequency of the band's grid.
-    pub points: Vec<FeedpointAnswer>,
-    pub wave: StandingWave,
-}
-
-/// Places along a wire at which the standing wave is given, for each half wave and at least.
-const PLACES_PER_HALF_WAVE: f64 = 24.0;
-const FEWEST_PLACES: usize = 48;
 
 pub(super) fn solve(hung: &Hung, earth: &Earth, grids: &[Grid]) -> Result<WireSolution, EvaluateError> {
     let wire = hung.feedpoint.wire;
@@ -41,9 +24,13 @@ pub(super) fn solve(hung: &Hung, earth: &Earth, grids: &[Grid]) -> Result<WireSo
 
 fn solve_band(hung: &Hung, sketch: &Sketch, grid: &Grid) -> Result<BandSolution, sinusoid::SketchError> {
     let terms = BandTerms::new(sketch, grid.low_hz(), grid.high_hz())?;
-    let points: Vec<_> = grid.frequencies_hz.iter().map(|&f| sketch.answer(&terms.at(f))).collect();
-    let wave = standing_wave(hung, sketch, &points[grid.middle], grid.frequencies_hz[grid.middle]);
-    Ok(BandSolution { points, wave })
+    let answers: Vec<_> = grid.frequencies_hz.iter().map(|&f| sketch.answer(&terms.at(f))).collect();
+    let wave = standing_wave(hung, sketch, &answers[grid.middle], grid.frequencies_hz[grid.middle]);
+    let point = |answer: &FeedpointAnswer| WirePoint {
+        impedance_ohm: answer.impedance_ohm,
+        wire_efficiency: answer.wire_efficiency,
+    };
+    Ok(BandSolution { points: answers.iter().map(point).collect(), wave })
 }
 
 fn sketch_wire(hung: &Hung, earth: &Earth) -> Result<SketchWire, EvaluateError> {
@@ -118,9 +105,8 @@ fn standing_wave(hung: &Hung, sketch: &Sketch, answer: &FeedpointAnswer, frequen
 
 fn fed_wave(sketch: &Sketch, answer: &FeedpointAnswer, frequency_hz: f64) -> WireWave {
     let length_m = sketch.length_m();
-    let half_wave_m = 0.5 * physics::constants::SPEED_OF_LIGHT_M_PER_S / frequency_hz;
-    let places = ((PLACES_PER_HALF_WAVE * length_m / half_wave_m) as usize).max(FEWEST_PLACES);
-    let arc_m = arcs(length_m, sketch.wire().arm_a_m, places);
+    let cut = Cut { arc_m: sketch.wire().arm_a_m, half_width_m: 1e-9 * length_m };
+    let arc_m = places(length_m, frequency_hz, &[cut]);
     let points = sketch.standing_wave(answer, &arc_m);
     let marks = sketch.marks(answer).into_iter().map(|mark| Mark {
         arc_m: mark.arc_m,
@@ -135,16 +121,6 @@ fn fed_wave(sketch: &Sketch, answer: &FeedpointAnswer, frequency_hz: f64) -> Wir
         marks: marks.collect(),
         arc_m,
     }
-}
-
-/// Even places along the wire and one on either side of the feedpoint, where the potential jumps.
-fn arcs(length_m: f64, feed_m: f64, places: usize) -> Vec<f64> {
-    let beside_m = 1e-9 * length_m;
-    let mut arcs: Vec<f64> = (0..=places).map(|n| length_m * n as f64 / places as f64).collect();
-    arcs.retain(|arc_m| (arc_m - feed_m).abs() > beside_m);
-    let at = arcs.partition_point(|&arc_m| arc_m < feed_m);
-    arcs.splice(at..at, [feed_m, feed_m + beside_m]);
-    arcs
 }
 
 fn still(length_m: f64) -> WireWave {
