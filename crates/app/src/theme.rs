@@ -25,6 +25,7 @@ const BOLD: &str = "sheet bold";
 
 /// The colour of an ink on a ground.
 #[must_use]
+#[expect(clippy::disallowed_methods)] // The one place.
 pub fn color(ink: Ink, ground: Ground) -> Color32 {
     let [r, g, b] = ink.rgb(ground);
     Color32::from_rgb(r, g, b)

@@ -15,6 +15,7 @@ fn open(look: Theme) -> Window {
 
 fn at(picture: &RgbaImage, x: u32, y: u32) -> Color32 {
     let [r, g, b, a] = picture.get_pixel(x, y).0;
+    #[expect(clippy::disallowed_methods)] // What the picture has, whatever that is.
     Color32::from_rgba_unmultiplied(r, g, b, a)
 }
 

@@ -1,6 +1,8 @@
 //! egui's triangles as a picture, on the CPU: gamma space, premultiplied alpha, bilinear textures, top-left rule.
 //! Pictures are the same on every run, with or without a GPU.
 
+#![allow(clippy::disallowed_methods)] // Colours are this crate's matter.
+
 use std::collections::HashMap;
 
 use eframe::egui::epaint::{ClippedPrimitive, ImageData, Mesh, Primitive, Vertex};
