@@ -148,15 +148,15 @@ fn wave_sums<S: Simd>(simd: S, table: &[f64], k: f64, sums: &mut [f64]) {
     let turns_per_m = Lanes::splat(simd, k / std::f64::consts::TAU);
     for (fields, sums) in table.chunks_exact(FIELDS * per).zip(sums.chunks_exact_mut(SUMS * per)) {
         for part in 0..per {
-            let field = |index: usize| Lanes::new(simd, fields[index * per + part]);
-            let wave = |index: usize| {
-                let inverse = field(4 + index);
-                let [cos, minus_sin] = (field(index) * turns_per_m).wave();
-                [cos * inverse, minus_sin * inverse]
-            };
-            let waves = [wave(0), wave(1), wave(2), wave(3)];
-            for complex_part in 0..2 {
-                let [mm, mp, pm, pp] = waves.map(|wave| wave[complex_part]);
+            let mut waves = [[turns_per_m; 4]; 2];
+            for index in 0..4 {
+                let turns = Lanes::new(simd, fields[index * per + part]) * turns_per_m;
+                let inverse = Lanes::new(simd, fields[(4 + index) * per + part]);
+                let [cos, minus_sin] = turns.wave();
+                waves[0][index] = cos * inverse;
+                waves[1][index] = minus_sin * inverse;
+            }
+            for (complex_part, [mm, mp, pm, pp]) in waves.into_iter().enumerate() {
                 let (m_plus, m_minus) = (mm + mp, mp - mm);
                 let (p_plus, p_minus) = (pm + pp, pp - pm);
                 let at = 4 * complex_part;
@@ -182,12 +182,12 @@ struct RowScale<S: Simd> {
 impl<S: Simd> RowScale<S> {
     #[inline(always)]
     fn new(simd: S, shapes: &Shapes, sign: f64) -> Self {
-        let half = |value: f64| Lanes::splat(simd, 0.5 * sign * value);
+        let half = 0.5 * sign;
         Self {
-            even: half(shapes.even),
-            odd: half(shapes.odd),
-            even_slope: half(shapes.even_slope),
-            odd_slope: half(shapes.odd_slope),
+            even: Lanes::splat(simd, half * shapes.even),
+            odd: Lanes::splat(simd, half * shapes.odd),
+            even_slope: Lanes::splat(simd, half * shapes.even_slope),
+            odd_slope: Lanes::splat(simd, half * shapes.odd_slope),
             column_odd_slope: Lanes::splat(simd, 0.5 * shapes.odd_slope),
         }
     }
@@ -201,38 +201,57 @@ fn add_blocks<S: Simd>(simd: S, row: &RowScale<S>, [sums, columns, table]: [&[f6
     let (columns, _) = S::as_simd_f64s(columns);
     let (table, _) = S::as_simd_f64s(table);
     let count = table.len() / FIELDS;
-    let parts = blocks.parts.each_mut().map(|part| {
-        let (part, _) = S::as_mut_simd_f64s(part);
-        &mut part[..count]
-    });
-    let pairs = sums
-        .chunks_exact(SUMS * per)
-        .zip(columns.chunks_exact(3 * per))
-        .zip(table.chunks_exact(FIELDS * per));
+    let mut parts = blocks.parts.each_mut().map(|part| &mut S::as_mut_simd_f64s(part).0[..count]);
+    let pairs = sums.chunks_exact(SUMS * per).zip(columns.chunks_exact(3 * per)).zip(table.chunks_exact(FIELDS * per));
     for (chunk, ((sums, columns), fields)) in pairs.enumerate() {
         for part in 0..per {
-            let column = |index: usize| Lanes::new(simd, columns[index * per + part]);
             let cosine = Lanes::new(simd, fields[8 * per + part]);
-            let (even, odd, even_slope) = (cosine * column(0), cosine * column(1), column(2));
-            let odd_slope = row.column_odd_slope;
+            let column = ColumnScale {
+                even: cosine * Lanes::new(simd, columns[part]),
+                odd: cosine * Lanes::new(simd, columns[per + part]),
+                even_slope: Lanes::new(simd, columns[2 * per + part]),
+            };
             let place = chunk * per + part;
             for complex_part in 0..2 {
-                let sum = |index: usize| Lanes::new(simd, sums[(4 * complex_part + index) * per + part]);
-                let (ee, oe, eo, oo) = (sum(0), sum(1), sum(2), sum(3));
-                // Of the mean of the end currents (even) and of half their difference (odd)
-                let even_even = (row.even_slope * oo).times_from(even_slope, (row.even * ee) * even);
-                let even_odd = (row.even_slope * oe).times_from(odd_slope, (row.even * eo) * odd);
-                let odd_even = (row.odd_slope * eo).times_from(even_slope, (row.odd * oe) * even);
-                let odd_odd = (row.odd_slope * ee).times_from(odd_slope, (row.odd * oo) * odd);
-                let (fe, te) = (even_even - odd_even, even_even + odd_even);
-                let (fo, to) = (even_odd - odd_odd, even_odd + odd_odd);
-                for (index, value) in [fe - fo, fe + fo, te - to, te + to].into_iter().enumerate() {
-                    let target = &mut parts[4 * complex_part + index][place];
-                    *target = (Lanes::new(simd, *target) + value).value;
+                let at = 4 * complex_part;
+                let sums = [
+                    Lanes::new(simd, sums[at * per + part]),
+                    Lanes::new(simd, sums[(at + 1) * per + part]),
+                    Lanes::new(simd, sums[(at + 2) * per + part]),
+                    Lanes::new(simd, sums[(at + 3) * per + part]),
+                ];
+                let ends = end_couplings(row, &column, sums);
+                for index in 0..4 {
+                    let target = &mut parts[at + index][place];
+                    *target = (Lanes::new(simd, *target) + ends[index]).value;
                 }
             }
         }
     }
+}
+
+/// Shapes of the column's segment, halved; those of the current times the cosine between the segments.
+struct ColumnScale<S: Simd> {
+    even: Lanes<S>,
+    odd: Lanes<S>,
+    even_slope: Lanes<S>,
+}
+
+/// Beginning–beginning, beginning–end, end–beginning, end–end from the sums.
+#[inline(always)]
+fn end_couplings<S: Simd>(
+    row: &RowScale<S>,
+    column: &ColumnScale<S>,
+    [ee, oe, eo, oo]: [Lanes<S>; 4],
+) -> [Lanes<S>; 4] {
+    // Of the mean of the end currents (even) and of half their difference (odd)
+    let even_even = (row.even_slope * oo).times_from(column.even_slope, (row.even * ee) * column.even);
+    let even_odd = (row.even_slope * oe).times_from(row.column_odd_slope, (row.even * eo) * column.odd);
+    let odd_even = (row.odd_slope * eo).times_from(column.even_slope, (row.odd * oe) * column.even);
+    let odd_odd = (row.odd_slope * ee).times_from(row.column_odd_slope, (row.odd * oo) * column.odd);
+    let (from_even, to_even) = (even_even - odd_even, even_even + odd_even);
+    let (from_odd, to_odd) = (even_odd - odd_odd, even_odd + odd_odd);
+    [from_even - from_odd, from_even + from_odd, to_even - to_odd, to_even + to_odd]
 }
 
 /// Adds a segment's couplings to the unknowns of a run, for the unknowns that the segment itself has in runs.

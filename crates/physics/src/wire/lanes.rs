@@ -1,7 +1,8 @@
 //! Several f64 at once, with the operators of one.
 //!
 //! `pulp` picks the widest instructions of the machine at run time (AVX2 with FMA where there are any), so that a
-//! portable build is fast and nothing here is unsafe.
+//! portable build is fast and nothing here is unsafe. The compiler must inline everything between the choice and the
+//! operators, which it does for functions marked so, not for closures: loops here are plain.
 
 use std::ops::{Add, Mul, Sub};
 
@@ -60,27 +61,35 @@ impl<S: Simd> Lanes<S> {
         self + shift - shift
     }
 
+    /// Σ cₙ·selfⁿ
+    #[inline(always)]
+    fn polynomial<const N: usize>(self, coefficients: &[f64; N]) -> Self {
+        let mut sum = Self::splat(self.simd, coefficients[N - 1]);
+        let mut n = N - 1;
+        while n > 0 {
+            n -= 1;
+            sum = sum.times_plus(self, Self::splat(self.simd, coefficients[n]));
+        }
+        sum
+    }
+
     /// cos and −sin of `self` turns of 2π each, absolute error below 1e-12.
     ///
     /// A quarter of the angle, at most π/4, goes through polynomials (minimax, from a Remez exchange in 40-digit
     /// arithmetic; errors 6e-14 and 7e-15), and is doubled twice.
     #[inline(always)]
     pub fn wave(self) -> [Self; 2] {
-        let constant = |number: f64| Self::splat(self.simd, number);
         // t = angle/2π − nearest integer; quarter angle φ = πt/2
         let t = self - self.rounded();
         let u = t * t;
-        let sin =
-            SINE.iter().rev().skip(1).fold(constant(SINE[5]), |sum, &c| sum.times_plus(u, constant(c))) * t;
-        let cos =
-            COSINE.iter().rev().skip(1).fold(constant(COSINE[5]), |sum, &c| sum.times_plus(u, constant(c)));
+        let (sin, cos) = (u.polynomial(&SINE) * t, u.polynomial(&COSINE));
         // sin 2φ = 2·sin φ·cos φ,   cos 2φ = 1 − 2·sin² φ
-        let (one, two) = (constant(1.0), constant(2.0));
-        let twice_sin = sin * two;
+        let one = Self::splat(self.simd, 1.0);
+        let twice_sin = sin + sin;
         let (sin, cos) = (twice_sin * cos, twice_sin.times_from(sin, one));
-        let twice_sin = sin * two;
-        let minus_sin = twice_sin * (constant(0.0) - cos);
-        [twice_sin.times_from(sin, one), minus_sin]
+        let twice_sin = sin + sin;
+        let zero = Self::splat(self.simd, 0.0);
+        [twice_sin.times_from(sin, one), twice_sin.times_from(cos, zero)]
     }
 }
 

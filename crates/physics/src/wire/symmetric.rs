@@ -282,19 +282,21 @@ fn subtract<S: Simd, const N: usize>(
     let (re, _) = S::as_mut_simd_f64s(re);
     let (im, _) = S::as_mut_simd_f64s(&mut im[..length]);
     let count = re.len();
-    let sources = sources.map(|[re, im]| {
-        let (re, _) = S::as_simd_f64s(&re[..length]);
-        let (im, _) = S::as_simd_f64s(&im[..length]);
-        (&re[..count], &im[..count])
-    });
     let im = &mut im[..count];
-    let factors = factors.map(|factor| (Lanes::splat(simd, factor.re), Lanes::splat(simd, factor.im)));
+    let mut lines = [(&[] as &[S::f64s], &[] as &[S::f64s]); N];
+    let mut scales = [(Lanes::splat(simd, 0.0), Lanes::splat(simd, 0.0)); N];
+    for n in 0..N {
+        let [source_re, source_im] = sources[n];
+        let (source_re, _) = S::as_simd_f64s(&source_re[..length]);
+        let (source_im, _) = S::as_simd_f64s(&source_im[..length]);
+        lines[n] = (&source_re[..count], &source_im[..count]);
+        scales[n] = (Lanes::splat(simd, factors[n].re), Lanes::splat(simd, factors[n].im));
+    }
     for index in 0..count {
         let (mut x, mut y) = (Lanes::new(simd, re[index]), Lanes::new(simd, im[index]));
         for n in 0..N {
-            let (source_re, source_im) = sources[n];
-            let (s, t) = (Lanes::new(simd, source_re[index]), Lanes::new(simd, source_im[index]));
-            let (factor_re, factor_im) = factors[n];
+            let (s, t) = (Lanes::new(simd, lines[n].0[index]), Lanes::new(simd, lines[n].1[index]));
+            let (factor_re, factor_im) = scales[n];
             x = t.times_plus(factor_im, s.times_from(factor_re, x));
             y = t.times_from(factor_re, s.times_from(factor_im, y));
         }
@@ -337,7 +339,8 @@ impl WithSimd for Substitute<'_> {
             let zero = Lanes::splat(simd, 0.0);
             let (mut sum_re, mut sum_im) = (zero, zero);
             for (((re, im), x_re), x_im) in re.iter().zip(im).zip(x_re).zip(x_im) {
-                let [re, im, x_re, x_im] = [re, im, x_re, x_im].map(|value| Lanes::new(simd, *value));
+                let (re, im) = (Lanes::new(simd, *re), Lanes::new(simd, *im));
+                let (x_re, x_im) = (Lanes::new(simd, *x_re), Lanes::new(simd, *x_im));
                 sum_re = im.times_from(x_im, re.times_plus(x_re, sum_re));
                 sum_im = im.times_plus(x_re, re.times_plus(x_im, sum_im));
             }
