@@ -46,6 +46,7 @@ pub fn plan() -> Plan {
             conductor: ConductorChoice::Catalogue("copper-2mm".to_owned()),
         }],
         feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
+        loads: Vec::new(),
         feeds: vec![
             Feed { name: "coax".to_owned(), links: vec![line("coax-rg-213", 20.0)] },
             Feed { name: "open line".to_owned(), links: vec![line("open-wire-600", 20.0), unit] },

@@ -1,6 +1,8 @@
 //! Validation: is every value of a plan possible? The first one that is not gives one sentence with its field path,
 //! the value, and what would be accepted.
 
+mod parts;
+
 use std::collections::HashSet;
 use std::ops::RangeInclusive;
 
@@ -9,8 +11,7 @@ use thiserror::Error;
 use crate::catalogue::{self, CatalogueError};
 use crate::hang::{self, HangError};
 use crate::plan::{
-    Band, BandRange, ConductorChoice, ConductorData, Earth, Feed, LineChoice, LineConstruction, LineData,
-    Link, MatchingUnit, PathPoint, Plan, Point, Site, Wire,
+    Band, BandRange, ConductorChoice, Earth, Feed, LineChoice, Link, PathPoint, Plan, Point, Site, Wire,
 };
 
 /// A value that a plan cannot have.
@@ -96,6 +97,7 @@ const MOST_BANDS: usize = 64;
 const MOST_CHANNELS: usize = 200;
 const MOST_WIRES: usize = 16;
 const MOST_POINTS: usize = 32;
+const MOST_LOADS: usize = 16;
 const MOST_SUPPORTS: usize = 64;
 const MOST_FEEDS: usize = 6;
 pub(crate) const MOST_LINKS: usize = 12;
@@ -122,6 +124,10 @@ pub fn check(plan: &Plan) -> Checked {
     }
     number("feedpoint.fraction", plan.feedpoint.fraction, FEED_FRACTION, "of the wire")?;
     number("feedpoint.gap_m", plan.feedpoint.gap_m, 0.001..=1.0, "m")?;
+    count("loads", plan.loads.len(), 0, MOST_LOADS)?;
+    for (index, load) in plan.loads.iter().enumerate() {
+        parts::check_load(&format!("loads[{index}]"), load, plan.wires.len())?;
+    }
     for (index, feed) in plan.feeds.iter().enumerate() {
         check_feed(&format!("feeds[{index}]"), feed)?;
     }
@@ -176,32 +182,11 @@ fn check_wire(field: &str, wire: &Wire) -> Checked {
     number(&format!("{field}.start_m"), wire.start_m, -1_000.0..=1_000.0, "m")?;
     number(&format!("{field}.cut_length_m"), wire.cut_length_m, 0.5..=1_000.0, "m")?;
     match &wire.conductor {
-        ConductorChoice::Own(data) => check_conductor(&format!("{field}.conductor"), data),
+        ConductorChoice::Own(data) => parts::check_conductor(&format!("{field}.conductor"), data),
         ConductorChoice::Catalogue(_) => catalogue::conductor(&wire.conductor)
             .map(|_| ())
             .map_err(|source| PlanError::Catalogue { field: format!("{field}.conductor"), source }),
     }
-}
-
-fn check_conductor(field: &str, data: &ConductorData) -> Checked {
-    text(&format!("{field}.name"), &data.name, 80)?;
-    number(&format!("{field}.diameter_m"), data.diameter_m, 1e-4..=0.05, "m")?;
-    number(&format!("{field}.conductivity_s_per_m"), data.conductivity_s_per_m, 1e5..=1e8, "S/m")?;
-    number(&format!("{field}.stranding_factor"), data.stranding_factor, 1.0..=10.0, "")?;
-    if let Some(insulation) = &data.insulation {
-        let outer = format!("{field}.insulation.outer_diameter_m");
-        number(&outer, insulation.outer_diameter_m, 1e-4..=0.1, "m")?;
-        if insulation.outer_diameter_m <= data.diameter_m {
-            return Err(PlanError::Contradiction {
-                field: outer,
-                value: format!("{} m", insulation.outer_diameter_m),
-                accepted: format!("more than the metal's {} m", data.diameter_m),
-            });
-        }
-        let permittivity = insulation.relative_permittivity;
-        number(&format!("{field}.insulation.relative_permittivity"), permittivity, 1.0..=20.0, "")?;
-    }
-    Ok(())
 }
 
 fn check_feed(field: &str, feed: &Feed) -> Checked {
@@ -217,7 +202,7 @@ fn check_feed(field: &str, feed: &Feed) -> Checked {
             Link::Line(piece) => {
                 number(&format!("{at}.length_m"), piece.length_m, 0.05..=2_000.0, "m")?;
                 match &piece.line {
-                    LineChoice::Own(data) => check_line(&format!("{at}.line"), data)?,
+                    LineChoice::Own(data) => parts::check_line(&format!("{at}.line"), data)?,
                     LineChoice::Catalogue(_) => {
                         catalogue::line(&piece.line)
                             .map_err(|source| PlanError::Catalogue { field: format!("{at}.line"), source })?;
@@ -226,7 +211,7 @@ fn check_feed(field: &str, feed: &Feed) -> Checked {
             }
             Link::MatchingUnit(unit) => {
                 units += 1;
-                check_unit(&at, unit)?;
+                parts::check_unit(&at, unit)?;
             }
         }
     }
@@ -238,77 +223,6 @@ fn check_feed(field: &str, feed: &Feed) -> Checked {
         });
     }
     Ok(())
-}
-
-fn check_unit(field: &str, unit: &MatchingUnit) -> Checked {
-    number(&format!("{field}.inductance_max_h"), unit.inductance_max_h, 1e-8..=1e-3, "H")?;
-    number(&format!("{field}.capacitance_max_f"), unit.capacitance_max_f, 1e-12..=1e-6, "F")?;
-    number(&format!("{field}.coil_q"), unit.coil_q, 5.0..=10_000.0, "")?;
-    number(&format!("{field}.capacitor_q"), unit.capacitor_q, 5.0..=100_000.0, "")?;
-    if let Some(rating) = unit.rating_peak_v {
-        number(&format!("{field}.rating_peak_v"), rating, 10.0..=100_000.0, "V")?;
-    }
-    Ok(())
-}
-
-fn check_line(field: &str, data: &LineData) -> Checked {
-    text(&format!("{field}.name"), &data.name, 80)?;
-    if let Some(rating) = data.rating_peak_v {
-        number(&format!("{field}.rating_peak_v"), rating, 10.0..=1e6, "V")?;
-    }
-    let at = |name: &str| format!("{field}.construction.{name}");
-    match data.construction {
-        LineConstruction::Published { z0_ohm, velocity_factor, loss } => {
-            number(&at("z0_ohm"), z0_ohm, 5.0..=2_000.0, "Ω")?;
-            number(&at("velocity_factor"), velocity_factor, 0.1..=1.0, "")?;
-            number(&at("loss.k1_db_per_100m"), loss.k1_db_per_100m, 0.0..=100.0, "dB")?;
-            number(&at("loss.k2_db_per_100m"), loss.k2_db_per_100m, 0.0..=20.0, "dB")
-        }
-        LineConstruction::TwoWire {
-            wire_diameter_m,
-            spacing_m,
-            conductivity_s_per_m,
-            velocity_factor,
-            loss_tangent,
-        } => {
-            number(&at("wire_diameter_m"), wire_diameter_m, 1e-4..=0.05, "m")?;
-            number(&at("spacing_m"), spacing_m, 1e-4..=2.0, "m")?;
-            exceeds(&at("spacing_m"), spacing_m, 1.05 * wire_diameter_m, "1.05 times the wires' diameter")?;
-            number(&at("conductivity_s_per_m"), conductivity_s_per_m, 1e5..=1e8, "S/m")?;
-            number(&at("velocity_factor"), velocity_factor, 0.1..=1.0, "")?;
-            number(&at("loss_tangent"), loss_tangent, 0.0..=0.1, "")
-        }
-        LineConstruction::Coaxial {
-            inner_diameter_m,
-            outer_diameter_m,
-            conductivity_s_per_m,
-            relative_permittivity,
-            loss_tangent,
-        } => {
-            number(&at("inner_diameter_m"), inner_diameter_m, 1e-4..=0.2, "m")?;
-            number(&at("outer_diameter_m"), outer_diameter_m, 1e-4..=0.5, "m")?;
-            exceeds(
-                &at("outer_diameter_m"),
-                outer_diameter_m,
-                1.05 * inner_diameter_m,
-                "1.05 times the inner one",
-            )?;
-            number(&at("conductivity_s_per_m"), conductivity_s_per_m, 1e5..=1e8, "S/m")?;
-            number(&at("relative_permittivity"), relative_permittivity, 1.0..=20.0, "")?;
-            number(&at("loss_tangent"), loss_tangent, 0.0..=0.1, "")
-        }
-    }
-}
-
-fn exceeds(field: &str, value_m: f64, limit_m: f64, what: &str) -> Checked {
-    if value_m > limit_m {
-        return Ok(());
-    }
-    Err(PlanError::Contradiction {
-        field: field.to_owned(),
-        value: format!("{value_m} m"),
-        accepted: format!("more than {limit_m:.4} m, {what}"),
-    })
 }
 
 fn check_band(field: &str, band: &Band) -> Checked {

@@ -58,6 +58,8 @@ fn the_path_follows() {
         diameter_m: 0.0016,
         conductivity_s_per_m: 6e6,
         stranding_factor: 1.0,
+        relative_permeability: 1.0,
+        core: None,
         insulation: None,
         source: String::new(),
     });

@@ -95,6 +95,7 @@ pub fn plan(bands: usize, feeds: usize) -> Plan {
             conductor: ConductorChoice::Catalogue("copper-2mm".to_owned()),
         }],
         feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
+        loads: Vec::new(),
         feeds: all[..feeds].to_vec(),
         bands,
         transmitter: Transmitter { power_w: POWER_W, resistance_ohm: 50.0, swr_limit: 2.0 },
@@ -110,6 +111,8 @@ pub fn report(plan: &Plan) -> Report {
         diameter_m: 2e-3,
         conductivity_s_per_m: 58e6,
         stranding_factor: 1.0,
+        relative_permeability: 1.0,
+        core: None,
         insulation: None,
         source: String::new(),
     };

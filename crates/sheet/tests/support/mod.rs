@@ -38,6 +38,8 @@ pub fn stations() -> Vec<Station> {
         ("hanging ends", hanging_ends()),
         ("end fed", end_fed()),
         ("smallest", smallest()),
+        ("far entrance", far_entrance()),
+        ("strange letters", strange_letters()),
     ];
     let mut out: Vec<Station> = invented.into_iter().map(|(name, plan)| station(name, plan)).collect();
     let folder = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("../../demo-projects");
@@ -123,6 +125,8 @@ fn copper() -> ConductorChoice {
         diameter_m: 0.002,
         conductivity_s_per_m: 5.8e7,
         stranding_factor: 1.0,
+        relative_permeability: 1.0,
+        core: None,
         insulation: None,
         source: String::new(),
     })
@@ -151,6 +155,7 @@ pub fn relief_post() -> Plan {
             conductor: copper(),
         }],
         feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
+        loads: Vec::new(),
         feeds: vec![
             Feed {
                 name: "open line".to_owned(),
@@ -169,6 +174,25 @@ pub fn relief_post() -> Plan {
         transmitter: Transmitter { power_w: 400.0, resistance_ohm: 50.0, swr_limit: 2.0 },
         least_share_to_wire: 0.5,
     }
+}
+
+fn far_entrance() -> Plan {
+    let mut plan = relief_post();
+    plan.name = "Quarry".to_owned();
+    plan.site.entrance = Point::new(2_400.0, 310.0, -4.0);
+    plan.site.supports[0].height_m = 290.0;
+    plan
+}
+
+/// What people paste into names: other scripts, signs the fonts lack, control characters, markup.
+fn strange_letters() -> Plan {
+    let mut plan = relief_post();
+    plan.name = "Пост \u{5317}\u{4eac} \u{1f680}\u{200d}\ttab & <b>\"bold\"</b>".to_owned();
+    plan.purpose = "\u{0645}\u{0648}\u{0642}\u{0639}\nsecond line \u{0301}\u{feff}".to_owned();
+    plan.call_sign = "\u{7}".to_owned();
+    plan.feeds[0].name = "¿Línea? \\ %s {} $x$".to_owned();
+    plan.bands[3].name = "\u{202e}m 04".to_owned();
+    plan
 }
 
 /// Text of the greatest length that a plan may have there, ending in one long word.

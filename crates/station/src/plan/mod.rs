@@ -4,14 +4,16 @@
 //! Editing is a value change; undo is the list of earlier plans.
 
 mod feed;
+mod load;
 mod site;
 mod wire;
 
 pub use feed::{
     Feed, LineChoice, LineConstruction, LineData, LinePiece, Link, LossLaw, MatchingUnit, Transformer,
 };
+pub use load::{Circuit, Load};
 pub use site::{Earth, Point, Site, Soil, Support, SupportKind};
-pub use wire::{ConductorChoice, ConductorData, Feedpoint, Insulation, PathPoint, Wire};
+pub use wire::{ConductorChoice, ConductorData, Core, Feedpoint, Insulation, PathPoint, Wire};
 
 use serde::{Deserialize, Serialize};
 
@@ -36,6 +38,9 @@ pub struct Plan {
     pub wires: Vec<Wire>,
     /// Where the wire is cut and fed.
     pub feedpoint: Feedpoint,
+    /// Coils, traps and resistors in the wires.
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub loads: Vec<Load>,
     /// Two or more feeds to compare.
     pub feeds: Vec<Feed>,
     /// The bands or channel lists that must work.

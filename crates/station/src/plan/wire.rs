@@ -61,6 +61,12 @@ pub struct ConductorData {
     /// Factor on the HF resistance for stranding, 1 for a solid wire.
     #[serde(default = "one")]
     pub stranding_factor: f64,
+    /// Permeability of the metal that carries the current, relative to vacuum; 1 for anything but steel.
+    #[serde(default = "one")]
+    pub relative_permeability: f64,
+    /// Another metal inside, for clad wire.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub core: Option<Core>,
     /// Insulation over the metal, if any.
     #[serde(default, skip_serializing_if = "Option::is_none")]
     pub insulation: Option<Insulation>,
@@ -71,6 +77,18 @@ pub struct ConductorData {
 
 fn one() -> f64 {
     1.0
+}
+
+/// The core of a clad wire.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct Core {
+    /// Diameter of the core, m.
+    pub diameter_m: f64,
+    /// Conductivity, S/m.
+    pub conductivity_s_per_m: f64,
+    /// Permeability relative to vacuum.
+    pub relative_permeability: f64,
 }
 
 /// Insulation of a wire.

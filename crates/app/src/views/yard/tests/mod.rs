@@ -41,6 +41,7 @@ pub fn flat() -> Plan {
             conductor: ConductorChoice::Catalogue("copper-2mm".to_owned()),
         }],
         feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
+        loads: Vec::new(),
         feeds: vec![Feed {
             name: "open line".to_owned(),
             links: vec![Link::Line(LinePiece {

@@ -1,0 +1,153 @@
+//! Validation of parts: conductors, lines, matching units, loads.
+
+use super::{Checked, PlanError, count, number, text};
+use crate::plan::{Circuit, ConductorData, LineConstruction, LineData, Load, MatchingUnit};
+
+pub(super) fn check_conductor(field: &str, data: &ConductorData) -> Checked {
+    text(&format!("{field}.name"), &data.name, 80)?;
+    number(&format!("{field}.diameter_m"), data.diameter_m, 1e-4..=0.05, "m")?;
+    number(&format!("{field}.conductivity_s_per_m"), data.conductivity_s_per_m, 1e4..=1e15, "S/m")?;
+    number(&format!("{field}.stranding_factor"), data.stranding_factor, 1.0..=10.0, "")?;
+    number(&format!("{field}.relative_permeability"), data.relative_permeability, 0.9..=10_000.0, "")?;
+    if let Some(core) = &data.core {
+        let inner = format!("{field}.core.diameter_m");
+        number(&inner, core.diameter_m, 1e-4..=0.05, "m")?;
+        exceeds(&format!("{field}.diameter_m"), data.diameter_m, core.diameter_m, "the core's diameter")?;
+        number(&format!("{field}.core.conductivity_s_per_m"), core.conductivity_s_per_m, 1e4..=1e15, "S/m")?;
+        let permeability = core.relative_permeability;
+        number(&format!("{field}.core.relative_permeability"), permeability, 0.9..=10_000.0, "")?;
+    }
+    if let Some(insulation) = &data.insulation {
+        let outer = format!("{field}.insulation.outer_diameter_m");
+        number(&outer, insulation.outer_diameter_m, 1e-4..=0.1, "m")?;
+        exceeds(&outer, insulation.outer_diameter_m, data.diameter_m, "the metal's diameter")?;
+        let permittivity = insulation.relative_permittivity;
+        number(&format!("{field}.insulation.relative_permittivity"), permittivity, 1.0..=20.0, "")?;
+    }
+    Ok(())
+}
+
+pub(super) fn check_unit(field: &str, unit: &MatchingUnit) -> Checked {
+    number(&format!("{field}.inductance_max_h"), unit.inductance_max_h, 1e-8..=1e-3, "H")?;
+    number(&format!("{field}.capacitance_max_f"), unit.capacitance_max_f, 1e-12..=1e-6, "F")?;
+    number(&format!("{field}.coil_q"), unit.coil_q, 5.0..=10_000.0, "")?;
+    number(&format!("{field}.capacitor_q"), unit.capacitor_q, 5.0..=100_000.0, "")?;
+    if let Some(rating) = unit.rating_peak_v {
+        number(&format!("{field}.rating_peak_v"), rating, 10.0..=100_000.0, "V")?;
+    }
+    Ok(())
+}
+
+pub(super) fn check_line(field: &str, data: &LineData) -> Checked {
+    text(&format!("{field}.name"), &data.name, 80)?;
+    if let Some(rating) = data.rating_peak_v {
+        number(&format!("{field}.rating_peak_v"), rating, 10.0..=1e6, "V")?;
+    }
+    let at = |name: &str| format!("{field}.construction.{name}");
+    match data.construction {
+        LineConstruction::Published { z0_ohm, velocity_factor, loss } => {
+            number(&at("z0_ohm"), z0_ohm, 5.0..=2_000.0, "Ω")?;
+            number(&at("velocity_factor"), velocity_factor, 0.1..=1.0, "")?;
+            number(&at("loss.k1_db_per_100m"), loss.k1_db_per_100m, 0.0..=100.0, "dB")?;
+            number(&at("loss.k2_db_per_100m"), loss.k2_db_per_100m, 0.0..=20.0, "dB")
+        }
+        LineConstruction::TwoWire {
+            wire_diameter_m,
+            spacing_m,
+            conductivity_s_per_m,
+            velocity_factor,
+            loss_tangent,
+        } => {
+            number(&at("wire_diameter_m"), wire_diameter_m, 1e-4..=0.05, "m")?;
+            number(&at("spacing_m"), spacing_m, 1e-4..=2.0, "m")?;
+            exceeds(&at("spacing_m"), spacing_m, 1.05 * wire_diameter_m, "1.05 times the wires' diameter")?;
+            number(&at("conductivity_s_per_m"), conductivity_s_per_m, 1e5..=1e8, "S/m")?;
+            number(&at("velocity_factor"), velocity_factor, 0.1..=1.0, "")?;
+            number(&at("loss_tangent"), loss_tangent, 0.0..=0.1, "")
+        }
+        LineConstruction::Coaxial {
+            inner_diameter_m,
+            outer_diameter_m,
+            conductivity_s_per_m,
+            relative_permittivity,
+            loss_tangent,
+        } => {
+            number(&at("inner_diameter_m"), inner_diameter_m, 1e-4..=0.2, "m")?;
+            number(&at("outer_diameter_m"), outer_diameter_m, 1e-4..=0.5, "m")?;
+            exceeds(
+                &at("outer_diameter_m"),
+                outer_diameter_m,
+                1.05 * inner_diameter_m,
+                "1.05 times the inner one",
+            )?;
+            number(&at("conductivity_s_per_m"), conductivity_s_per_m, 1e5..=1e8, "S/m")?;
+            number(&at("relative_permittivity"), relative_permittivity, 1.0..=20.0, "")?;
+            number(&at("loss_tangent"), loss_tangent, 0.0..=0.1, "")
+        }
+    }
+}
+
+fn exceeds(field: &str, value_m: f64, limit_m: f64, what: &str) -> Checked {
+    if value_m > limit_m {
+        return Ok(());
+    }
+    Err(PlanError::Contradiction {
+        field: field.to_owned(),
+        value: format!("{value_m} m"),
+        accepted: format!("more than {limit_m:.4} m, {what}"),
+    })
+}
+
+/// Circuits inside circuits, at most; nobody builds deeper, and a file could ask for a million.
+const DEEPEST: usize = 4;
+const MOST_PARTS: usize = 8;
+
+pub(super) fn check_load(field: &str, load: &Load, wires: usize) -> Checked {
+    text(&format!("{field}.name"), &load.name, 60)?;
+    number(&format!("{field}.fraction"), load.fraction, 0.005..=0.995, "of the wire")?;
+    if load.wire >= wires {
+        return Err(PlanError::Contradiction {
+            field: format!("{field}.wire"),
+            value: format!("wire {}", load.wire),
+            accepted: format!("0 to {}", wires.saturating_sub(1)),
+        });
+    }
+    check_circuit(&format!("{field}.circuit"), &load.circuit, 0)
+}
+
+fn check_circuit(field: &str, circuit: &Circuit, depth: usize) -> Checked {
+    let quality =
+        |q: &Option<f64>| q.map_or(Ok(()), |q| number(&format!("{field}.q"), q, 1.0..=100_000.0, ""));
+    match circuit {
+        Circuit::Resistor { resistance_ohm } => {
+            number(&format!("{field}.resistance_ohm"), *resistance_ohm, 0.0..=1e6, "Ω")
+        }
+        Circuit::Coil { inductance_h, q } => {
+            number(&format!("{field}.inductance_h"), *inductance_h, 1e-9..=1e-2, "H")?;
+            quality(q)
+        }
+        Circuit::Capacitor { capacitance_f, q } => {
+            number(&format!("{field}.capacitance_f"), *capacitance_f, 1e-14..=1e-6, "F")?;
+            quality(q)
+        }
+        Circuit::MeasuredTrap { resonance_hz, capacitance_f, q } => {
+            number(&format!("{field}.resonance_hz"), *resonance_hz, 0.5e6..=100e6, "Hz")?;
+            number(&format!("{field}.capacitance_f"), *capacitance_f, 1e-13..=1e-8, "F")?;
+            quality(&Some(*q))
+        }
+        Circuit::Series(parts) | Circuit::Parallel(parts) => {
+            count(field, parts.len(), 1, MOST_PARTS)?;
+            if depth == DEEPEST {
+                return Err(PlanError::Contradiction {
+                    field: field.to_owned(),
+                    value: format!("a circuit {} levels deep", depth + 1),
+                    accepted: format!("up to {DEEPEST} levels"),
+                });
+            }
+            parts
+                .iter()
+                .enumerate()
+                .try_for_each(|(index, part)| check_circuit(&format!("{field}[{index}]"), part, depth + 1))
+        }
+    }
+}
