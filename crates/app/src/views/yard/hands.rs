@@ -5,7 +5,7 @@ use eframe::egui::{
 };
 
 use crate::command::{Command, Edit};
-use crate::explain::{Explain, say};
+use crate::explain::say;
 use crate::snapshot::Snapshot;
 
 use super::YardState;
@@ -29,6 +29,13 @@ pub struct Drag {
     bend: Option<Bend>,
 }
 
+impl Drag {
+    /// What the hand holds: pulled out of a span, it is a path point.
+    fn shown(&self) -> Grip {
+        self.bend.as_ref().map_or(self.grip, |bend| Grip::PathPoint { wire: bend.wire, point: bend.point })
+    }
+}
+
 /// What the hands work on.
 #[derive(Clone, Copy)]
 pub struct Bench<'a> {
@@ -45,20 +52,8 @@ pub fn id(ui: &Ui, grip: Grip) -> Id {
 /// Lets the hands work on all grips.
 pub fn work(ui: &Ui, bench: &Bench<'_>, state: &mut YardState, out: &mut Vec<Command>) {
     state.hot = None;
-    let pointer_in = ui.rect_contains_pointer(bench.layout.view.frame);
     for handle in &bench.layout.handles {
-        let rect = Rect::from_center_size(handle.at, Vec2::splat(2.0 * GRIP_PX));
-        let sense = if handle.grip.is_new_point() && !pointer_in && state.drag.is_none() {
-            // Out of reach of the pointer it can still be found by name and by Tab.
-            Sense::focusable_noninteractive()
-        } else {
-            Sense::click_and_drag()
-        };
-        let rect = rect.intersect(bench.layout.view.frame);
-        if !rect.is_positive() && state.drag.as_ref().is_none_or(|d| d.grip != handle.grip) {
-            continue;
-        }
-        let response = ui.interact(rect, id(ui, handle.grip), sense);
+        let response = widget(ui, bench, handle, state);
         describe(ui, bench, handle, &response);
         hold(ui, bench, handle, &response, state, out);
         if response.has_focus() {
@@ -70,14 +65,29 @@ pub fn work(ui: &Ui, bench: &Bench<'_>, state: &mut YardState, out: &mut Vec<Com
             state.chosen = Some(handle.grip);
         }
         if response.hovered() || response.dragged() {
-            state.hot = Some(handle.grip);
-            ui.ctx().set_cursor_icon(cursor(bench.model, handle.grip, response.dragged()));
+            let shown = state.drag.as_ref().map_or(handle.grip, Drag::shown);
+            state.hot = Some(shown);
+            ui.ctx().set_cursor_icon(cursor(bench.model, shown, response.dragged()));
+            say(ui.ctx(), bench.model.sentence(shown));
         }
-        if response.dragged() {
-            say(ui.ctx(), bench.model.sentence(handle.grip));
-        } else {
-            let _ = response.explain(bench.model.sentence(handle.grip));
-        }
+    }
+    if let Some(drag) = &state.drag {
+        state.chosen = Some(drag.shown());
+    }
+}
+
+/// A grip's widget. What is out of the pointer's reach can still be found by name and by Tab.
+fn widget(ui: &Ui, bench: &Bench<'_>, handle: &Handle, state: &YardState) -> Response {
+    let plot = bench.layout.view.frame;
+    let rect = Rect::from_center_size(handle.at, Vec2::splat(2.0 * GRIP_PX));
+    let held = state.drag.as_ref().is_some_and(|drag| drag.grip == handle.grip);
+    let away = handle.grip.is_new_point() && !ui.rect_contains_pointer(plot);
+    if held || (plot.intersects(rect) && !away) {
+        let visible = if plot.intersects(rect) { rect.intersect(plot) } else { rect };
+        ui.interact(visible, id(ui, handle.grip), Sense::click_and_drag())
+    } else {
+        let at = Rect::from_center_size(plot.clamp(handle.at), Vec2::splat(1.0));
+        ui.interact(at, id(ui, handle.grip), Sense::focusable_noninteractive())
     }
 }
 
@@ -136,6 +146,9 @@ fn hold(
     if response.drag_stopped() {
         if let Some(edit) = drag.bend.as_ref().and_then(|b| bench.model.ask_let_go(&bench.layout.view, b)) {
             out.push(Command::Edit(edit));
+        } else {
+            // The keys go on with what the hand has made.
+            ui.memory_mut(|m| m.request_focus(id(ui, drag.shown())));
         }
         out.push(Command::EndOfDrag);
         state.hint = None;

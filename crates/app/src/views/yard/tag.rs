@@ -30,6 +30,8 @@ pub fn show(ui: &mut Ui, bench: &Bench<'_>, look: &Look<'_>, state: &mut YardSta
     match find(state.chosen) {
         Some(chosen) if chosen.grip.is_new_point() => {}
         Some(chosen) => numbers(ui, bench, look, chosen, state, out),
+        // What has just been pulled out of a span comes with the next frame.
+        None if state.drag.is_some() => state.tag = None,
         None => {
             state.tag = None;
             state.chosen = None;

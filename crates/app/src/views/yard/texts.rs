@@ -183,7 +183,7 @@ impl<'a> Layout<'a> {
         }
         if let Some(&at) = self.feed_line.last() {
             let sides = [Side::Right, Side::Left, Side::Above];
-            writer.write(at, &["entrance".to_owned()], (Ink::Faint, Type::Small), &sides, (10.0, 24.0));
+            writer.write(at, &["entrance".to_owned()], (Ink::Faint, Type::Small), &sides, (14.0, 28.0));
         }
     }
 }

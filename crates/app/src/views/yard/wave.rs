@@ -20,6 +20,9 @@ const WHISKER_GAP_PX: f32 = 8.0;
 const GRAIN_GAP_PX: f32 = 17.0;
 /// How far the largest current carries its grains to and fro, px.
 const GRAIN_SWING_PX: f32 = 7.0;
+/// Two samples closer than this enclose the gap at the feedpoint, where the potential jumps: a place in between is read
+/// on the side with more volts, m.
+const GAP_M: f64 = 0.03;
 /// The thinnest ribbon that shows its grain, half of it, px.
 const GRAIN_HALF_PX: f32 = 2.5;
 
@@ -218,7 +221,12 @@ impl<'a> Wave<'a> {
         let arc_m = arc_m * self.stretch;
         let after = arcs.partition_point(|&m| m < arc_m).clamp(1, arcs.len() - 1);
         let (from_m, to_m) = (arcs[after - 1], arcs[after]);
-        let share = if to_m > from_m { ((arc_m - from_m) / (to_m - from_m)).clamp(0.0, 1.0) } else { 0.0 };
+        let share = if to_m - from_m < GAP_M {
+            let [before_v, after_v] = [after - 1, after].map(|n| self.source.potential_v[n].norm());
+            if after_v > before_v { 1.0 } else { 0.0 }
+        } else {
+            ((arc_m - from_m) / (to_m - from_m)).clamp(0.0, 1.0)
+        };
         let between = |values: &[Complex64]| {
             Phasor::from(values[after - 1]).toward(Phasor::from(values[after]), share as f32)
         };

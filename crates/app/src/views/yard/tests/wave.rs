@@ -37,6 +37,22 @@ fn the_read_out_is_peak_at_the_watts_that_arrive() {
 }
 
 #[test]
+fn at_the_feed_gap_the_volts_of_one_side_are_read() {
+    let plan = flat();
+    let model = Model::of(&plan);
+    // The potential jumps from +50 to −30 V between two samples at 15 m.
+    let source = WireWave {
+        arc_m: vec![0.0, 14.99, 15.01, 30.0],
+        current_a: vec![Complex64::ZERO; 4],
+        potential_v: [10.0, 50.0, -30.0, -10.0].map(|v| Complex64::new(v, 0.0)).to_vec(),
+        marks: vec![],
+    };
+    let size = Size { watts: 1.0, ..SIZE };
+    let wave = Wave::along(&usual_view(&model), model.hung_wire(0).unwrap(), &source, size).unwrap();
+    assert!((wave.read(15.0).voltage_v - 50.0).abs() < 1e-3);
+}
+
+#[test]
 fn the_ribbon_breathes_and_stays_in_its_envelope() {
     let plan = flat();
     let model = Model::of(&plan);
