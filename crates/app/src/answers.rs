@@ -58,7 +58,9 @@ impl Answers {
             return;
         }
         if let Some(worker) = &self.worker {
-            worker.ask(document.plan().clone(), document.revision());
+            if let Err(gone) = worker.ask(document.plan().clone(), document.revision()) {
+                self.fault = Some(gone.to_string());
+            }
             self.last_sign = Instant::now();
             ctx.request_repaint_after(MISSED_AFTER);
         }

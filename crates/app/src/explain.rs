@@ -10,12 +10,12 @@ pub trait Explain {
 
 impl Explain for Response {
     fn explain(self, sentence: impl Into<String>) -> Self {
-        if !self.hovered() {
+        if !self.contains_pointer() && !self.hovered() {
             return self;
         }
         let sentence = sentence.into();
         say(&self.ctx, &sentence);
-        self.on_hover_text(sentence)
+        if self.enabled() { self.on_hover_text(sentence) } else { self.on_disabled_hover_text(sentence) }
     }
 }
 

@@ -14,6 +14,9 @@ const DEMO: &str = include_str!("../../../demo-projects/saltmarsh-relief-post.ro
 /// What "New" begins with.
 const NEW_STATION: &str = include_str!("../new-station.ron");
 
+/// The window's icon.
+const ICON: &[u8] = include_bytes!("../../../assets/icon.png");
+
 /// Size of the window at first, and the smallest it can have, points.
 const WINDOW: ([f32; 2], [f32; 2]) = ([1280.0, 800.0], [1024.0, 700.0]);
 
@@ -50,14 +53,16 @@ pub struct NoWindow {
 /// # Errors
 /// [`NoWindow`] says what is missing.
 pub fn window(path: Option<PathBuf>) -> Result<(), NoWindow> {
-    let options = eframe::NativeOptions {
-        viewport: egui::ViewportBuilder::default()
-            .with_app_id("wirewright")
-            .with_title("Wirewright")
-            .with_inner_size(WINDOW.0)
-            .with_min_inner_size(WINDOW.1),
-        ..Default::default()
+    let viewport = egui::ViewportBuilder::default()
+        .with_app_id("wirewright")
+        .with_title("Wirewright")
+        .with_inner_size(WINDOW.0)
+        .with_min_inner_size(WINDOW.1);
+    let viewport = match eframe::icon_data::from_png_bytes(ICON) {
+        Ok(icon) => viewport.with_icon(icon),
+        Err(_) => viewport, // A window without an icon is a window.
     };
+    let options = eframe::NativeOptions { viewport, ..Default::default() };
     let beginning = beginning(path);
     eframe::run_native(
         "wirewright",
@@ -109,5 +114,6 @@ mod tests {
     fn the_plans_that_come_with_the_program_are_sound() {
         assert!(!demo().bands.is_empty());
         assert!(new_station().feeds.len() >= 2);
+        assert!(eframe::icon_data::from_png_bytes(ICON).is_ok());
     }
 }

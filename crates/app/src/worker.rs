@@ -24,6 +24,11 @@ pub struct Answer {
     pub outcome: Result<Report, String>,
 }
 
+/// There is no one to ask.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, thiserror::Error)]
+#[error("the thread that computes has ended; please save the plan and start the program again")]
+pub struct Gone;
+
 /// The window's end of the two channels. Dropping it ends the thread.
 pub struct Worker {
     requests: Sender<Request>,
@@ -43,9 +48,11 @@ impl Worker {
     }
 
     /// Asks for a plan; older ones that were not begun yet are dropped.
-    pub fn ask(&self, plan: Plan, revision: u64) {
-        // A thread that is gone says so by the missing answer; `newest` reports it.
-        let _ = self.requests.send(Request { plan, revision });
+    ///
+    /// # Errors
+    /// [`Gone`] when the thread has ended.
+    pub fn ask(&self, plan: Plan, revision: u64) -> Result<(), Gone> {
+        self.requests.send(Request { plan, revision }).map_err(|_| Gone)
     }
 
     /// The newest answer since the last call.

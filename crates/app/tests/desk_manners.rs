@@ -4,7 +4,7 @@ mod common;
 
 use std::fs;
 
-use app::command::{Command, Desk, Edit, View};
+use app::command::{Command, Desk, Edit, Show, View};
 use app::desk::{Ask, Chosen};
 use app::start;
 use common::Window;
@@ -130,6 +130,20 @@ fn unsaved_work_is_asked_about() {
 }
 
 #[test]
+fn opening_asks_once_and_only_for_a_file_that_can_be_opened() {
+    let mut window = Window::open();
+    cut(&mut window, 37.0);
+    let path = window.file("hut.ron");
+    file::save(&other(), &path).unwrap();
+    window.will_choose(Chosen::Path(path));
+    window.ctrl(Key::O);
+    assert!(window.has("Save the changes first?"));
+    window.click("Go on without saving");
+    assert!(!window.has("Save the changes first?"));
+    assert_eq!(*window.plan(), other());
+}
+
+#[test]
 fn a_cancelled_save_loses_nothing() {
     let mut window = Window::open();
     cut(&mut window, 37.0);
@@ -233,7 +247,12 @@ fn a_refused_edit_says_why_and_a_stop_stands_in_the_status_line() {
     window.command(Command::Edit(Edit::Bands(Vec::new())));
     assert!(window.says("bands"));
     window.click("Dismiss");
-    cut(&mut window, 5_000.0);
-    assert!(window.says("cut_length_m") || window.says("wire"), "the stop is explained");
-    window.settle();
+    window.command(Command::Show(Show::View(View::Station)));
+    window.type_into("cut length", "5000");
+    window.key(Modifiers::NONE, Key::Enter);
+    assert!(window.says("no further: wires[0].cut_length_m"), "the stop is explained");
+    assert!(window.plan().wires[0].cut_length_m > 39.5, "it went as far as it could");
+    window.ctrl(Key::Z);
+    assert!(!window.says("no further"));
+    assert_eq!(*window.plan(), start::demo());
 }

@@ -132,8 +132,11 @@ impl Wirewright {
             findings::show(ui, found, out);
             ui.separator();
         }
-        let sentence = self.stop.as_deref().unwrap_or(under_pointer);
-        ui.add(egui::Label::new(RichText::new(sentence).small()).truncate());
+        let sentence = match &self.stop {
+            Some(stop) => RichText::new(format!("no further: {stop}")).color(ui.visuals().warn_fg_color),
+            None => RichText::new(under_pointer),
+        };
+        ui.add(egui::Label::new(sentence.small()).truncate());
     }
 
     fn model(&self, ui: &mut Ui) {

@@ -109,9 +109,9 @@ impl Wirewright {
                 Ok(stop) => self.stop = stop,
                 Err(refusal) => self.desk.say(Notice::problem(refusal.to_string())),
             },
-            Command::EndOfDrag => self.end_of_drag(),
-            Command::Undo => self.document.undo(),
-            Command::Redo => self.document.redo(),
+            Command::EndOfDrag => self.document.end_of_drag(),
+            Command::Undo => self.step(Document::undo),
+            Command::Redo => self.step(Document::redo),
             Command::Show(show) => {
                 self.looks.obey(show);
                 let looks = &self.looks;
@@ -122,8 +122,8 @@ impl Wirewright {
         self.looks.fit(self.document.plan());
     }
 
-    fn end_of_drag(&mut self) {
-        self.document.end_of_drag();
+    fn step(&mut self, step: fn(&mut Document)) {
+        step(&mut self.document);
         self.stop = None;
     }
 
@@ -195,6 +195,9 @@ impl Wirewright {
         let ctx = ui.ctx().clone();
         theme::choose(&ctx, self.looks.theme);
         self.move_on(&ctx);
+        if ctx.input(|input| input.pointer.any_pressed()) {
+            self.stop = None; // Read; the hand goes on.
+        }
         let mut commands = Vec::new();
         self.paint(ui, &mut commands);
         commands.append(&mut self.later);
@@ -217,7 +220,7 @@ impl Wirewright {
         }
         // Whatever a hand held, it holds it no longer: so no view can forget to say so.
         if ctx.input(|input| input.pointer.any_released()) {
-            self.end_of_drag();
+            self.document.end_of_drag();
         }
         self.answers.ask(&ctx, &self.document);
         self.set_title(&ctx);

@@ -25,7 +25,6 @@ use typed::Typed;
 #[derive(Clone, Debug)]
 enum Next {
     NewPlan,
-    AskForFile,
     /// Already read, so that a broken file costs no question.
     Show(Box<Plan>, PathBuf),
     Quit,
@@ -110,7 +109,7 @@ impl Desk {
     pub fn obey(&mut self, ctx: &egui::Context, document: &mut Document, command: DeskCommand) {
         match command {
             DeskCommand::NewPlan => self.leave(ctx, document, Next::NewPlan),
-            DeskCommand::Open => self.leave(ctx, document, Next::AskForFile),
+            DeskCommand::Open => self.ask(ctx, Ask::Open),
             DeskCommand::OpenPath(path) => self.open(ctx, document, path),
             DeskCommand::Save => self.save(ctx, document),
             DeskCommand::SaveAs => self.ask(ctx, Ask::SavePlan { suggested: suggested(document, "ron") }),
@@ -161,7 +160,6 @@ impl Desk {
     fn go_on(&mut self, ctx: &egui::Context, document: &mut Document, next: Next) {
         match next {
             Next::NewPlan => document.replace(start::new_station(), None),
-            Next::AskForFile => self.ask(ctx, Ask::Open),
             Next::Show(plan, path) => {
                 self.remember(|settings| settings.note_recent(&path));
                 document.replace(*plan, Some(path));
