@@ -202,7 +202,10 @@ fn add_blocks<S: Simd>(simd: S, row: &RowScale<S>, [sums, columns, table]: [&[f6
     let (table, _) = S::as_simd_f64s(table);
     let count = table.len() / FIELDS;
     let mut parts = blocks.parts.each_mut().map(|part| &mut S::as_mut_simd_f64s(part).0[..count]);
-    let pairs = sums.chunks_exact(SUMS * per).zip(columns.chunks_exact(3 * per)).zip(table.chunks_exact(FIELDS * per));
+    let pairs = sums
+        .chunks_exact(SUMS * per)
+        .zip(columns.chunks_exact(3 * per))
+        .zip(table.chunks_exact(FIELDS * per));
     for (chunk, ((sums, columns), fields)) in pairs.enumerate() {
         for part in 0..per {
             let cosine = Lanes::new(simd, fields[8 * per + part]);

@@ -4,7 +4,7 @@
 //! portable build is fast and nothing here is unsafe. The compiler must inline everything between the choice and the
 //! operators, which it does for functions marked so, not for closures: loops here are plain.
 
-use std::ops::{Add, Mul, Sub};
+use std::ops::{Add, Div, Mul, Sub};
 
 use pulp::Simd;
 
@@ -45,6 +45,16 @@ impl<S: Simd> Lanes<S> {
     #[inline(always)]
     pub fn times_from(self, factor: Self, term: Self) -> Self {
         Self { simd: self.simd, value: self.simd.negate_mul_add_e_f64s(self.value, factor.value, term.value) }
+    }
+
+    #[inline(always)]
+    pub fn sqrt(self) -> Self {
+        Self { simd: self.simd, value: self.simd.sqrt_f64s(self.value) }
+    }
+
+    #[inline(always)]
+    pub fn max(self, other: Self) -> Self {
+        Self { simd: self.simd, value: self.simd.max_f64s(self.value, other.value) }
     }
 
     /// Sum over the lanes.
@@ -136,6 +146,15 @@ impl<S: Simd> Mul for Lanes<S> {
     #[inline(always)]
     fn mul(self, other: Self) -> Self {
         Self { simd: self.simd, value: self.simd.mul_f64s(self.value, other.value) }
+    }
+}
+
+impl<S: Simd> Div for Lanes<S> {
+    type Output = Self;
+
+    #[inline(always)]
+    fn div(self, other: Self) -> Self {
+        Self { simd: self.simd, value: self.simd.div_f64s(self.value, other.value) }
     }
 }
 

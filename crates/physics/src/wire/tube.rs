@@ -45,7 +45,7 @@ impl Tubes {
     /// on half a turn leave e^(−2nw).
     fn near(&self, z: f64) -> Antiderivatives {
         let (a1, a2) = (self.radius_1_m, self.radius_2_m);
-        if z <= 0.0 && a1.total_cmp(&a2).is_eq() {
+        if z < CONTACT_RADII * a1 && a1.total_cmp(&a2).is_eq() {
             // b = 2a·sin(φ/2):  A₂ = −b,  A₄ = b³/9  with the means  b = 4a/π,  b³ = 32a³/3π
             let (second, fourth) = (-4.0 * a1 / PI, 32.0 * a1 * a1 * a1 / (27.0 * PI));
             return Antiderivatives { second, fourth, ..Antiderivatives::default() };
@@ -113,6 +113,8 @@ impl Tubes {
 const SERIES_FROM_RADII: f64 = 12.0;
 /// ln of the midpoint rule's error.
 const MIDPOINT_DIGITS: f64 = 10.0;
+/// Rings nearer than this, in radii, are one: neighbours meet within rounding.
+const CONTACT_RADII: f64 = 1e-6;
 /// Bounds the work for points closer than a hundredth of a radius, which a mesh does not have.
 const MOST_POINTS: f64 = 512.0;
 
