@@ -4,11 +4,7 @@
 
 use sheet::{Date, Paper, SheetRequest};
 use station::evaluate::Evaluator;
-use station::plan::{
-    Band, BandRange, ConductorChoice, ConductorData, Earth, Feed, Feedpoint, LineChoice, LineConstruction,
-    LineData, LinePiece, Link, LossLaw, MatchingUnit, PathPoint, Plan, Point, Site, Soil, Support,
-    SupportKind, Transformer, Transmitter, Wire,
-};
+use station::plan::{Band, BandRange, LineChoice, Link, PathPoint, Plan, Point, Support, SupportKind};
 use station::report::Report;
 use station::units::Units;
 
@@ -58,122 +54,34 @@ pub fn station(name: &str, plan: Plan) -> Station {
     Station { name: name.to_owned(), plan, report }
 }
 
-fn line(name: &str, z0_ohm: f64, velocity_factor: f64, length_m: f64, rating_peak_v: Option<f64>) -> Link {
-    let loss = LossLaw { k1_db_per_100m: 0.3, k2_db_per_100m: 0.01 };
-    let construction = LineConstruction::Published { z0_ohm, velocity_factor, loss };
-    let data = LineData { name: name.to_owned(), construction, rating_peak_v, source: String::new() };
-    Link::Line(LinePiece { line: LineChoice::Own(data), length_m })
-}
-
-fn unit() -> Link {
-    Link::MatchingUnit(MatchingUnit {
-        inductance_max_h: 28e-6,
-        capacitance_max_f: 500e-12,
-        coil_q: 200.0,
-        capacitor_q: 1000.0,
-        rating_peak_v: Some(1500.0),
-    })
-}
-
+/// The bands of the relief post and single channels with long names.
 fn bands(count: usize) -> Vec<Band> {
-    let known = [
-        ("160 m", 1.81, 2.0),
-        ("80 m", 3.5, 3.8),
-        ("60 m", 5.3515, 5.3665),
-        ("40 m", 7.0, 7.2),
-        ("30 m", 10.1, 10.15),
-        ("20 m", 14.0, 14.35),
-        ("17 m", 18.068, 18.168),
-        ("15 m", 21.0, 21.45),
-        ("12 m", 24.89, 24.99),
-        ("10 m", 28.0, 29.7),
-        ("6 m", 50.0, 52.0),
-    ];
-    let channels = |name: &str, mhz: &[f64]| Band {
-        name: name.to_owned(),
-        range: BandRange::Channels { frequencies_hz: mhz.iter().map(|f| f * 1e6).collect() },
-    };
-    let mut out: Vec<Band> = known
-        .iter()
-        .map(|(name, low, high)| Band {
-            name: (*name).to_owned(),
-            range: BandRange::Span { low_hz: low * 1e6, high_hz: high * 1e6 },
-        })
-        .collect();
-    out.push(channels("Relief net", &[3.895, 5.371, 7.635]));
+    let mut out = relief_post().bands;
     for index in out.len()..count {
-        out.push(channels(
-            &format!("Coordination of the northern valleys {index}"),
-            &[4.0 + index as f64 * 0.5],
-        ));
+        let name = longest(&format!("Coordination of the valleys {index}"), 60);
+        let frequencies_hz = vec![(4.0 + index as f64 * 0.5) * 1e6];
+        out.push(Band { name, range: BandRange::Channels { frequencies_hz } });
     }
-    out.truncate(count);
     out
 }
 
-fn support(name: &str, kind: SupportKind, x_m: f64, y_m: f64, height_m: f64) -> Support {
-    Support { name: name.to_owned(), kind, foot: Point::new(x_m, y_m, 0.0), height_m }
+/// The first support of the relief post, changed.
+fn support(name: &str, kind: SupportKind, x_m: f64, height_m: f64) -> Support {
+    let mut support = relief_post().site.supports.swap_remove(0);
+    name.clone_into(&mut support.name);
+    support.kind = kind;
+    support.foot = Point::new(x_m, 0.0, 0.0);
+    support.height_m = height_m;
+    support
 }
 
 fn on(name: &str, height_m: f64) -> PathPoint {
     PathPoint::OnSupport { support: name.to_owned(), height_m }
 }
 
-fn copper() -> ConductorChoice {
-    ConductorChoice::Own(ConductorData {
-        name: "bare copper 2 mm".to_owned(),
-        diameter_m: 0.002,
-        conductivity_s_per_m: 5.8e7,
-        stranding_factor: 1.0,
-        relative_permeability: 1.0,
-        core: None,
-        insulation: None,
-        source: String::new(),
-    })
-}
-
+/// Two feeds, twelve bands, a mast and a tree.
 pub fn relief_post() -> Plan {
-    Plan {
-        name: "Salt pan relief post".to_owned(),
-        purpose: "District office after the flood: voice and data to the three valley posts and the capital."
-            .to_owned(),
-        call_sign: "X9RLF".to_owned(),
-        edition: "B".to_owned(),
-        site: Site {
-            supports: vec![
-                support("north mast", SupportKind::Mast, 0.0, 0.0, 12.0),
-                support("cedar", SupportKind::Tree, 47.0, 6.0, 10.0),
-            ],
-            earth: Earth::Own(Soil { relative_permittivity: 13.0, conductivity_s_per_m: 0.005 }),
-            entrance: Point::new(18.0, -3.0, 1.5),
-        },
-        wires: vec![Wire {
-            name: "main wire".to_owned(),
-            path: vec![on("north mast", 11.5), on("cedar", 9.0)],
-            start_m: 3.2,
-            cut_length_m: 40.8,
-            conductor: copper(),
-        }],
-        feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
-        loads: Vec::new(),
-        feeds: vec![
-            Feed {
-                name: "open line".to_owned(),
-                links: vec![
-                    line("open wire 2 mm, 150 mm apart", 600.0, 0.97, 28.0, Some(4000.0)),
-                    Link::Transformer(Transformer { impedance_ratio: 4.0 }),
-                    unit(),
-                ],
-            },
-            Feed {
-                name: "coax".to_owned(),
-                links: vec![line("solid coax 10 mm", 50.0, 0.66, 31.5, None), unit()],
-            },
-        ],
-        bands: bands(12),
-        transmitter: Transmitter { power_w: 400.0, resistance_ohm: 50.0, swr_limit: 2.0 },
-        least_share_to_wire: 0.5,
-    }
+    station::file::from_text(include_str!("relief-post.ron")).unwrap()
 }
 
 fn far_entrance() -> Plan {
@@ -213,17 +121,25 @@ pub fn long_list() -> Plan {
     }
     plan.wires[0].path = vec![on(&plan.site.supports[0].name, 11.5), on(&plan.site.supports[1].name, 9.0)];
     plan.wires[0].name = longest("main wire of the centre", 60);
-    let window = line(&longest("window line", 80), 450.0, 0.91, 24.0, Some(900.0));
-    let thin = line("thin coax", 50.0, 0.66, 6.0, Some(500.0));
-    let links = vec![window, Link::Transformer(Transformer { impedance_ratio: 9.0 }), thin, unit()];
-    plan.feeds.push(Feed { name: "window line, second transmitter".to_owned(), links });
+    let mut third = plan.feeds[0].clone();
+    third.name = "window line, second transmitter".to_owned();
+    third.links.insert(2, plan.feeds[1].links[0].clone());
+    rate(&mut third.links[0], &longest("window line", 80), 900.0);
+    rate(&mut third.links[2], "thin coax", 500.0);
+    plan.feeds.push(third);
     for feed in &mut plan.feeds {
         feed.name = longest(&feed.name, 60);
     }
-    for band in &mut plan.bands[11..] {
-        band.name = longest(&band.name, 60);
-    }
+    plan.bands[11].name = longest(&plan.bands[11].name, 60);
     plan
+}
+
+/// Gives a line another name and a rating.
+fn rate(link: &mut Link, name: &str, rating_peak_v: f64) {
+    let Link::Line(piece) = link else { panic!("not a line") };
+    let LineChoice::Own(data) = &mut piece.line else { panic!("not a line of its own") };
+    data.name = name.to_owned();
+    data.rating_peak_v = Some(rating_peak_v);
 }
 
 fn hanging_ends() -> Plan {
@@ -232,9 +148,9 @@ fn hanging_ends() -> Plan {
     plan.call_sign = String::new();
     plan.purpose = String::new();
     plan.site.supports = vec![
-        support("west pole", SupportKind::Mast, 0.0, 0.0, 9.0),
-        support("hut", SupportKind::Building, 14.0, 0.0, 7.0),
-        support("east pole", SupportKind::Mast, 26.0, 0.0, 8.0),
+        support("west pole", SupportKind::Mast, 0.0, 9.0),
+        support("hut", SupportKind::Building, 14.0, 7.0),
+        support("east pole", SupportKind::Mast, 26.0, 8.0),
     ];
     plan.site.supports[2].foot.z_m = 2.5;
     plan.wires[0].path = vec![on("west pole", 9.0), on("hut", 7.0), on("east pole", 8.0)];
@@ -265,7 +181,9 @@ fn smallest() -> Plan {
     plan.edition = String::new();
     plan.purpose = String::new();
     plan.call_sign = String::new();
-    plan.feeds = vec![Feed { name: "direct".to_owned(), links: Vec::new() }];
+    plan.feeds.truncate(1);
+    plan.feeds[0].name = "direct".to_owned();
+    plan.feeds[0].links.clear();
     plan.bands.truncate(1);
     plan
 }
