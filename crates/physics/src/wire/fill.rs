@@ -18,11 +18,11 @@ pub(super) fn matrix(
     shares: &Shares,
     couplings: &[Coupling],
     own: &[[Complex64; 2]],
-    k: f64,
+    (k, reflected): (f64, Complex64),
 ) -> Symmetric {
     let mut matrix = Symmetric::zero(mesh.unknowns.len());
     let columns = Columns::new(mesh, k);
-    let fill = Fill { mesh, shares, couplings, own, columns: &columns, k, matrix: &mut matrix };
+    let fill = Fill { mesh, shares, couplings, own, columns: &columns, k, reflected, matrix: &mut matrix };
     Arch::new().dispatch(fill);
     matrix
 }
@@ -84,6 +84,8 @@ struct Fill<'a> {
     own: &'a [[Complex64; 2]],
     columns: &'a Columns,
     k: f64,
+    /// What the earth gives back of an image's part: 1 for the mirror.
+    reflected: Complex64,
     matrix: &'a mut Symmetric,
 }
 
@@ -107,6 +109,8 @@ impl WithSimd for Fill<'_> {
                 }
                 if coupling.sign > 0.0 {
                     add_sums(sums, row, kink(self.k, self.mesh.segments[row].length_m()));
+                } else if self.reflected != Complex64::ONE {
+                    weigh(sums, self.reflected);
                 }
                 let shapes = &self.columns.shapes[row];
                 let scale = RowScale::new(simd, shapes, coupling.sign);
@@ -129,6 +133,17 @@ fn add_sums(sums: &mut [f64], column: usize, terms: [f64; 4]) {
     let at = SUMS * PAD * (column / PAD) + column % PAD;
     for (index, term) in terms.into_iter().enumerate() {
         sums[at + PAD * index] += term;
+    }
+}
+
+/// Multiplies the sums of a row by a complex number.
+#[inline(always)]
+fn weigh(sums: &mut [f64], weight: Complex64) {
+    for block in sums.chunks_exact_mut(SUMS * PAD) {
+        let (re, im) = block.split_at_mut(4 * PAD);
+        for (re, im) in re.iter_mut().zip(im) {
+            (*re, *im) = (*re * weight.re - *im * weight.im, *re * weight.im + *im * weight.re);
+        }
     }
 }
 

@@ -6,6 +6,7 @@
 mod check;
 mod coupling;
 mod error;
+mod factors;
 mod fill;
 mod grading;
 mod lanes;

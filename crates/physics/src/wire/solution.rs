@@ -58,7 +58,7 @@ impl WireModel {
         let mesh = Mesh::new(&structure, &skeleton, fineness, highest_hz)?;
         let shares = Shares::new(&mesh);
         let mut couplings = vec![Coupling::new(&mesh.segments, &mesh.line_of, Sources::Themselves)];
-        if structure.boundary == Boundary::Mirror {
+        if structure.boundary.has_images() {
             couplings.push(Coupling::new(&mesh.segments, &mesh.line_of, Sources::Images));
         }
         Ok(Self { structure, skeleton, highest_hz, mesh, shares, couplings })
