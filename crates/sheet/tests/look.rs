@@ -14,5 +14,11 @@ fn write_all() {
             let pdf = sheet::pdf_for(&station.plan, &station.report, &request).unwrap();
             std::fs::write(folder.join(name), pdf).unwrap();
         }
+        let request = support::requests()[0];
+        let pages = sheet::lay_out(&station.plan, &station.report, &request).unwrap();
+        let name = station.name.replace(' ', "-");
+        std::fs::write(folder.join(format!("{name}.svg")), sheet::svg::write(&pages[0])).unwrap();
+        std::fs::write(folder.join(format!("{name}.skia.png")), sheet::png::write(&pages[0], 90.0).unwrap())
+            .unwrap();
     }
 }

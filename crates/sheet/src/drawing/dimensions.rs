@@ -182,7 +182,9 @@ pub(super) fn names(
 
 /// Where the entrance is, from the first fastening.
 fn entrance_words(elevation: &Elevation, units: Units) -> String {
-    let mut words = format!("entrance, {} up", units.tape(elevation.entrance.up_m));
+    let up_m = elevation.entrance.up_m;
+    let mut words =
+        format!("entrance, {} {}", units.tape(up_m.abs()), if up_m < 0.0 { "down" } else { "up" });
     let along_m = elevation.entrance.along_m;
     if along_m.abs() > LEAST_SPAN_M {
         let side = if along_m > 0.0 { "along" } else { "before the first support" };

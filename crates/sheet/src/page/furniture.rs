@@ -23,7 +23,7 @@ pub(crate) fn front_head(identity: &Identity, width_mm: f64) -> Block {
     let left_mm = width_mm - CODE_MM - space::GUTTER - FACTS_MM - space::GUTTER;
     let title = style_for(&[TextStyle::Title, TextStyle::Section], &identity.name, left_mm, 1);
     let mut y_mm = block.paragraph(0.0, 0.0, left_mm, Span::new(title, &identity.name));
-    let kind = if identity.call_sign.is_empty() {
+    let kind = if identity.call_sign.trim().is_empty() {
         "Station plan sheet".to_owned()
     } else {
         format!("Station plan sheet of {}", identity.call_sign)
