@@ -5,7 +5,7 @@ use std::ops::RangeInclusive;
 use super::error::WireError;
 use super::material::{Conductor, Metal};
 use super::skeleton::JOINT_TOLERANCE_M;
-use super::structure::{Boundary, PortPlace, Structure, WireShape};
+use super::structure::{PortPlace, Structure, WireShape};
 use super::vector::{Vec3, distance, dot, lerp, nearest, sub};
 use crate::constants::SPEED_OF_LIGHT_M_PER_S;
 

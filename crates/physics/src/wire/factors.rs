@@ -54,13 +54,8 @@ impl WithSimd for Factor<'_> {
         let mut end = order;
         while end > 0 {
             let begin = end.saturating_sub(PANEL);
-            for row in end..order {
-                let pivot = matrix.at(row, row);
-                for index in 0..end - begin {
-                    let weight = pivot * matrix.at(row, begin + index);
-                    weights[row][index] = weight.re;
-                    weights[row][PANEL + index] = weight.im;
-                }
+            for (row, weights) in weights.iter_mut().enumerate().skip(end) {
+                *weights = weights_of(matrix, row, begin);
             }
             update(simd, matrix, [begin, end], &weights);
             for row in (begin..end).rev() {
@@ -74,22 +69,34 @@ impl WithSimd for Factor<'_> {
     }
 }
 
+/// D·M of a row at the columns of a panel. A short panel is the first one; what its missing columns get is not used.
+#[inline(always)]
+fn weights_of(matrix: &Symmetric, row: usize, begin: usize) -> [f64; 2 * PANEL] {
+    let pivot = matrix.at(row, row);
+    let [re, im] = matrix.row(row);
+    let (re, im) = (&re[begin..begin + PANEL], &im[begin..begin + PANEL]);
+    let mut weights = [0.0; 2 * PANEL];
+    for index in 0..PANEL {
+        weights[index] = pivot.re * re[index] - pivot.im * im[index];
+        weights[PANEL + index] = pivot.re * im[index] + pivot.im * re[index];
+    }
+    weights
+}
+
 /// Takes all rows below the panel from its rows, one vector of columns at a time.
 #[inline(always)]
 fn update<S: Simd>(simd: S, matrix: &mut Symmetric, [begin, end]: [usize; 2], weights: &[[f64; 2 * PANEL]]) {
-    let order = matrix.order();
     let lanes = S::F64_LANES;
     let rows = end - begin;
     for column in (0..padded(end)).step_by(lanes) {
         let zero = Lanes::splat(simd, 0.0);
         let mut sum_re = [zero; PANEL];
         let mut sum_im = [zero; PANEL];
-        for row in end..order {
+        for (row, weight) in weights.iter().enumerate().skip(end) {
             let at = matrix.index(row, column);
             let (re, _) = S::as_simd_f64s(&matrix.re[at..at + lanes]);
             let (im, _) = S::as_simd_f64s(&matrix.im[at..at + lanes]);
             let (re, im) = (Lanes::new(simd, re[0]), Lanes::new(simd, im[0]));
-            let weight = &weights[row];
             for index in 0..PANEL {
                 let weight_re = Lanes::splat(simd, weight[index]);
                 let weight_im = Lanes::splat(simd, weight[PANEL + index]);
@@ -152,7 +159,12 @@ fn scale<S: Simd>(simd: S, [re, im]: [&mut [f64]; 2], factor: Complex64) {
 
 /// row ← row − source·factor
 #[inline(always)]
-fn subtract<S: Simd>(simd: S, [re, im]: [&mut [f64]; 2], [source_re, source_im]: [&[f64]; 2], factor: Complex64) {
+fn subtract<S: Simd>(
+    simd: S,
+    [re, im]: [&mut [f64]; 2],
+    [source_re, source_im]: [&[f64]; 2],
+    factor: Complex64,
+) {
     let (re, _) = S::as_mut_simd_f64s(re);
     let (im, _) = S::as_mut_simd_f64s(im);
     let (source_re, _) = S::as_simd_f64s(source_re);
@@ -294,7 +306,8 @@ mod tests {
             assert!(error < 1e-9, "order {order}: {error}");
             let (solution, residual) = matrix.solve(&drive).unwrap();
             assert!(residual < 1e-8, "order {order}: {residual}");
-            let left = (full_product(&matrix, &solution) - drive.map(Complex64::from)).map(|x| x.norm()).max();
+            let left =
+                (full_product(&matrix, &solution) - drive.map(Complex64::from)).map(|x| x.norm()).max();
             assert!((left - residual).abs() < 1e-12, "{left} {residual}");
         }
     }

@@ -216,7 +216,7 @@ fn add_blocks<S: Simd>(simd: S, row: &RowScale<S>, [sums, columns, table]: [&[f6
     let (columns, _) = S::as_simd_f64s(columns);
     let (table, _) = S::as_simd_f64s(table);
     let count = table.len() / FIELDS;
-    let mut parts = blocks.parts.each_mut().map(|part| &mut S::as_mut_simd_f64s(part).0[..count]);
+    let parts = blocks.parts.each_mut().map(|part| &mut S::as_mut_simd_f64s(part).0[..count]);
     let pairs = sums
         .chunks_exact(SUMS * per)
         .zip(columns.chunks_exact(3 * per))

@@ -9,7 +9,7 @@ use std::ops::{Add, Div, Mul, Sub};
 use pulp::Simd;
 
 /// Tables are padded to this many values: a multiple of the lanes of every instruction set that is compiled in.
-pub(super) const PAD: usize = 4;
+pub(super) const PAD: usize = 8;
 
 /// Length rounded up to whole vectors.
 pub(super) fn padded(length: usize) -> usize {

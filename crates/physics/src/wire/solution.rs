@@ -16,7 +16,7 @@ use super::segment::{EndCurrents, Segment};
 use super::shapes::Shapes;
 use super::shares::Shares;
 use super::skeleton::{End, Skeleton};
-use super::structure::{Boundary, Structure, WireShape};
+use super::structure::{Structure, WireShape};
 use crate::constants::{VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
 
 /// A structure with its mesh and everything about it that does not depend on frequency.
@@ -113,7 +113,8 @@ impl WireModel {
         // Everything over jkη/4π
         let scale_s = Complex64::new(0.0, -2.0 * TAU / (k * VACUUM_IMPEDANCE_OHM));
         let own = self.own_impedances(scale_s, frequency_hz);
-        let matrix = fill::matrix(&self.mesh, &self.shares, &self.couplings, &own, k);
+        let reflected = self.structure.boundary.reflected(frequency_hz);
+        let matrix = fill::matrix(&self.mesh, &self.shares, &self.couplings, &own, (k, reflected));
         let drive = self.drive(k);
         let (solution, residual) =
             matrix.solve(&drive).ok_or(WireError::Singular { frequency_hz, residual: f64::INFINITY })?;

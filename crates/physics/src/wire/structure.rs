@@ -67,7 +67,7 @@ impl Boundary {
     }
 
     /// What is given back of an image's part: 1 by the mirror.
-    pub(super) fn reflected(self, frequency_hz: f64) -> Complex64 {
+    pub(crate) fn reflected(self, frequency_hz: f64) -> Complex64 {
         match self {
             Self::FreeSpace | Self::Mirror => Complex64::ONE,
             Self::Soil { relative_permittivity, conductivity_s_per_m } => {
