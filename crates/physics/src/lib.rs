@@ -13,8 +13,10 @@
 
 pub mod conductor;
 pub mod constants;
+pub mod field;
 pub mod line;
 pub mod network;
 pub mod sinusoid;
 pub mod special;
+pub mod sweep;
 pub mod wire;
