@@ -1,0 +1,1 @@
+//! Fields of known currents: near, far, and the power that leaves.
