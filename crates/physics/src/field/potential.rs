@@ -1,0 +1,141 @@
+//! Scalar potential at the surface of a wire.
+
+use std::f64::consts::PI;
+
+use num_complex::Complex64;
+
+use super::quadrature::THREE;
+use crate::constants::{VACUUM_PERMITTIVITY_F_PER_M, wave_number_rad_per_m};
+use crate::wire::{Boundary, EndCurrents, Segment};
+
+/// A place on the surface of a wire.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SurfacePoint {
+    /// On the axis, m.
+    pub axis_m: [f64; 3],
+    /// Radius of the wire there, m.
+    pub radius_m: f64,
+}
+
+/// The charges of a structure at one frequency, ready for potentials.
+#[derive(Clone, Debug)]
+pub struct PotentialSource<'a> {
+    charged: Vec<Charged<'a>>,
+    boundary: Boundary,
+    reflected: Complex64,
+    frequency_hz: f64,
+    k: f64,
+}
+
+/// A segment with its charge.
+#[derive(Clone, Debug)]
+struct Charged<'a> {
+    segment: &'a Segment,
+    ends: &'a EndCurrents,
+    direction: [f64; 3],
+    length_m: f64,
+    /// Place and charge at the Gauss points of the whole segment, m and C.
+    points: [([f64; 3], Complex64); 3],
+    /// Their sum, C.
+    whole_c: Complex64,
+}
+
+/// A piece of wire that is longer than this many times its distance is divided.
+const NEAR: f64 = 1.5;
+/// Beyond this many lengths a segment is a point: its neighbours' charges balance what that leaves out, 1/24 of the
+/// square.
+const FAR: f64 = 12.0;
+
+impl<'a> PotentialSource<'a> {
+    /// The source for currents at the ends of segments (A peak).
+    #[must_use]
+    pub fn new(
+        segments: &'a [Segment],
+        currents: &'a [EndCurrents],
+        boundary: Boundary,
+        frequency_hz: f64,
+    ) -> Self {
+        let charged =
+            segments.iter().zip(currents).map(|(segment, ends)| Charged::new(segment, ends, frequency_hz));
+        let k = wave_number_rad_per_m(frequency_hz);
+        let reflected = boundary.reflected(frequency_hz);
+        Self { charged: charged.collect(), boundary, reflected, frequency_hz, k }
+    }
+
+    /// Scalar potential (Lorenz gauge), V peak, against far away.
+    ///
+    /// Of the charge on all wires, taken on their axes and seen from the surface. Indicative: only its jump across a
+    /// gap can be measured, and equals the voltage there but for the inductance of the gap.
+    #[must_use]
+    pub fn potential_v(&self, at: SurfacePoint) -> Complex64 {
+        let [x, y, z] = at.axis_m;
+        let mirrored = SurfacePoint { axis_m: [x, y, -z], ..at };
+        let mut sum = Complex64::ZERO;
+        for charged in &self.charged {
+            sum += self.of(charged, at);
+            if self.boundary.has_images() {
+                // The image carries the opposite charge.
+                sum -= self.reflected * self.of(charged, mirrored);
+            }
+        }
+        sum / (4.0 * PI * VACUUM_PERMITTIVITY_F_PER_M)
+    }
+
+    /// ∫ q·e^(−jkR)/R over a segment.
+    fn of(&self, charged: &Charged, at: SurfacePoint) -> Complex64 {
+        let (middle, _) = charged.points[1];
+        let r = distance(middle, at);
+        if r > FAR * charged.length_m {
+            return charged.whole_c * Complex64::cis(-self.k * r) / r;
+        }
+        if charged.length_m > NEAR * r {
+            return self.divided(charged, at, (0.0, charged.length_m));
+        }
+        charged.points.iter().map(|&(place, charge)| self.seen(charge, distance(place, at))).sum()
+    }
+
+    /// The same over a part of a segment, divided until it is shorter than its distance.
+    fn divided(&self, charged: &Charged, at: SurfacePoint, (from_m, to_m): (f64, f64)) -> Complex64 {
+        let length_m = to_m - from_m;
+        let middle_m = 0.5 * (from_m + to_m);
+        if length_m > NEAR * distance(charged.place(middle_m), at) {
+            return self.divided(charged, at, (from_m, middle_m))
+                + self.divided(charged, at, (middle_m, to_m));
+        }
+        THREE
+            .iter()
+            .map(|&(share, weight)| {
+                let along_m = from_m + share * length_m;
+                let density = charged.ends.charge_c_per_m(charged.segment, self.frequency_hz, along_m);
+                self.seen(density * (weight * length_m), distance(charged.place(along_m), at))
+            })
+            .sum()
+    }
+
+    fn seen(&self, charge_c: Complex64, r: f64) -> Complex64 {
+        charge_c * Complex64::cis(-self.k * r) / r
+    }
+}
+
+impl<'a> Charged<'a> {
+    fn new(segment: &'a Segment, ends: &'a EndCurrents, frequency_hz: f64) -> Self {
+        let (direction, length_m) = (segment.direction(), segment.length_m());
+        let points = THREE.map(|(share, weight)| {
+            let along_m = share * length_m;
+            let charge = ends.charge_c_per_m(segment, frequency_hz, along_m) * (weight * length_m);
+            (std::array::from_fn(|axis| segment.from_m[axis] + along_m * direction[axis]), charge)
+        });
+        let whole_c = points.iter().map(|(_, charge)| charge).sum();
+        Self { segment, ends, direction, length_m, points, whole_c }
+    }
+
+    fn place(&self, along_m: f64) -> [f64; 3] {
+        std::array::from_fn(|axis| self.segment.from_m[axis] + along_m * self.direction[axis])
+    }
+}
+
+/// From a place on an axis to the surface point, m: √(d² + a²).
+fn distance(place_m: [f64; 3], at: SurfacePoint) -> f64 {
+    let d2: f64 = (0..3).map(|axis| (place_m[axis] - at.axis_m[axis]).powi(2)).sum();
+    (d2 + at.radius_m * at.radius_m).sqrt()
+}
