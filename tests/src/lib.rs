@@ -1,5 +1,7 @@
 //! What several checks share: tables of published values, each with the source and the tolerance that go with it.
 
+pub mod reference;
+
 use std::path::Path;
 
 use num_complex::Complex64;

@@ -11,7 +11,7 @@ const ALLOWED: [(&str, &[&str]); 4] =
     [("physics", &[]), ("station", &["physics"]), ("sheet", &["station"]), ("app", &["sheet", "station"])];
 
 /// What physics may use at all: numbers, nothing that knows files, threads, clocks, screens or formats.
-const PURE: [&str; 5] = ["complex-bessel", "nalgebra", "num-complex", "spec_math", "thiserror"];
+const PURE: [&str; 6] = ["complex-bessel", "nalgebra", "num-complex", "pulp", "spec_math", "thiserror"];
 
 fn root() -> PathBuf {
     Path::new(env!("CARGO_MANIFEST_DIR")).parent().expect("tests/ lies in the workspace").to_owned()

@@ -309,7 +309,9 @@ fn the_catalogue_follows_published_attenuation() {
 
 #[test]
 fn coefficients_said_to_be_derived_are_those_of_the_geometry() {
-    for Derived { id, source, relative_tolerance, diameter_mm, excess } in data::<Loss>("line/loss.toml").derived {
+    for Derived { id, source, relative_tolerance, diameter_mm, excess } in
+        data::<Loss>("line/loss.toml").derived
+    {
         let (z0_ohm, law) = catalogue_law(&id);
         let wire =
             RoundWire { radius_m: diameter_mm * 0.5e-3, conductivity_s_per_m: COPPER_CONDUCTIVITY_S_PER_M };

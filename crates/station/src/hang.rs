@@ -7,7 +7,7 @@
 use thiserror::Error;
 
 use crate::catalogue::{self, CatalogueError};
-use crate::plan::{ConductorData, PathPoint, Plan, Point, Site, Wire};
+use crate::plan::{ConductorData, Earth, PathPoint, Plan, Point, Site, Wire};
 
 /// The wires as they hang, the ropes that hold them, and the feedpoint.
 #[derive(Clone, Debug, PartialEq)]
@@ -109,7 +109,7 @@ pub enum HangError {
     },
     /// A path of no length.
     #[error(
-        "wires[{wire}].path: it is {length_m:.2} m long; accepted: two or more points at least 0.1 m apart"
+        "wires[{wire}].path: it is {length_m:.2} m long; accepted: two or more points at least 0.02 m apart"
     )]
     NoPath {
         /// Index of the wire.
@@ -169,7 +169,12 @@ pub fn hang(plan: &Plan) -> Result<Hung, HangError> {
     let mut ropes = Vec::new();
     for (index, wire) in plan.wires.iter().enumerate() {
         let path = resolve_path(&plan.site, index, wire)?;
-        wires.push(hang_wire(index, wire, &path)?);
+        let hung = hang_wire(index, wire, &path)?;
+        // Without an earth there is nothing to hang too low over.
+        if !matches!(plan.site.earth, Earth::NoEarth) {
+            check_height(index, &hung.vertices)?;
+        }
+        wires.push(hung);
         ropes.extend(ropes_of(index, wire, &path));
     }
     let index = plan.feedpoint.wire;
@@ -214,7 +219,7 @@ pub fn resolve_path(site: &Site, index: usize, wire: &Wire) -> Result<Vec<Vertex
         }
         path.push(Vertex { at, arc_m });
     }
-    if arc_m < 0.1 {
+    if arc_m < 0.02 {
         return Err(HangError::NoPath { wire: index, length_m: arc_m });
     }
     Ok(path)
@@ -250,7 +255,6 @@ fn hang_wire(index: usize, wire: &Wire, path: &[Vertex]) -> Result<HungWire, Han
     } else {
         push(on_path(path, end_m), end_m);
     }
-    check_height(index, &vertices)?;
     Ok(HungWire { vertices, conductor })
 }
 

@@ -180,7 +180,7 @@ fn check_wire(field: &str, wire: &Wire) -> Checked {
         }
     }
     number(&format!("{field}.start_m"), wire.start_m, -1_000.0..=1_000.0, "m")?;
-    number(&format!("{field}.cut_length_m"), wire.cut_length_m, 0.5..=1_000.0, "m")?;
+    number(&format!("{field}.cut_length_m"), wire.cut_length_m, 0.05..=1_000.0, "m")?;
     match &wire.conductor {
         ConductorChoice::Own(data) => parts::check_conductor(&format!("{field}.conductor"), data),
         ConductorChoice::Catalogue(_) => catalogue::conductor(&wire.conductor)

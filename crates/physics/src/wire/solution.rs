@@ -25,9 +25,9 @@ pub struct WireModel {
     structure: Structure,
     skeleton: Skeleton,
     highest_hz: f64,
-    mesh: Mesh,
-    shares: Shares,
-    couplings: Vec<Coupling>,
+    pub(super) mesh: Mesh,
+    pub(super) shares: Shares,
+    pub(super) couplings: Vec<Coupling>,
 }
 
 impl WireModel {

@@ -2,21 +2,24 @@
 
 use crate::hang::Hung;
 use crate::plan::{Earth, Link, Plan};
-use crate::report::{BandReport, Finding, Place, Weight};
+use crate::report::{BandReport, Finding, Model, Place, Weight};
 use crate::units;
 
 /// Below this height someone standing can reach the wire (common practice: 2.5 m).
 const REACH_M: f64 = 2.5;
-/// Below this share of a wavelength the sketch's earth is rough: reflection coefficients are off by more than a tenth.
+/// Below this share of a wavelength a reflection coefficient is off by more than a tenth.
 const LOW_WIRE_WAVELENGTHS: f64 = 0.12;
 
-pub(super) fn findings(plan: &Plan, hung: &Hung, bands: &[BandReport]) -> Vec<Finding> {
+pub(super) fn findings(plan: &Plan, hung: &Hung, bands: &[BandReport], model: Model) -> Vec<Finding> {
     let mut found = Vec::new();
     unworkable_bands(plan, bands, &mut found);
     short_lines(plan, hung, &mut found);
     within_reach(hung, &mut found);
     end_voltage(plan, bands, &mut found);
-    limits_of_the_sketch(plan, hung, bands, &mut found);
+    if model == Model::Sketch {
+        limits_of_the_sketch(hung, &mut found);
+    }
+    rough_earth(plan, hung, bands, &mut found);
     found.sort_by_key(|finding| finding.weight);
     found
 }
@@ -87,7 +90,7 @@ fn end_voltage(plan: &Plan, bands: &[BandReport], found: &mut Vec<Finding>) {
     }
 }
 
-fn limits_of_the_sketch(plan: &Plan, hung: &Hung, bands: &[BandReport], found: &mut Vec<Finding>) {
+fn limits_of_the_sketch(hung: &Hung, found: &mut Vec<Finding>) {
     let fed = hung.feedpoint.wire;
     let mut note = |weight, place, text: &str| found.push(Finding { weight, place, text: text.to_owned() });
     if hung.wires[fed].vertices.len() > 2 {
@@ -97,9 +100,14 @@ fn limits_of_the_sketch(plan: &Plan, hung: &Hung, bands: &[BandReport], found: &
     if hung.wires.len() > 1 {
         note(Weight::Caution, Place::Plan, "The sketch sees only the fed wire; the others are left out.");
     }
-    if matches!(plan.site.earth, Earth::NoEarth) {
+}
+
+/// Both models know soil by its reflection coefficient straight down.
+fn rough_earth(plan: &Plan, hung: &Hung, bands: &[BandReport], found: &mut Vec<Finding>) {
+    if matches!(plan.site.earth, Earth::NoEarth | Earth::Mirror) {
         return;
     }
+    let fed = hung.feedpoint.wire;
     let lowest_hz = bands.iter().map(|band| band.low_hz).fold(f64::INFINITY, f64::min);
     let height_m = super::sketch::mean_height_m(&hung.wires[fed]);
     let wavelengths = height_m * lowest_hz / physics::constants::SPEED_OF_LIGHT_M_PER_S;
@@ -108,7 +116,7 @@ fn limits_of_the_sketch(plan: &Plan, hung: &Hung, bands: &[BandReport], found: &
             weight: Weight::Caution,
             place: Place::Wire(fed),
             text: format!(
-                "At {height_m:.1} m the wire hangs only {wavelengths:.2} wavelengths high on the lowest band: the sketch's earth is rough there, expect R to be off by a tenth or more."
+                "At {height_m:.1} m the wire hangs only {wavelengths:.2} wavelengths high on the lowest band: the soil is only known by its reflection there, expect R to be off by a tenth or more."
             ),
         });
     }

@@ -3,20 +3,28 @@
 //! | stage | inputs | kept while |
 //! | --- | --- | --- |
 //! | geometry (`hang`) | supports, wires, feedpoint | cheap, never kept |
-//! | wire solution (`sketch`) | hung wires, earth, frequencies | none of them changes |
+//! | wire solution (`full`, `sketch`) | hung wires, places of ports, earth, frequencies | none of them changes |
+//! | loads | the wire solution and the loads' circuits | cheap, never kept |
 //! | feeds (`chain`) | one feed, frequencies | that feed stays the same |
 //! | watts and verdicts (`watts`, `judge`) | all of it, transmitter, limits | cheap, never kept |
 
 mod chain;
 mod findings;
+mod full;
 mod grid;
 mod judge;
 mod sketch;
 mod watts;
 mod wire;
 
+pub use physics::field::Direction;
+
+pub use self::full::{Gains, Proof};
+
 use physics::line::LineError;
 use physics::sinusoid::SketchError;
+use physics::sweep::SweepError;
+use physics::wire::WireError;
 use thiserror::Error;
 
 use self::chain::Chain;
@@ -26,7 +34,7 @@ use self::watts::Passage;
 use self::wire::{BandSolution, WireSolution};
 use crate::catalogue::CatalogueError;
 use crate::hang::{HangError, Hung, hang};
-use crate::plan::{Feed, Plan};
+use crate::plan::{Earth, Feed, Plan};
 use crate::report::{BandFeed, BandReport, FrequencyReport, Model, Report};
 use crate::validate::{self, PlanError};
 
@@ -70,6 +78,12 @@ pub enum EvaluateError {
         /// What the wire model says.
         source: SketchError,
     },
+    /// The wires are nothing that the full model can take.
+    #[error("wires: {0}")]
+    Solver(#[from] WireError),
+    /// The frequencies cannot be swept.
+    #[error("bands: {0}")]
+    Sweep(#[from] SweepError),
     /// A frequency that was asked for is outside the program's range.
     #[error("{megahertz} MHz is out of range; accepted: 1.8 to 54 MHz")]
     Frequency {
@@ -84,17 +98,32 @@ pub enum EvaluateError {
 /// Turns plans into reports and keeps what it can between them.
 #[derive(Debug, Default)]
 pub struct Evaluator {
-    wire: Option<(WireKey, WireSolution)>,
+    full: Option<(WireKey, full::Solved)>,
+    sketch: Option<(WireKey, WireSolution)>,
     chains: Vec<(Feed, Chain)>,
-    /// The frequencies that `wire` and `chains` were made for.
+    /// The frequencies that all of these were made for.
     grids: Vec<Grid>,
 }
 
-/// What the wire solution depends on, beside the frequencies.
+/// What a wire solution depends on, beside the frequencies.
 #[derive(Clone, Debug, PartialEq)]
 struct WireKey {
     hung: Hung,
-    earth: crate::plan::Earth,
+    earth: Earth,
+    gap_m: f64,
+    /// Wire and fraction of each load.
+    load_places: Vec<(usize, f64)>,
+}
+
+impl WireKey {
+    fn new(plan: &Plan, hung: &Hung) -> Self {
+        Self {
+            hung: hung.clone(),
+            earth: plan.site.earth.clone(),
+            gap_m: plan.feedpoint.gap_m,
+            load_places: plan.loads.iter().map(|load| (load.wire, load.fraction)).collect(),
+        }
+    }
 }
 
 impl Evaluator {
@@ -104,17 +133,25 @@ impl Evaluator {
         Self::default()
     }
 
-    /// Evaluates a plan on all its bands.
+    /// Evaluates a plan on all its bands with the full model.
     ///
     /// # Errors
     /// [`EvaluateError`], one sentence with the field that is the cause.
     pub fn evaluate(&mut self, plan: &Plan, revision: u64) -> Result<Report, EvaluateError> {
-        let grids = plan.bands.iter().map(Grid::of_band).collect();
         validate::check(plan)?;
-        self.run(plan, revision, grids)
+        self.run(plan, revision, plan.bands.iter().map(Grid::of_band).collect(), Self::full)
     }
 
-    /// Evaluates a plan at the given frequencies (Hz), as one list of channels named "asked".
+    /// Evaluates a plan on all its bands with the sketch: for the moment until the full answer is there.
+    ///
+    /// # Errors
+    /// As [`Self::evaluate`].
+    pub fn sketch(&mut self, plan: &Plan, revision: u64) -> Result<Report, EvaluateError> {
+        validate::check(plan)?;
+        self.run(plan, revision, plan.bands.iter().map(Grid::of_band).collect(), Self::sketched)
+    }
+
+    /// Evaluates a plan at the given frequencies (Hz), as one list of channels named "asked", with the full model.
     ///
     /// # Errors
     /// As [`Self::evaluate`], and for frequencies outside the program's range.
@@ -131,17 +168,44 @@ impl Evaluator {
             return Err(EvaluateError::Frequency { megahertz: bad / 1e6 });
         }
         validate::check(plan)?;
-        self.run(plan, revision, vec![Grid::of_frequencies("asked", frequencies_hz.to_vec())])
+        self.run(plan, revision, vec![Grid::of_frequencies("asked", frequencies_hz.to_vec())], Self::full)
     }
 
-    fn run(&mut self, plan: &Plan, revision: u64, grids: Vec<Grid>) -> Result<Report, EvaluateError> {
+    /// What stands behind the newest full answer, at one of its frequencies; `None` before the first one.
+    ///
+    /// # Errors
+    /// What the solver refuses on the finer mesh.
+    pub fn prove(&self, plan: &Plan, frequency_hz: f64) -> Result<Option<Proof>, EvaluateError> {
+        let solved = self.full.as_ref().map(|(_, solved)| solved.prove(plan, frequency_hz));
+        solved.transpose()
+    }
+
+    /// Gains of the newest full answer at one of its frequencies; `None` before the first one and over soil.
+    ///
+    /// # Errors
+    /// A frequency outside the answer's range.
+    pub fn gains(
+        &self,
+        plan: &Plan,
+        frequency_hz: f64,
+        directions: &[Direction],
+    ) -> Result<Option<Gains>, EvaluateError> {
+        let Some((_, solved)) = &self.full else { return Ok(None) };
+        solved.gains(plan, frequency_hz, directions)
+    }
+
+    fn run(
+        &mut self,
+        plan: &Plan,
+        revision: u64,
+        grids: Vec<Grid>,
+        solve: fn(&mut Self, &Plan, &Hung) -> Result<(Model, WireSolution), EvaluateError>,
+    ) -> Result<Report, EvaluateError> {
         if self.grids != grids {
-            self.wire = None;
-            self.chains.clear();
-            self.grids = grids;
+            *self = Self { grids, ..Self::default() };
         }
         let hung = hang(plan)?;
-        let (key, solution) = self.solve_wire(plan, &hung)?;
+        let (model, solution) = solve(self, plan, &hung)?;
         self.resolve_chains(&plan.feeds)?;
         let chains: Vec<&Chain> = self.chains.iter().map(|(_, chain)| chain).collect();
 
@@ -151,11 +215,10 @@ impl Evaluator {
             bands.push(band_report(plan, grid, solved, &chains, offset));
             offset += grid.frequencies_hz.len();
         }
-        self.wire = Some((key, solution));
-        let findings = findings::findings(plan, &hung, &bands);
+        let findings = findings::findings(plan, &hung, &bands, model);
         Ok(Report {
             revision,
-            model: Model::Sketch,
+            model,
             hung,
             feed_names: plan.feeds.iter().map(|feed| feed.name.clone()).collect(),
             link_names: chains.iter().map(|chain| chain.names.clone()).collect(),
@@ -164,16 +227,31 @@ impl Evaluator {
         })
     }
 
-    /// The kept solution where nothing that it depends on has changed, else a new one.
-    fn solve_wire(&mut self, plan: &Plan, hung: &Hung) -> Result<(WireKey, WireSolution), EvaluateError> {
-        let key = WireKey { hung: hung.clone(), earth: plan.site.earth.clone() };
-        match self.wire.take() {
-            Some((kept, solution)) if kept == key => Ok((kept, solution)),
-            _ => {
-                let solution = sketch::solve(hung, &plan.site.earth, &self.grids)?;
-                Ok((key, solution))
+    /// The full model; solved wires are kept where nothing that they depend on has changed.
+    fn full(&mut self, plan: &Plan, hung: &Hung) -> Result<(Model, WireSolution), EvaluateError> {
+        let key = WireKey::new(plan, hung);
+        let solved = match self.full.take() {
+            Some((kept, solved)) if kept == key => solved,
+            before => {
+                let boundary = full::boundary(&plan.site.earth)?;
+                let before = before.map(|(_, solved)| solved);
+                full::Solved::new(plan, hung, boundary, &self.grids, before.as_ref())?
             }
-        }
+        };
+        let solution = solved.answer(plan, hung, &self.grids)?;
+        let model = Model::Full { unknowns: solved.unknowns() };
+        self.full = Some((key, solved));
+        Ok((model, solution))
+    }
+
+    fn sketched(&mut self, plan: &Plan, hung: &Hung) -> Result<(Model, WireSolution), EvaluateError> {
+        let key = WireKey::new(plan, hung);
+        let solution = match self.sketch.take() {
+            Some((kept, solution)) if kept == key => solution,
+            _ => sketch::solve(hung, &plan.site.earth, &self.grids)?,
+        };
+        self.sketch = Some((key, solution.clone()));
+        Ok((Model::Sketch, solution))
     }
 
     /// A feed that is the same as one of the kept ones, at whatever place, is not resolved again.

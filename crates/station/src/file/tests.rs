@@ -37,7 +37,7 @@ fn bad_files_say_what_where_and_what_instead() {
         (good.replace("format: (1, 0)", "format: (0, 9)"), &["0.9 does not exist", "accepted"]),
         (
             good.replace("cut_length_m: 40.0", "cut_length_m: -40.0"),
-            &["wires[0].cut_length_m", "-40 m", "0.5 to 1000 m"],
+            &["wires[0].cut_length_m", "-40 m", "0.05 to 1000 m"],
         ),
         (
             good.replace("cut_length_m: 40.0", "cut_length_m: NaN"),

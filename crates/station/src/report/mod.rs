@@ -18,6 +18,11 @@ use crate::hang::Hung;
 pub enum Model {
     /// Sinusoidal standing waves on one straight wire; earth as a mirror with a reflection coefficient.
     Sketch,
+    /// The integral equation of thin wires, solved for every wire of the plan.
+    Full {
+        /// Number of unknown currents.
+        unknowns: usize,
+    },
 }
 
 impl Model {
@@ -26,6 +31,7 @@ impl Model {
     pub fn name(self) -> &'static str {
         match self {
             Self::Sketch => "sketch (sinusoidal currents)",
+            Self::Full { .. } => "full model",
         }
     }
 }

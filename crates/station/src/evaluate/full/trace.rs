@@ -73,7 +73,10 @@ fn nearest_edge(wire: &HungWire, point: [f64; 3]) -> usize {
     let distance = |edge: usize| {
         let (from, to) = (coordinates(wire.vertices[edge].at), coordinates(wire.vertices[edge + 1].at));
         let share = share_along(from, to, point).clamp(0.0, 1.0);
-        (0..3).map(|axis| from[axis] + share * (to[axis] - from[axis]) - point[axis]).map(|d| d * d).sum::<f64>()
+        (0..3)
+            .map(|axis| from[axis] + share * (to[axis] - from[axis]) - point[axis])
+            .map(|d| d * d)
+            .sum::<f64>()
     };
     (0..wire.vertices.len() - 1).min_by(|&a, &b| distance(a).total_cmp(&distance(b))).unwrap_or(0)
 }

@@ -1,0 +1,96 @@
+//! Solutions at all frequencies: solved one by one where there are few, else swept.
+
+use nalgebra::DMatrix;
+use num_complex::Complex64;
+use physics::sweep::{Fit, Sample, Sweep, SweepRange};
+use physics::wire::ports::attach;
+use physics::wire::{Load, WireModel};
+use rayon::prelude::*;
+
+use crate::evaluate::EvaluateError;
+
+/// Largest relative error of the sweep's fit.
+const TOLERANCE: f64 = 5e-4;
+/// So few frequencies are solved directly: a sweep would need more solutions.
+const FEW: usize = 8;
+
+/// The wires' ports and currents at every frequency of the plan.
+#[derive(Clone, Debug)]
+pub(super) enum Answers {
+    /// Direct solutions, by rising frequency.
+    Direct(Vec<Sample>),
+    Swept(Fit),
+}
+
+impl Answers {
+    /// `before` is the number of solutions that each section of an earlier sweep took.
+    pub fn new(model: &WireModel, frequencies_hz: &[f64], before: &[usize]) -> Result<Self, EvaluateError> {
+        if frequencies_hz.len() <= FEW {
+            return solve(model, frequencies_hz).map(Self::Direct);
+        }
+        let range = range(model, frequencies_hz);
+        let mut sweep = Sweep::like(&range, before)?;
+        loop {
+            let wanted_hz = sweep.wanted_hz();
+            if wanted_hz.is_empty() {
+                return Ok(Self::Swept(sweep.into_fit()));
+            }
+            sweep.give(solve(model, &wanted_hz)?)?;
+        }
+    }
+
+    /// All currents and admittances at a frequency of the plan.
+    pub fn sample(&self, frequency_hz: f64) -> Result<Sample, EvaluateError> {
+        match self {
+            Self::Direct(samples) => {
+                let off = |sample: &&Sample| (sample.frequency_hz - frequency_hz).abs();
+                let nearest = samples.iter().min_by(|a, b| off(a).total_cmp(&off(b)));
+                nearest.cloned().ok_or(EvaluateError::NoFrequency)
+            }
+            Self::Swept(fit) => Ok(fit.sample(frequency_hz)?),
+        }
+    }
+
+    /// Impedance at the feedpoint (port 0) with loads on the other ports, at rising frequencies of the plan, Ω.
+    pub fn feedpoint(&self, frequencies_hz: &[f64], loads: &[Load]) -> Result<Vec<Complex64>, EvaluateError> {
+        let loaded = |frequency_hz: f64, admittance_s: &DMatrix<Complex64>| {
+            let fed = attach(admittance_s, &super::uses(loads, frequency_hz), frequency_hz)?;
+            Ok(fed.admittance_s[(0, 0)].inv())
+        };
+        match self {
+            Self::Direct(_) => frequencies_hz
+                .iter()
+                .map(|&frequency_hz| loaded(frequency_hz, &self.sample(frequency_hz)?.admittance_s))
+                .collect(),
+            Self::Swept(fit) => {
+                let admittances = fit.admittances(frequencies_hz)?;
+                if loads.is_empty() {
+                    return Ok(admittances.entry_s(0, 0).iter().map(Complex64::inv).collect());
+                }
+                let each = frequencies_hz.iter().enumerate();
+                each.map(|(index, &frequency_hz)| loaded(frequency_hz, &admittances.matrix_s(index)))
+                    .collect()
+            }
+        }
+    }
+
+    pub fn solutions(&self) -> Vec<usize> {
+        match self {
+            Self::Direct(_) => Vec::new(),
+            Self::Swept(fit) => fit.solutions(),
+        }
+    }
+}
+
+/// Threads live here: the sweep names the frequencies, all of them are solved at once.
+fn solve(model: &WireModel, frequencies_hz: &[f64]) -> Result<Vec<Sample>, EvaluateError> {
+    let solve = |&frequency_hz: &f64| Ok(Sample::from(model.solve(frequency_hz)?));
+    frequencies_hz.par_iter().map(solve).collect()
+}
+
+fn range(model: &WireModel, frequencies_hz: &[f64]) -> SweepRange {
+    let (lowest_hz, highest_hz) = (frequencies_hz[0], frequencies_hz[frequencies_hz.len() - 1]);
+    let length_m: f64 = model.segments().iter().map(physics::wire::Segment::length_m).sum();
+    let half_waves = 2.0 * length_m * highest_hz / physics::constants::SPEED_OF_LIGHT_M_PER_S;
+    SweepRange { lowest_hz, highest_hz, half_waves, tolerance: TOLERANCE }
+}

@@ -1,0 +1,203 @@
+//! The wire solution stage with the full model: every wire of the plan, fed and loaded where the plan says.
+
+mod answers;
+mod proof;
+mod structure;
+mod trace;
+
+use num_complex::Complex64;
+use physics::field::{PotentialSource, SurfacePoint};
+use physics::sweep::Sample;
+use physics::wire::ports::{PortUse, attach};
+use physics::wire::{Boundary, EndCurrents, Load, WireModel, port_power_w};
+
+pub use self::proof::{Gains, Proof};
+
+use self::answers::Answers;
+use self::trace::Trace;
+use super::EvaluateError;
+use super::grid::Grid;
+use super::wire::{BandSolution, Cut, WirePoint, WireSolution, marks, places};
+use crate::catalogue;
+use crate::hang::{Hung, HungWire};
+use crate::plan::{Earth, Plan};
+use crate::report::{StandingWave, WireWave};
+
+/// A solved structure: kept as long as wires, earth and frequencies stay the same, whatever the loads do.
+#[derive(Clone, Debug)]
+pub(super) struct Solved {
+    model: WireModel,
+    answers: Answers,
+    traces: Vec<Trace>,
+}
+
+/// The wires at one frequency with everything attached, for 1 W at the feedpoint.
+struct Fed {
+    frequency_hz: f64,
+    currents: Vec<EndCurrents>,
+    /// Watts of the one that metal and loads burn.
+    burnt_w: f64,
+}
+
+/// Frequencies of a band at which the burnt share is computed; between them it is interpolated.
+const EFFICIENCY_PLACES: usize = 9;
+
+impl Solved {
+    /// Solves the wires; `before` is an earlier solution of a similar structure.
+    pub fn new(
+        plan: &Plan,
+        hung: &Hung,
+        boundary: Boundary,
+        grids: &[Grid],
+        before: Option<&Self>,
+    ) -> Result<Self, EvaluateError> {
+        let mut frequencies_hz: Vec<f64> =
+            grids.iter().flat_map(|grid| grid.frequencies_hz.clone()).collect();
+        frequencies_hz.sort_by(f64::total_cmp);
+        frequencies_hz.dedup();
+        let highest_hz = frequencies_hz.last().copied().ok_or(EvaluateError::NoFrequency)?;
+        let model = WireModel::new(structure::structure(plan, hung, boundary), highest_hz)?;
+        let solutions = before.map(|solved| solved.answers.solutions()).unwrap_or_default();
+        let answers = Answers::new(&model, &frequencies_hz, &solutions)?;
+        let traces = hung.wires.iter().enumerate();
+        let traces =
+            traces.map(|(index, wire)| Trace::new(wire, index, model.segments(), model.wire_of_segment()));
+        let traces = traces.collect();
+        Ok(Self { model, answers, traces })
+    }
+
+    /// Number of unknown currents.
+    pub fn unknowns(&self) -> usize {
+        self.model.unknowns()
+    }
+
+    /// Attaches the plan's loads and answers at every frequency.
+    pub fn answer(&self, plan: &Plan, hung: &Hung, grids: &[Grid]) -> Result<WireSolution, EvaluateError> {
+        let loads = structure::loads(plan);
+        let bands = grids.iter().map(|grid| self.band(plan, hung, grid, &loads));
+        Ok(WireSolution { bands: bands.collect::<Result<_, _>>()? })
+    }
+
+    fn band(
+        &self,
+        plan: &Plan,
+        hung: &Hung,
+        grid: &Grid,
+        loads: &[Load],
+    ) -> Result<BandSolution, EvaluateError> {
+        let impedances = self.answers.feedpoint(&grid.frequencies_hz, loads)?;
+        let efficiency = self.efficiency(grid, loads)?;
+        let points = impedances
+            .into_iter()
+            .enumerate()
+            .map(|(index, impedance_ohm)| WirePoint {
+                impedance_ohm,
+                wire_efficiency: between(&efficiency, index),
+            })
+            .collect();
+        let fed = self.fed(&self.answers.sample(grid.frequencies_hz[grid.middle])?, loads)?;
+        Ok(BandSolution { points, wave: self.wave(plan, hung, &fed) })
+    }
+
+    /// Share of the watts that metal and loads leave, at a few indices of the grid.
+    fn efficiency(&self, grid: &Grid, loads: &[Load]) -> Result<Vec<(usize, f64)>, EvaluateError> {
+        let last = grid.frequencies_hz.len() - 1;
+        let places = last.min(EFFICIENCY_PLACES - 1);
+        (0..=places)
+            .map(|place| {
+                let index = if places == 0 { 0 } else { place * last / places };
+                let fed = self.fed(&self.answers.sample(grid.frequencies_hz[index])?, loads)?;
+                Ok((index, (1.0 - fed.burnt_w).clamp(0.0, 1.0)))
+            })
+            .collect()
+    }
+
+    fn fed(&self, sample: &Sample, loads: &[Load]) -> Result<Fed, EvaluateError> {
+        let frequency_hz = sample.frequency_hz;
+        let loaded = attach(&sample.admittance_s, &uses(loads, frequency_hz), frequency_hz)?;
+        let admittance_s = loaded.admittance_s[(0, 0)];
+        // ½·|V|²·Re Y = 1 W
+        let volt = (2.0 / admittance_s.re).sqrt();
+        let voltages: Vec<Complex64> =
+            loaded.voltage_ratio.column(0).iter().map(|ratio| ratio * volt).collect();
+        let currents = self.model.end_currents(&sample.currents_a_per_v, &voltages);
+        let in_metal_w: f64 = self.model.wire_loss_w(&currents, frequency_hz).iter().sum();
+        let in_loads_w: f64 = (1..voltages.len())
+            .map(|port| {
+                let into: Complex64 =
+                    sample.admittance_s.row(port).iter().zip(&voltages).map(|(y, v)| y * v).sum();
+                // Power that leaves the wires through a port is the load's.
+                -port_power_w(voltages[port], into)
+            })
+            .sum();
+        Ok(Fed { frequency_hz, currents, burnt_w: in_metal_w + in_loads_w })
+    }
+
+    /// Potential along a wire; indicative.
+    fn potentials(&self, wire: &HungWire, arc_m: &[f64], fed: &Fed) -> Vec<Complex64> {
+        let boundary = self.model.structure().boundary;
+        let source = PotentialSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz);
+        let radius_m = 0.5 * wire.conductor.diameter_m;
+        let at = |&arc: &f64| SurfacePoint { axis_m: trace::coordinates(wire.point_at(arc)), radius_m };
+        arc_m.iter().map(|arc| source.potential_v(at(arc))).collect()
+    }
+
+    fn wave(&self, plan: &Plan, hung: &Hung, fed: &Fed) -> StandingWave {
+        let wires = hung.wires.iter().enumerate().map(|(index, wire)| {
+            let cuts = cuts(plan, hung, index);
+            let arc_m = places(wire.length_m(), fed.frequency_hz, &cuts);
+            let segments = self.model.segments();
+            let current_a: Vec<Complex64> = arc_m
+                .iter()
+                .map(|&arc| self.traces[index].current_a(arc, segments, &fed.currents, fed.frequency_hz))
+                .collect();
+            let potential_v = self.potentials(wire, &arc_m, fed);
+            let marks = marks(&arc_m, &current_a);
+            WireWave { arc_m, current_a, potential_v, marks }
+        });
+        StandingWave { frequency_hz: fed.frequency_hz, wires: wires.collect() }
+    }
+}
+
+/// What the plan's earth is to the solver.
+pub(super) fn boundary(earth: &Earth) -> Result<Boundary, EvaluateError> {
+    if matches!(earth, Earth::Mirror) {
+        return Ok(Boundary::Mirror);
+    }
+    let soil = catalogue::earth(earth).map_err(EvaluateError::Earth)?;
+    Ok(soil.map_or(Boundary::FreeSpace, |soil| Boundary::Soil {
+        relative_permittivity: soil.relative_permittivity,
+        conductivity_s_per_m: soil.conductivity_s_per_m,
+    }))
+}
+
+/// The feedpoint is fed, every other port closed with its load.
+fn uses(loads: &[Load], frequency_hz: f64) -> Vec<PortUse> {
+    let closed = loads.iter().map(|load| PortUse::Closed(load.termination(frequency_hz)));
+    std::iter::once(PortUse::Fed).chain(closed).collect()
+}
+
+/// Where a wire is cut: the feedpoint and the loads on it.
+fn cuts(plan: &Plan, hung: &Hung, wire: usize) -> Vec<Cut> {
+    let mut cuts = Vec::new();
+    if hung.feedpoint.wire == wire {
+        cuts.push(Cut { arc_m: hung.feedpoint.arc_m, half_width_m: 0.5 * plan.feedpoint.gap_m });
+    }
+    let length_m = hung.wires[wire].length_m();
+    let loads = plan.loads.iter().filter(|load| load.wire == wire);
+    cuts.extend(loads.map(|load| Cut { arc_m: load.fraction * length_m, half_width_m: 0.01 }));
+    cuts
+}
+
+/// Linear interpolation over the indices of a grid.
+fn between(known: &[(usize, f64)], index: usize) -> f64 {
+    let next = known.partition_point(|&(at, _)| at < index);
+    match (next.checked_sub(1).map(|before| known[before]), known.get(next)) {
+        (_, Some(&(at, value))) if at == index => value,
+        (Some((left, low)), Some(&(right, high))) => {
+            low + (high - low) * (index - left) as f64 / (right - left) as f64
+        }
+        (Some((_, value)), None) | (None, Some(&(_, value))) => value,
+        (None, None) => 1.0,
+    }
+}

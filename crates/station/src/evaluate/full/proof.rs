@@ -1,0 +1,118 @@
+//! What stands behind an answer of the full model: where the watts go, how far a finer mesh would move it, and the gain.
+
+use physics::field::{Direction, FarFieldSource, radiated_power_w};
+use physics::wire::mesh_error;
+
+use super::Solved;
+use super::structure;
+use crate::evaluate::EvaluateError;
+use crate::plan::Plan;
+
+/// Figures that go with the full answer at one frequency.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Proof {
+    /// Hz.
+    pub frequency_hz: f64,
+    /// Watts of one at the feedpoint that reach the sky, by integration over the sphere; `None` over soil, where the
+    /// earth's share is not known on its own.
+    pub sky_w: Option<f64>,
+    /// Watts of one that metal and loads burn.
+    pub burnt_w: f64,
+    /// Largest relative difference of the admittances from those of a finer mesh.
+    pub mesh_error: f64,
+    /// Number of unknown currents.
+    pub unknowns: usize,
+}
+
+impl Proof {
+    /// Watts accounted for, of one at the feedpoint: 1 for a perfect balance.
+    #[must_use]
+    pub fn energy_balance(&self) -> Option<f64> {
+        self.sky_w.map(|sky_w| sky_w + self.burnt_w)
+    }
+}
+
+/// Gain in directions that were asked for, and the highest of all.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Gains {
+    /// dBi, over the power at the feedpoint, losses included; in the order of the directions.
+    pub samples_dbi: Vec<f64>,
+    /// Highest gain of any direction, dBi.
+    pub peak_dbi: f64,
+    /// Where it is.
+    pub peak: Direction,
+}
+
+impl Solved {
+    pub fn prove(&self, plan: &Plan, frequency_hz: f64) -> Result<Proof, EvaluateError> {
+        let loads = structure::loads(plan);
+        let fed = self.fed(&self.answers.sample(frequency_hz)?, &loads)?;
+        let working = self.model.solve(frequency_hz)?;
+        let refined = self.model.refined()?.solve(frequency_hz)?;
+        Ok(Proof {
+            frequency_hz,
+            sky_w: self.far_field(&fed).map(|source| radiated_power_w(&source)),
+            burnt_w: fed.burnt_w,
+            mesh_error: mesh_error(&working, &refined),
+            unknowns: self.unknowns(),
+        })
+    }
+
+    /// `None` over soil.
+    pub fn gains(
+        &self,
+        plan: &Plan,
+        frequency_hz: f64,
+        directions: &[Direction],
+    ) -> Result<Option<Gains>, EvaluateError> {
+        let fed = self.fed(&self.answers.sample(frequency_hz)?, &structure::loads(plan))?;
+        Ok(self.far_field(&fed).map(|source| {
+            let gain = |direction: Direction| source.field(direction).gain_dbi(1.0);
+            let peak = peak(&gain);
+            Gains {
+                samples_dbi: directions.iter().map(|&direction| gain(direction)).collect(),
+                peak_dbi: gain(peak),
+                peak,
+            }
+        }))
+    }
+
+    fn far_field(&self, fed: &super::Fed) -> Option<FarFieldSource> {
+        let boundary = self.model.structure().boundary;
+        FarFieldSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz)
+    }
+}
+
+/// Coarse grid of the search for the peak, degrees: lobes of a wire ten wavelengths long are wider.
+const GRID_DEG: i32 = 3;
+/// The search ends at this step, degrees.
+const FINEST_DEG: f64 = 0.02;
+
+/// The direction of the highest gain: the best of a grid, then climbed in ever smaller steps.
+fn peak(gain: &impl Fn(Direction) -> f64) -> Direction {
+    let grid = (-90 / GRID_DEG..=90 / GRID_DEG).flat_map(|elevation| {
+        (0..360 / GRID_DEG).map(move |azimuth| Direction {
+            elevation_deg: f64::from(elevation * GRID_DEG),
+            azimuth_deg: f64::from(azimuth * GRID_DEG),
+        })
+    });
+    let scored = grid.map(|direction| (gain(direction), direction));
+    let start = Direction { elevation_deg: 90.0, azimuth_deg: 0.0 };
+    let (mut best, mut at) = scored.fold((gain(start), start), |a, b| if b.0 > a.0 { b } else { a });
+    let mut step = 0.5 * f64::from(GRID_DEG);
+    while step > FINEST_DEG {
+        let around = [(step, 0.0), (-step, 0.0), (0.0, step), (0.0, -step)].map(|(up, round)| Direction {
+            elevation_deg: (at.elevation_deg + up).clamp(-90.0, 90.0),
+            azimuth_deg: at.azimuth_deg + round,
+        });
+        match around
+            .into_iter()
+            .map(|direction| (gain(direction), direction))
+            .find(|(value, _)| *value > best)
+        {
+            Some((value, direction)) => (best, at) = (value, direction),
+            None => step *= 0.5,
+        }
+    }
+    at
+}
