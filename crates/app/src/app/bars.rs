@@ -15,16 +15,21 @@ const STATUS_HEIGHT: f32 = 28.0;
 impl Wirewright {
     /// File menu, name, tabs, undo and redo.
     pub(super) fn top_bar(&self, ui: &mut Ui, out: &mut Vec<Command>) {
-        egui::Panel::top("top bar").exact_size(TOP_HEIGHT).resizable(false).frame(bar(ui)).show(ui, |ui| {
+        let panel = egui::Panel::top("top bar").exact_size(TOP_HEIGHT).resizable(false).frame(bar(ui));
+        panel.show(ui, |ui| {
             ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
                 self.file_menu(ui, out);
                 ui.add_space(6.0);
-                self.name(ui);
-                ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
-                    self.steps(ui, out);
-                    ui.add_space(18.0);
-                    self.tabs(ui, out);
-                });
+                with_right_end(
+                    ui,
+                    "top bar's right end",
+                    |ui| self.name(ui),
+                    |ui| {
+                        self.tabs(ui, out);
+                        ui.add_space(18.0);
+                        self.steps(ui, out);
+                    },
+                );
             });
         });
     }
@@ -74,17 +79,16 @@ impl Wirewright {
         ui.add(egui::Label::new(name).truncate()).explain(format!("{file}{state}"));
     }
 
-    /// From right to left, because the bar is filled from its right end.
     fn tabs(&self, ui: &mut Ui, out: &mut Vec<Command>) {
         for (view, words, sentence) in [
+            (View::Yard, "Yard", "The site to scale, the standing wave, and a lane for each band"),
+            (View::Band, "Band", "The chosen band in depth: impedance, SWR, the feed line"),
+            (View::Sheet, "Sheet", "The page for the crew, as it will print"),
             (
                 View::Station,
                 "Station",
                 "What the station is: names, supports, wire, earth, and the bands that must work",
             ),
-            (View::Sheet, "Sheet", "The page for the crew, as it will print"),
-            (View::Band, "Band", "The chosen band in depth: impedance, SWR, the feed line"),
-            (View::Yard, "Yard", "The site to scale, the standing wave, and a lane for each band"),
         ] {
             let command = Command::Show(Show::View(view));
             let keys = keys::of(ui.ctx(), &command, &self.looks);
@@ -97,8 +101,8 @@ impl Wirewright {
 
     fn steps(&self, ui: &mut Ui, out: &mut Vec<Command>) {
         for (command, words, possible) in [
-            (Command::Redo, "Redo", self.document.can_redo()),
             (Command::Undo, "Undo", self.document.can_undo()),
+            (Command::Redo, "Redo", self.document.can_redo()),
         ] {
             let keys = keys::of(ui.ctx(), &command, &self.looks);
             let button = ui.add_enabled(possible, egui::Button::new(words));
@@ -113,12 +117,19 @@ impl Wirewright {
         let under_pointer = explain::take(ui.ctx());
         let panel = egui::Panel::bottom("status").exact_size(STATUS_HEIGHT).resizable(false).frame(bar(ui));
         panel.show(ui, |ui| {
-            ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
-                self.theme_menu(ui, out);
-                self.units(ui, out);
-                ui.separator();
-                let rest = Layout::left_to_right(Align::Center);
-                ui.with_layout(rest, |ui| self.sentences(ui, &under_pointer, out));
+            ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
+                let (mut shown, mut asked) = (Vec::new(), Vec::new());
+                with_right_end(
+                    ui,
+                    "status bar's right end",
+                    |ui| self.sentences(ui, &under_pointer, &mut shown),
+                    |ui| {
+                        ui.separator();
+                        self.units(ui, &mut asked);
+                        self.theme_menu(ui, &mut asked);
+                    },
+                );
+                out.extend(shown.into_iter().chain(asked));
             });
         });
     }
@@ -160,7 +171,7 @@ impl Wirewright {
 
     fn units(&self, ui: &mut Ui, out: &mut Vec<Command>) {
         for (units, sentence) in
-            [(Units::Feet, "Lengths in feet (M)"), (Units::Metres, "Lengths in metres (M)")]
+            [(Units::Metres, "Lengths in metres (M)"), (Units::Feet, "Lengths in feet (M)")]
         {
             let button =
                 ui.selectable_label(self.looks.units == units, RichText::new(units.symbol()).small());
@@ -189,6 +200,26 @@ impl Wirewright {
             }
         });
         menu.response.explain("Light or dark, or as the desktop");
+    }
+}
+
+/// Two parts of a bar, the second at its right end. Both are made from left to right, so that the Tab key goes that
+/// way; the first has the room that the second leaves.
+fn with_right_end(ui: &mut Ui, name: &str, left: impl FnOnce(&mut Ui), right: impl FnOnce(&mut Ui)) {
+    let id = ui.make_persistent_id(name);
+    // Known from the last frame.
+    let width = ui.data(|data| data.get_temp::<f32>(id));
+    let gap = ui.spacing().item_spacing.x;
+    let room = (ui.available_width() - width.unwrap_or_default() - gap).max(0.0);
+    let size = egui::vec2(room, ui.available_height());
+    ui.allocate_ui_with_layout(size, Layout::left_to_right(Align::Center), |ui| {
+        left(ui);
+        ui.add_space(ui.available_width());
+    });
+    let end = ui.scope(right).response.rect.width();
+    if width.is_none_or(|width| (width - end).abs() > 0.5) {
+        ui.data_mut(|data| data.insert_temp(id, end));
+        ui.request_discard("the right end of a bar found its width");
     }
 }
 

@@ -38,7 +38,7 @@ pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut StationState, out:
 }
 
 fn boxes(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut StationState, out: &mut Vec<Command>) {
-    frame(ui, snapshot, "Station", |ui| about::show(ui, snapshot, &mut state.typed, out));
+    frame(ui, snapshot, "What it is", |ui| about::show(ui, snapshot, &mut state.typed, out));
     frame(ui, snapshot, "Wire and earth", |ui| site::wire_and_earth(ui, snapshot, out));
     frame(ui, snapshot, "Supports", |ui| site::supports(ui, snapshot, &mut state.typed, out));
 }
