@@ -21,6 +21,7 @@ mod tag;
 mod tests;
 mod texts;
 mod things;
+mod track;
 mod wave;
 
 use eframe::egui::{Key, PointerButton, Pos2, Rect, Response, Role, Sense, Ui, Vec2, WidgetInfo, vec2};

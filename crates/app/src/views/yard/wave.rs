@@ -1,19 +1,18 @@
 //! The standing wave on a wire, in pixels: ribbon, grain and whiskers at a phase of the RF cycle, their envelope, and
 //! the read-out of any place. It only scales and projects what the report holds.
 
-use eframe::egui::{Pos2, Vec2, vec2};
+use eframe::egui::{Pos2, Rect, Vec2};
 use num_complex::Complex64;
 use station::hang::HungWire;
 use station::report::{Mark, WireWave};
 
 use super::side_view::SideView;
+use super::track::{NearBend, Track};
 
 /// Distance between two samples of the wire, px.
 const SAMPLE_PX: f32 = 4.0;
 /// Most samples of a wire, however far one zooms in.
 const MOST_SAMPLES: usize = 900;
-/// A bend is rounded for ribbon and whiskers over this length on either side, px.
-const ROUNDING_PX: f32 = 7.0;
 /// Distance between two whiskers, px.
 const WHISKER_GAP_PX: f32 = 8.0;
 /// Distance between two grains at rest, px.
@@ -86,21 +85,6 @@ struct Sample {
     bend: Option<NearBend>,
 }
 
-/// A bend of the wire, seen from a place nearby: on its inner side what stands off one leg must not run into what
-/// stands off the other.
-#[derive(Clone, Copy, Debug)]
-struct NearBend {
-    corner: Pos2,
-    /// Along the bisector of the inner angle.
-    inward: Vec2,
-    /// 1 where the inner side is the side of plus, −1 otherwise.
-    side: f32,
-    /// How far from the wire the bisector is at this place, px.
-    room_px: f32,
-    /// Sine of half the inner angle.
-    sine: f32,
-}
-
 impl Sample {
     /// Whether something that stands off the wire would cross the bisector of a bend.
     fn crosses(&self, offset_px: f32) -> bool {
@@ -164,6 +148,8 @@ pub struct Wave<'a> {
     peak_a: f32,
     peak_v: f32,
     size: Size,
+    /// What lies outside is not drawn piece by piece.
+    seen: Rect,
 }
 
 /// Both edges of the ribbon.
@@ -193,6 +179,7 @@ impl<'a> Wave<'a> {
             peak_a: 0.0,
             peak_v: 0.0,
             size,
+            seen: view.frame.expand(size.whisker_px),
         };
         let count = ((track.length_px() / SAMPLE_PX).ceil() as usize).clamp(8, MOST_SAMPLES);
         wave.step_px = track.length_px() / count as f32;
@@ -212,7 +199,7 @@ impl<'a> Wave<'a> {
         let peak = |values: &[Complex64]| values.iter().map(|z| z.norm()).fold(0.0, f64::max) as f32;
         wave.peak_a = peak(&source.current_a);
         wave.peak_v = peak(&source.potential_v);
-        Some(wave)
+        (wave.peak_a > 0.0 || wave.peak_v > 0.0).then_some(wave)
     }
 
     /// Current and voltage for 1 W at a distance from the wire's beginning.
@@ -312,7 +299,8 @@ impl<'a> Wave<'a> {
             let s = self.sample(run_px);
             let length_px = s.voltage.now(phase) * scale;
             // Too short to be seen, or running into the whiskers of the wire's other leg.
-            (length_px.abs() > 0.7 && !s.crosses(length_px)).then(|| [s.at, s.off_by(length_px)])
+            (self.seen.contains(s.at) && length_px.abs() > 0.7 && !s.crosses(length_px))
+                .then(|| [s.at, s.off_by(length_px)])
         };
         self.spaced(WHISKER_GAP_PX).filter_map(whisker).collect()
     }
@@ -326,7 +314,7 @@ impl<'a> Wave<'a> {
             let run_px = rest_px + self.sample(rest_px).current.flowed(phase) * swing;
             let s = self.sample(run_px);
             let now = s.current.now(phase) * ribbon;
-            if now.abs() < GRAIN_HALF_PX {
+            if now.abs() < GRAIN_HALF_PX || !self.seen.contains(s.at) {
                 return None;
             }
             // A quarter turn from the side of plus back to the direction of the wire's end.
@@ -362,86 +350,5 @@ impl<'a> Wave<'a> {
 
     fn forward(&self, run_px: f32) -> Vec2 {
         (self.sample(run_px + SAMPLE_PX).at - self.sample(run_px - SAMPLE_PX).at).normalized()
-    }
-}
-
-/// The wire's line on the screen, measured in pixels.
-struct Track {
-    corners: Vec<(Pos2, f64)>,
-    runs_px: Vec<f32>,
-    /// 1 or −1, so that plus is up on a wire that runs to the right or to the left.
-    side: f32,
-}
-
-impl Track {
-    fn of(view: &SideView, wire: &HungWire) -> Option<Self> {
-        let corners: Vec<(Pos2, f64)> = wire.vertices.iter().map(|v| (view.at(v.at), v.arc_m)).collect();
-        let mut runs_px = Vec::with_capacity(corners.len());
-        let mut run_px = 0.0;
-        for (n, (at, _)) in corners.iter().enumerate() {
-            if n > 0 {
-                run_px += corners[n - 1].0.distance(*at);
-            }
-            runs_px.push(run_px);
-        }
-        let (first, last) = (corners.first()?.0, corners.last()?.0);
-        let side = if last.x < first.x - 0.5 { -1.0 } else { 1.0 };
-        (run_px > 1.0 && wire.length_m() > 0.0).then_some(Self { corners, runs_px, side })
-    }
-
-    fn length_px(&self) -> f32 {
-        self.runs_px[self.runs_px.len() - 1]
-    }
-
-    /// Position and arc at a distance along the line.
-    fn at(&self, run_px: f32) -> (Pos2, f64) {
-        let run_px = run_px.clamp(0.0, self.length_px());
-        let after = self.runs_px.partition_point(|&r| r < run_px).clamp(1, self.runs_px.len() - 1);
-        let ((from, from_m), (to, to_m)) = (self.corners[after - 1], self.corners[after]);
-        let piece_px = self.runs_px[after] - self.runs_px[after - 1];
-        let share = if piece_px > 0.0 { (run_px - self.runs_px[after - 1]) / piece_px } else { 0.0 };
-        (from.lerp(to, share), from_m + f64::from(share) * (to_m - from_m))
-    }
-
-    /// The distance along the line of an arc.
-    fn run_px(&self, arc_m: f64) -> f32 {
-        let after = self.corners.partition_point(|c| c.1 < arc_m).clamp(1, self.corners.len() - 1);
-        let (from_m, to_m) = (self.corners[after - 1].1, self.corners[after].1);
-        let share = if to_m > from_m { ((arc_m - from_m) / (to_m - from_m)).clamp(0.0, 1.0) } else { 0.0 };
-        self.runs_px[after - 1] + share as f32 * (self.runs_px[after] - self.runs_px[after - 1])
-    }
-
-    /// Away from the line on the side of plus; bends are rounded.
-    fn off(&self, run_px: f32) -> Vec2 {
-        let chord = self.at(run_px + ROUNDING_PX).0 - self.at(run_px - ROUNDING_PX).0;
-        let along = chord.normalized();
-        vec2(along.y, -along.x) * self.side
-    }
-
-    /// The nearest bend that is sharp enough to matter.
-    fn bend(&self, run_px: f32) -> Option<NearBend> {
-        let inner = 1..self.corners.len() - 1;
-        let nearest = inner
-            .min_by(|&a, &b| (self.runs_px[a] - run_px).abs().total_cmp(&(self.runs_px[b] - run_px).abs()))?;
-        let corner = self.corners[nearest].0;
-        let before = (corner - self.corners[nearest - 1].0).normalized();
-        let after = (self.corners[nearest + 1].0 - corner).normalized();
-        // The legs lie at the inner angle θ: cos θ = −before·after.
-        let cos = -before.dot(after);
-        let (sine, cosine) = ((0.5 * (1.0 - cos)).max(0.0).sqrt(), (0.5 * (1.0 + cos)).max(0.0).sqrt());
-        if cosine < 0.05 || sine < 0.2 {
-            return None;
-        }
-        let away_px = run_px - self.runs_px[nearest];
-        let along = if away_px < 0.0 { before } else { after };
-        let off = vec2(along.y, -along.x) * self.side;
-        let inward = (after - before).normalized();
-        Some(NearBend {
-            corner,
-            inward,
-            side: off.dot(inward).signum(),
-            room_px: away_px.abs() * sine / cosine,
-            sine,
-        })
     }
 }
