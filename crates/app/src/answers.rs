@@ -3,10 +3,11 @@
 use std::time::{Duration, Instant};
 
 use eframe::egui;
+use station::evaluate::Proof;
 use station::report::Report;
 
 use crate::document::Document;
-use crate::worker::Worker;
+use crate::worker::{Answer, News, Worker};
 
 /// An answer that takes longer than this is missed by the eye: what is shown meanwhile is marked as old.
 const MISSED_AFTER: Duration = Duration::from_millis(150);
@@ -18,6 +19,8 @@ pub struct Answers {
     asked: u64,
     report: Option<Report>,
     took: Duration,
+    /// Of the report, by band; empty until the hand has rested.
+    proofs: Vec<Proof>,
     fault: Option<String>,
     /// When the last question was asked or the last answer came.
     last_sign: Instant,
@@ -31,7 +34,15 @@ impl Answers {
             Ok(worker) => (Some(worker), None),
             Err(error) => (None, Some(format!("the system gives no thread to compute on: {error}"))),
         };
-        Self { worker, asked: 0, report: None, took: Duration::ZERO, fault, last_sign: Instant::now() }
+        Self {
+            worker,
+            asked: 0,
+            report: None,
+            took: Duration::ZERO,
+            proofs: Vec::new(),
+            fault,
+            last_sign: Instant::now(),
+        }
     }
 
     /// Takes what has come.
@@ -39,17 +50,35 @@ impl Answers {
         if self.report.as_ref().is_some_and(|report| report.revision < document.first_revision()) {
             self.report = None;
         }
-        let Some(answer) = self.worker.as_ref().and_then(Worker::newest) else { return };
+        let news: Vec<News> = self.worker.iter().flat_map(Worker::news).collect();
+        for piece in news {
+            match piece {
+                News::Answer(answer) => self.take(answer, document),
+                News::Proofs { revision, proofs } => {
+                    if self.report.as_ref().is_some_and(|report| report.revision == revision) {
+                        self.proofs = proofs;
+                    }
+                }
+            }
+            ctx.request_repaint();
+        }
+    }
+
+    fn take(&mut self, answer: Answer, document: &Document) {
         if answer.revision < document.first_revision() {
             return;
         }
         self.took = answer.took;
         self.last_sign = Instant::now();
         match answer.outcome {
-            Ok(report) => (self.report, self.fault) = (Some(report), None),
+            Ok(report) => {
+                if self.report.as_ref().is_none_or(|old| old.revision != report.revision) {
+                    self.proofs.clear();
+                }
+                (self.report, self.fault) = (Some(report), None);
+            }
             Err(sentence) => self.fault = Some(sentence),
         }
-        ctx.request_repaint();
     }
 
     /// Asks about the plan unless it was asked about already.
@@ -89,6 +118,12 @@ impl Answers {
     #[must_use]
     pub fn took(&self) -> Duration {
         self.took
+    }
+
+    /// What stands behind the newest full answer, by band; empty until it has been computed.
+    #[must_use]
+    pub fn proofs(&self) -> &[Proof] {
+        &self.proofs
     }
 
     /// Why there is no report on the newest plan.

@@ -2,6 +2,7 @@
 
 use eframe::egui::{self, Align, Layout, RichText, Ui};
 use sheet::tokens::{Ground, Ink};
+use station::evaluate::Proof;
 use station::units::Units;
 
 use super::{Wirewright, findings};
@@ -160,9 +161,12 @@ impl Wirewright {
             (None, Some(report)) => {
                 let milliseconds = self.answers.took().as_secs_f64() * 1e3;
                 let time = station::units::short(milliseconds);
-                let words = format!("{}, {time} ms", report.model.name());
-                let sentence =
-                    format!("The model that made the numbers, and how long all bands took: {words}");
+                let proof = proof_words(self.answers.proofs());
+                let words = format!("{}{proof}, {time} ms", report.model.name());
+                let sentence = format!(
+                    "{words}: the model that made the numbers, its energy balance (watts accounted for, of those at the \
+                     feedpoint), its difference from a finer mesh, and how long all bands took"
+                );
                 (words, Ink::Faint, sentence)
             }
         };
@@ -227,4 +231,18 @@ fn with_right_end(ui: &mut Ui, name: &str, left: impl FnOnce(&mut Ui), right: im
 fn bar(ui: &Ui) -> egui::Frame {
     let ground = theme::ground_of(ui.visuals());
     egui::Frame::new().fill(theme::color(Ink::Panel, ground)).inner_margin(egui::Margin::symmetric(10, 0))
+}
+
+/// The worst of all bands, as it stands in the status line; nothing before there is any.
+fn proof_words(proofs: &[Proof]) -> String {
+    if proofs.is_empty() {
+        return String::new();
+    }
+    let off = |proof: &Proof| proof.energy_balance().map(|balance| (balance - 1.0).abs());
+    let balance = proofs.iter().filter_map(off).reduce(f64::max);
+    let mesh = proofs.iter().map(|proof| proof.mesh_error).fold(0.0, f64::max);
+    let balance = balance.map_or_else(String::new, |off| {
+        format!(", energy balance {} %", station::units::fixed(100.0 * (1.0 - off), 1))
+    });
+    format!("{balance}, mesh ±{} %", station::units::fixed(100.0 * mesh, 2))
 }
