@@ -1,7 +1,10 @@
 //! The full solver against the reference cases without earth and over the mirror.
 
 use num_complex::Complex64;
-use physics::wire::{Boundary, Conductor, Material, Metal, PortPlace, Structure, WireModel, WireShape};
+use physics::wire::ports::{PortUse, attach};
+use physics::wire::{
+    Boundary, Conductor, Material, Metal, PortPlace, Structure, Termination, WireModel, WireShape, mesh_error,
+};
 use serde_json::Value;
 
 fn number(value: &Value) -> f64 {
@@ -63,48 +66,93 @@ fn structure(case: &Value) -> Structure {
     Structure { wires, ports, boundary }
 }
 
-fn feed_admittance(y: &nalgebra::DMatrix<Complex64>, loads: &[Value]) -> Complex64 {
-    // (1 + Y·Z)·… with one load at most
-    match loads {
-        [] => y[(0, 0)],
-        [load] => {
-            let z = Complex64::new(number(&load["R_ohm"]), number(&load["X_ohm"]));
-            y[(0, 0)] - y[(0, 1)] * y[(1, 0)] * z / (1.0 + z * y[(1, 1)])
-        }
-        _ => panic!("more loads than expected"),
+/// What the solver says of a case.
+struct Answer {
+    admittance_s: Complex64,
+    efficiency: f64,
+    unknowns: usize,
+    mesh_error: f64,
+}
+
+fn answer(case: &Value) -> Answer {
+    let frequency_hz = number(&case["frequency_hz"]);
+    let model = WireModel::new(structure(case), frequency_hz).unwrap();
+    let solution = model.solve(frequency_hz).unwrap();
+    let refined = model.refined().unwrap().solve(frequency_hz).unwrap();
+    let loads: Vec<Complex64> = case["loads"]
+        .as_array()
+        .unwrap()
+        .iter()
+        .map(|load| Complex64::new(number(&load["R_ohm"]), number(&load["X_ohm"])))
+        .collect();
+    let uses: Vec<PortUse> = std::iter::once(PortUse::Fed)
+        .chain(loads.iter().map(|&ohm| PortUse::Closed(Termination::Impedance(ohm))))
+        .collect();
+    let loaded = attach(&solution.port_admittance_s, &uses, frequency_hz).unwrap();
+    let volts: Vec<Complex64> = loaded.voltage_ratio.column(0).iter().copied().collect();
+    let currents = model.end_currents(&solution.coefficients_a_per_v, &volts);
+    let in_wires_w: f64 = model.wire_loss_w(&currents, frequency_hz).iter().sum();
+    // What leaves through the other ports goes into their loads.
+    let powers_w = solution.port_powers_w(&volts);
+    let in_loads_w = -powers_w[1..].iter().sum::<f64>();
+    Answer {
+        admittance_s: loaded.admittance_s[(0, 0)],
+        efficiency: 1.0 - (in_wires_w + in_loads_w) / powers_w[0],
+        unknowns: model.unknowns(),
+        mesh_error: mesh_error(&solution, &refined),
     }
 }
 
+/// Largest deviations accepted, as the reference's own page sets them.
+struct Bars {
+    core: f64,
+    conductance: f64,
+}
+
+impl Bars {
+    fn of(id: &str) -> Self {
+        // A coil has its own local capacitance.
+        let core = if id == "P02" { 0.015 } else { 0.005 };
+        let conductance = if id.starts_with('P') { 0.03 } else { 0.005 };
+        Self { core, conductance }
+    }
+}
+
+/// Source: reference cases of this project's own, by an independent method (mixed potentials, polynomial currents,
+/// exact tubular kernel); numerical references, not published values. Gain is compared with the fields.
 #[test]
 fn reference_cases_stay_inside_their_bars() {
-    let text = std::fs::read_to_string(
-        std::env::var("CASES").unwrap_or("../../tests/data/reference/freespace.json".into()),
-    )
-    .unwrap();
-    let file: Value = serde_json::from_str(&text).unwrap();
-    for case in file["cases"].as_array().unwrap() {
+    let path = concat!(env!("CARGO_MANIFEST_DIR"), "/../../tests/data/reference/freespace.json");
+    let file: Value = serde_json::from_str(&std::fs::read_to_string(path).unwrap()).unwrap();
+    let cases = file["cases"].as_array().unwrap();
+    assert!(cases.len() > 30);
+    let mut outside = Vec::new();
+    for case in cases {
         let id = case["id"].as_str().unwrap();
-        let f = number(&case["frequency_hz"]);
-        let model = WireModel::new(structure(case), f).unwrap();
-        let solution = model.solve(f).unwrap();
-        let y = feed_admittance(&solution.port_admittance_s, case["loads"].as_array().unwrap());
-        let reference =
-            Complex64::new(number(&case["reference"]["r_ohm"]), number(&case["reference"]["x_ohm"]));
-        let y_ref = reference.inv();
-        let d = y - y_ref;
-        let c_most = std::f64::consts::TAU * f * 0.25e-12;
-        let c = d.im.clamp(-c_most, c_most);
-        let core = (d - Complex64::new(0.0, c)).norm() / y_ref.norm();
-        let z = y.inv();
-        println!(
-            "{id} n={:3} core {:7.4}% dG {:7.4}% raw {:7.4}% C {:7.4} pF  Z {:.3} for {:.3}",
-            model.unknowns(),
+        let reference = &case["reference"];
+        let answer = answer(case);
+        let y = answer.admittance_s;
+        let y_ref = Complex64::new(number(&reference["r_ohm"]), number(&reference["x_ohm"])).inv();
+        // The capacitance of the feed gap, up to 0.25 pF, is taken out.
+        let omega = std::f64::consts::TAU * number(&case["frequency_hz"]);
+        let farad = ((y - y_ref).im / omega).clamp(-0.25e-12, 0.25e-12);
+        let core = (y - y_ref - Complex64::new(0.0, omega * farad)).norm() / y_ref.norm();
+        let conductance = (y.re / y_ref.re - 1.0).abs();
+        let efficiency = (answer.efficiency - number(&reference["efficiency"])).abs();
+        let line = format!(
+            "{id}: core {:.3} %, dG {:.3} %, efficiency {efficiency:.5}, {} unknowns, mesh error {:.3} %, {:.2} of {:.2} ohm",
             100.0 * core,
-            100.0 * (y.re / y_ref.re - 1.0),
-            100.0 * d.norm() / y_ref.norm(),
-            c / (std::f64::consts::TAU * f) * 1e12,
-            z,
-            reference
+            100.0 * conductance,
+            answer.unknowns,
+            100.0 * answer.mesh_error,
+            y.inv(),
+            y_ref.inv()
         );
+        println!("{line}");
+        let bars = Bars::of(id);
+        if core > bars.core || conductance > bars.conductance || efficiency > 0.002 {
+            outside.push(line);
+        }
     }
+    assert!(outside.is_empty(), "{outside:#?}");
 }

@@ -10,6 +10,8 @@ mod factors;
 mod fill;
 mod grading;
 mod lanes;
+#[cfg(test)]
+mod laws;
 mod load;
 mod material;
 mod mesh;
