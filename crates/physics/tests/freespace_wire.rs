@@ -7,8 +7,11 @@ use physics::wire::{
 };
 use serde_json::Value;
 
+/// Why a field of the case file must be there.
+const LAYOUT: &str = "the layout that the file's conventions explain";
+
 fn number(value: &Value) -> f64 {
-    value.as_f64().unwrap()
+    value.as_f64().expect(LAYOUT)
 }
 
 fn conductor(sigma: &Value, mu: &Value) -> Conductor {
@@ -18,11 +21,11 @@ fn conductor(sigma: &Value, mu: &Value) -> Conductor {
 fn structure(case: &Value) -> Structure {
     let wires: Vec<WireShape> = case["wires"]
         .as_array()
-        .unwrap()
+        .expect(LAYOUT)
         .iter()
         .map(|wire| {
             let c = &wire["conductor"];
-            let metal = match c["type"].as_str().unwrap() {
+            let metal = match c["type"].as_str().expect(LAYOUT) {
                 "pec" => Metal::Perfect,
                 "solid" => Metal::Solid(conductor(&c["sigma_S_per_m"], &c["mu_r"])),
                 _ => Metal::Clad {
@@ -34,7 +37,7 @@ fn structure(case: &Value) -> Structure {
             WireShape {
                 vertices_m: wire["vertices_m"]
                     .as_array()
-                    .unwrap()
+                    .expect(LAYOUT)
                     .iter()
                     .map(|v| std::array::from_fn(|axis| number(&v[axis])))
                     .collect(),
@@ -52,14 +55,14 @@ fn structure(case: &Value) -> Structure {
     };
     let mut ports = vec![];
     let mut add = |place: &Value, gap_m: f64| {
-        let wire = usize::try_from(place["wire"].as_u64().unwrap()).unwrap();
+        let wire = usize::try_from(place["wire"].as_u64().expect(LAYOUT)).expect(LAYOUT);
         ports.push(PortPlace { wire, arc_m: number(&place["arc_fraction"]) * length(wire), gap_m });
     };
     add(&case["feed"], number(&case["feed"]["gap_m"]));
-    for load in case["loads"].as_array().unwrap() {
+    for load in case["loads"].as_array().expect(LAYOUT) {
         add(load, 0.02);
     }
-    let boundary = match case["earth"]["kind"].as_str().unwrap() {
+    let boundary = match case["earth"]["kind"].as_str().expect(LAYOUT) {
         "mirror" => Boundary::Mirror,
         _ => Boundary::FreeSpace,
     };
@@ -76,19 +79,22 @@ struct Answer {
 
 fn answer(case: &Value) -> Answer {
     let frequency_hz = number(&case["frequency_hz"]);
-    let model = WireModel::new(structure(case), frequency_hz).unwrap();
-    let solution = model.solve(frequency_hz).unwrap();
-    let refined = model.refined().unwrap().solve(frequency_hz).unwrap();
+    let model = WireModel::new(structure(case), frequency_hz).expect("a case is a sound structure");
+    let solution = model.solve(frequency_hz).expect("within the mesh");
+    let refined = model
+        .refined()
+        .and_then(|model| model.solve(frequency_hz))
+        .expect("no larger than the working mesh allows");
     let loads: Vec<Complex64> = case["loads"]
         .as_array()
-        .unwrap()
+        .expect(LAYOUT)
         .iter()
         .map(|load| Complex64::new(number(&load["R_ohm"]), number(&load["X_ohm"])))
         .collect();
     let uses: Vec<PortUse> = std::iter::once(PortUse::Fed)
         .chain(loads.iter().map(|&ohm| PortUse::Closed(Termination::Impedance(ohm))))
         .collect();
-    let loaded = attach(&solution.port_admittance_s, &uses, frequency_hz).unwrap();
+    let loaded = attach(&solution.port_admittance_s, &uses, frequency_hz).expect("loads have losses");
     let volts: Vec<Complex64> = loaded.voltage_ratio.column(0).iter().copied().collect();
     let currents = model.end_currents(&solution.coefficients_a_per_v, &volts);
     let in_wires_w: f64 = model.wire_loss_w(&currents, frequency_hz).iter().sum();

@@ -28,8 +28,8 @@ fn port(wire: usize, arc_m: f64, gap_m: f64) -> PortPlace {
 }
 
 fn impedance(structure: Structure, frequency_hz: f64) -> Complex64 {
-    let model = WireModel::new(structure, frequency_hz).unwrap();
-    model.solve(frequency_hz).unwrap().port_admittance_s[(0, 0)].inv()
+    let model = WireModel::new(structure, frequency_hz).expect("a sound structure");
+    model.solve(frequency_hz).expect("within the mesh").port_admittance_s[(0, 0)].inv()
 }
 
 /// Centre-fed straight wire in free space.
@@ -108,7 +108,7 @@ fn low_line(insulation: Option<Insulation>) -> WireModel {
         ports: vec![port(0, half_m, 0.02)],
         boundary: Boundary::Mirror,
     };
-    WireModel::new(structure, 15e6).unwrap()
+    WireModel::new(structure, 15e6).expect("a sound structure")
 }
 
 #[test]
@@ -288,11 +288,12 @@ fn bent() -> impl Strategy<Value = Structure> {
 }
 
 fn admittance(structure: Structure, frequency_hz: f64) -> nalgebra::DMatrix<Complex64> {
-    WireModel::new(structure, 15e6).unwrap().solve(frequency_hz).unwrap().port_admittance_s
+    let model = WireModel::new(structure, 15e6).expect("a sound structure");
+    model.solve(frequency_hz).expect("within the mesh").port_admittance_s
 }
 
 fn distance(a: &nalgebra::DMatrix<Complex64>, b: &nalgebra::DMatrix<Complex64>) -> f64 {
-    (a - b).map(|x| x.norm()).max() / b.map(|x| x.norm()).max()
+    (a - b).map(Complex64::norm).max() / b.map(Complex64::norm).max()
 }
 
 /// Turns a point about an axis through the origin.

@@ -302,12 +302,12 @@ mod tests {
             let full = DMatrix::from_fn(order, order, |row, column| matrix.at(row, column));
             let expected = full.lu().solve(&drive.map(Complex64::from)).unwrap();
             let got = Factors::of(matrix.clone()).unwrap().solve(&drive);
-            let error = (&got - &expected).map(|x| x.norm()).max() / expected.map(|x| x.norm()).max();
+            let error = (&got - &expected).map(Complex64::norm).max() / expected.map(Complex64::norm).max();
             assert!(error < 1e-9, "order {order}: {error}");
             let (solution, residual) = matrix.solve(&drive).unwrap();
             assert!(residual < 1e-8, "order {order}: {residual}");
             let left =
-                (full_product(&matrix, &solution) - drive.map(Complex64::from)).map(|x| x.norm()).max();
+                (full_product(&matrix, &solution) - drive.map(Complex64::from)).map(Complex64::norm).max();
             assert!((left - residual).abs() < 1e-12, "{left} {residual}");
         }
     }

@@ -35,12 +35,8 @@ pub(super) enum End {
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Stretch {
     pub wire: usize,
-    /// Index of the vertex at or before its beginning.
-    pub vertex: usize,
     pub joints: [usize; 2],
     pub length_m: f64,
-    /// Arc of its beginning, m from the wire's first vertex.
-    pub arc_m: f64,
     /// Port whose gap it is part of.
     pub port: Option<usize>,
 }
@@ -67,8 +63,8 @@ impl Skeleton {
         for (index, wire) in structure.wires.iter().enumerate() {
             let on_wire: Vec<&Gap> = gaps.iter().filter(|gap| gap.wire == index).collect();
             let mut arc_m = 0.0;
-            for (vertex, pair) in wire.vertices_m.windows(2).enumerate() {
-                let side = Side { wire: index, vertex, from_m: pair[0], to_m: pair[1], arc_m };
+            for pair in wire.vertices_m.windows(2) {
+                let side = Side { wire: index, from_m: pair[0], to_m: pair[1], arc_m };
                 skeleton.cut(&side, &on_wire);
                 arc_m += distance(pair[0], pair[1]);
             }
@@ -138,10 +134,8 @@ impl Skeleton {
             self.joints[joint].stretches.push(StretchEnd { stretch, end: End::To });
             self.stretches.push(Stretch {
                 wire: side.wire,
-                vertex: side.vertex,
                 joints: [from.0, joint],
                 length_m: distance(self.joints[from.0].position_m, self.joints[joint].position_m),
-                arc_m: from.1,
                 port: gaps.iter().find(inside).map(|gap| gap.port),
             });
             from = (joint, edge_m);
@@ -155,7 +149,6 @@ const EDGE_SNAP_M: f64 = 1e-5;
 /// One side of a polyline.
 struct Side {
     wire: usize,
-    vertex: usize,
     from_m: Vec3,
     to_m: Vec3,
     arc_m: f64,

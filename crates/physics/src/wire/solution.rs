@@ -118,7 +118,7 @@ impl WireModel {
         let drive = self.drive(k);
         let (solution, residual) =
             matrix.solve(&drive).ok_or(WireError::Singular { frequency_hz, residual: f64::INFINITY })?;
-        if !(residual < LARGEST_RESIDUAL) {
+        if residual.is_nan() || residual > LARGEST_RESIDUAL {
             return Err(WireError::Singular { frequency_hz, residual });
         }
         let coefficients_a_per_v = solution * scale_s;
