@@ -68,8 +68,7 @@ pub(crate) fn foot(identity: &Identity, width_mm: f64, page: usize, pages: usize
     let mut block = Block::empty(FOOT_MM);
     block.rule(0.0, width_mm, 0.8, Stroke::Rule, Ink::Rule);
     let page = ending(TextStyle::Note, format!("page {page} of {pages}"));
-    let model =
-        format!("Wirewright {} · figures from the model: {}", env!("CARGO_PKG_VERSION"), identity.model);
+    let model = format!("Wirewright {} · figures: {}", env!("CARGO_PKG_VERSION"), identity.model);
     let model = fit(TextStyle::Note, &model, width_mm - page.width_mm() - space::GUTTER);
     block.text(0.0, 1.4, label(TextStyle::Note, model).ink(Ink::Faint));
     block.text(width_mm, 1.4, page);
