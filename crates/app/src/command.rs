@@ -1,8 +1,8 @@
 //! What the views ask for. Drawing returns commands; the document is the one place that changes the plan.
 
 use station::plan::{
-    Band, ConductorChoice, Earth, Feed, LineChoice, Link, PathPoint, Plan, Point, Support, SupportKind,
-    Transmitter,
+    Band, ConductorChoice, Earth, Feed, LineChoice, Link, Load, PathPoint, Plan, Point, Support, SupportKind,
+    Transmitter, Wire,
 };
 use station::units::Units;
 
@@ -57,7 +57,34 @@ pub enum Edit {
         wire: usize,
         conductor: ConductorChoice,
     },
+    AddWire(Wire),
+    /// Two more wires, one from either side of the feedpoint, slanting down under the fed wire: a fan. The fed wire
+    /// gets two path points there, and they are joined to it.
+    AddArms {
+        length_m: f64,
+    },
+    /// Its loads go with it. Refused for the wire that is fed.
+    RemoveWire {
+        wire: usize,
+    },
+    RenameWire {
+        wire: usize,
+        name: String,
+    },
     FeedFraction(f64),
+    AddLoad(Load),
+    RemoveLoad {
+        load: usize,
+    },
+    SetLoad {
+        load: usize,
+        with: Load,
+    },
+    /// Slide a load along its wire.
+    LoadFraction {
+        load: usize,
+        fraction: f64,
+    },
     /// Move a support; wires on it follow.
     SupportFoot {
         support: usize,

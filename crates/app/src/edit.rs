@@ -1,9 +1,12 @@
 //! The one place that changes a plan. An edit that would make an unsound plan is refused with a sentence; a number
 //! that is dragged too far stops where the plan is still sound.
 
+mod arms;
 mod handle;
+mod joined;
 mod set;
 mod toward;
+mod wires;
 
 pub use handle::Handle;
 
@@ -45,6 +48,20 @@ pub enum Refusal {
         support: String,
         /// The wire's name.
         wire: String,
+    },
+    /// It would leave the feeds without a wire.
+    #[error("the wire \"{wire}\" is the one that is fed: it stays")]
+    Fed {
+        /// The wire's name.
+        wire: String,
+    },
+    /// There is no room for two more wires.
+    #[error(
+        "no room for two more wires at the feedpoint: they need a fed wire of {least_m} m or more on both sides"
+    )]
+    NoRoomForArms {
+        /// Least length of wire on either side of the feedpoint, m.
+        least_m: f64,
     },
     /// It has no length to set.
     #[error("link {number} of this feed is not a piece of line")]

@@ -127,6 +127,7 @@ pub fn check(plan: &Plan) -> Checked {
     count("loads", plan.loads.len(), 0, MOST_LOADS)?;
     for (index, load) in plan.loads.iter().enumerate() {
         parts::check_load(&format!("loads[{index}]"), load, plan.wires.len())?;
+        parts::check_load_place(plan, index)?;
     }
     for (index, feed) in plan.feeds.iter().enumerate() {
         check_feed(&format!("feeds[{index}]"), feed)?;

@@ -24,6 +24,8 @@ impl Handle {
             Edit::PathHeight { wire, point, .. } => (*wire, *point),
             Edit::SupportFoot { support, .. } | Edit::SupportHeight { support, .. } => (*support, 0),
             Edit::LinkLength { feed, link, .. } | Edit::SetLink { feed, link, .. } => (*feed, *link),
+            Edit::LoadFraction { load, .. } | Edit::SetLoad { load, .. } => (*load, 0),
+            Edit::RenameWire { wire, .. } => (*wire, 0),
             Edit::RenameFeed { feed, .. } => (*feed, 0),
             Edit::RenameSupport { support, .. } => (*support, 0),
             Edit::FeedFraction(_)
@@ -36,6 +38,11 @@ impl Handle {
             | Edit::Edition(_)
             | Edit::LeastShare(_) => (0, 0),
             Edit::Conductor { .. }
+            | Edit::AddWire(_)
+            | Edit::AddArms { .. }
+            | Edit::RemoveWire { .. }
+            | Edit::AddLoad(_)
+            | Edit::RemoveLoad { .. }
             | Edit::Earth(_)
             | Edit::AddSupport(_)
             | Edit::RemoveSupport { .. }

@@ -2,11 +2,20 @@
 
 use station::plan::{Link, PathPoint, Plan};
 
-use super::Refusal;
+use super::{Refusal, arms, joined, wires};
 use crate::command::Edit;
 
-/// Changes the plan.
+/// Changes the plan; what was joined before is joined afterwards.
 pub fn set(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
+    let before = joined::Joints::of(plan, edit);
+    change(plan, edit)?;
+    if let Some(before) = before {
+        before.keep(plan, edit);
+    }
+    Ok(())
+}
+
+fn change(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
     match edit {
         Edit::WireBeginning { .. }
         | Edit::CutLength { .. }
@@ -14,6 +23,11 @@ pub fn set(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
         | Edit::PathHeight { .. }
         | Edit::PathPoints { .. }
         | Edit::Conductor { .. } => wire(plan, edit),
+        Edit::AddWire(_) | Edit::RemoveWire { .. } | Edit::RenameWire { .. } => wires::wires(plan, edit),
+        Edit::AddArms { length_m } => arms::add(plan, *length_m),
+        Edit::AddLoad(_) | Edit::RemoveLoad { .. } | Edit::SetLoad { .. } | Edit::LoadFraction { .. } => {
+            wires::loads(plan, edit)
+        }
         Edit::SupportFoot { .. }
         | Edit::SupportHeight { .. }
         | Edit::SupportKind { .. }
@@ -213,6 +227,6 @@ fn link_of(plan: &mut Plan, feed: usize, link: usize) -> Result<&mut Link, Refus
     get(&mut get(&mut plan.feeds, feed, "feed")?.links, link, "link")
 }
 
-fn get<'a, T>(list: &'a mut [T], index: usize, what: &'static str) -> Result<&'a mut T, Refusal> {
+pub(super) fn get<'a, T>(list: &'a mut [T], index: usize, what: &'static str) -> Result<&'a mut T, Refusal> {
     list.get_mut(index).ok_or(Refusal::Missing { what, number: index + 1 })
 }

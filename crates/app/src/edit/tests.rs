@@ -1,8 +1,8 @@
 //! Each edit on the demo, and the stops of dragged numbers.
 
 use station::plan::{
-    ConductorChoice, Earth, LineChoice, Link, MatchingUnit, PathPoint, Plan, Point, SupportKind, Transformer,
-    Transmitter,
+    Circuit, ConductorChoice, Earth, LineChoice, Link, Load, MatchingUnit, PathPoint, Plan, Point,
+    SupportKind, Transformer, Transmitter, Wire,
 };
 
 use super::*;
@@ -211,4 +211,121 @@ fn what_is_at_a_supports_top_follows_it_and_nothing_is_left_above() {
     // Now it is at the top, and goes up with it.
     let again = apply(&lower, &Edit::SupportHeight { support, height_m: lower_m + 0.5 }).unwrap().plan;
     assert!(near(height_of(&again, 0), lower_m + 0.5));
+}
+
+fn trap(name: &str, fraction: f64) -> Load {
+    let circuit = Circuit::MeasuredTrap { resonance_hz: 7.05e6, capacitance_f: 60e-12, q: 150.0 };
+    Load { name: name.to_owned(), wire: 0, fraction, circuit }
+}
+
+#[test]
+fn loads_come_slide_change_and_go() {
+    let plan = after(Edit::AddLoad(trap("west trap", 0.2)));
+    assert_eq!(plan.loads, [trap("west trap", 0.2)]);
+    let slid = apply(&plan, &Edit::LoadFraction { load: 0, fraction: 0.3 }).unwrap().plan;
+    assert!(near(slid.loads[0].fraction, 0.3));
+    let coil = Load { circuit: Circuit::Coil { inductance_h: 12e-6, q: Some(200.0) }, ..trap("coil", 0.3) };
+    let changed = apply(&slid, &Edit::SetLoad { load: 0, with: coil.clone() }).unwrap().plan;
+    assert_eq!(changed.loads, [coil]);
+    assert_eq!(apply(&changed, &Edit::RemoveLoad { load: 0 }).unwrap().plan, start::demo());
+}
+
+#[test]
+fn a_load_slides_to_the_end_of_its_wire_and_never_into_the_feedpoint() {
+    let plan = after(Edit::AddLoad(trap("west trap", 0.2)));
+    let end = apply(&plan, &Edit::LoadFraction { load: 0, fraction: 1.4 }).unwrap();
+    assert!(end.stop.is_some() && end.plan.loads[0].fraction > 0.9 && end.plan.loads[0].fraction < 1.0);
+    let feed = apply(&plan, &Edit::LoadFraction { load: 0, fraction: 0.5 }).unwrap();
+    assert!(feed.stop.is_some_and(|sentence| sentence.contains("the feedpoint")));
+    let away_m = (0.5 - feed.plan.loads[0].fraction) * plan.wires[0].cut_length_m;
+    assert!((0.02..0.03).contains(&away_m), "{away_m} m");
+    let on_it = apply(&plan, &Edit::AddLoad(trap("twin", 0.2))).unwrap_err().to_string();
+    assert!(on_it.contains("west trap") && on_it.contains("accepted"), "{on_it}");
+    assert!(refused(Edit::AddLoad(Load { wire: 4, ..trap("lost", 0.2) })).contains("loads[0].wire"));
+    let nothing = Circuit::Coil { inductance_h: -1e-6, q: None };
+    let sentence =
+        apply(&plan, &Edit::SetLoad { load: 0, with: Load { circuit: nothing, ..trap("coil", 0.2) } });
+    assert!(sentence.unwrap_err().to_string().contains("inductance_h"));
+    assert_eq!(refused(Edit::RemoveLoad { load: 0 }), "the plan has no load number 1");
+}
+
+/// A wire between two free points that touches nothing.
+fn spare() -> Wire {
+    let path = [Point::new(0.0, 20.0, 8.0), Point::new(12.0, 20.0, 8.0)].map(PathPoint::Free).to_vec();
+    let conductor = ConductorChoice::Catalogue("copper-2mm".to_owned());
+    Wire { name: "spare".to_owned(), path, start_m: 0.0, cut_length_m: 12.0, conductor }
+}
+
+#[test]
+fn wires_come_and_go_with_their_loads() {
+    let plan = after(Edit::AddWire(spare()));
+    assert_eq!(plan.wires[1], spare());
+    let mut plan = apply(&plan, &Edit::AddWire(Wire { name: "last".to_owned(), ..spare() })).unwrap().plan;
+    plan.loads = vec![Load { wire: 1, ..trap("goes", 0.4) }, Load { wire: 2, ..trap("stays", 0.4) }];
+    let less = apply(&plan, &Edit::RemoveWire { wire: 1 }).unwrap().plan;
+    assert_eq!(less.wires.len(), 2);
+    assert_eq!(less.loads, [Load { wire: 1, ..trap("stays", 0.4) }], "it stays on its wire");
+    let sentence = apply(&plan, &Edit::RemoveWire { wire: 0 }).unwrap_err().to_string();
+    assert!(sentence.contains("is the one that is fed"), "{sentence}");
+    plan.feedpoint.wire = 2;
+    assert_eq!(apply(&plan, &Edit::RemoveWire { wire: 0 }).unwrap().plan.feedpoint.wire, 1);
+    let named = apply(&plan, &Edit::RenameWire { wire: 1, name: "low wire".to_owned() }).unwrap().plan;
+    assert_eq!(named.wires[1].name, "low wire");
+}
+
+/// Whether an arm begins at a corner of the fed wire.
+fn is_joined(plan: &Plan, arm: usize) -> bool {
+    let hung = station::hang::hang(plan).unwrap();
+    let begins = hung.wires[arm].vertices[0].at;
+    hung.wires[0].vertices.iter().any(|corner| corner.at.distance_m(begins) < 1e-3)
+}
+
+#[test]
+fn a_fan_is_joined_at_the_feedpoint_and_stays_joined() {
+    let fan = after(Edit::AddArms { length_m: 5.0 });
+    assert_eq!(fan.wires.len(), 3);
+    let length_m = |plan: &Plan, wire: usize| station::hang::hang(plan).unwrap().wires[wire].length_m();
+    assert!(near(length_m(&fan, 0), start::demo().wires[0].cut_length_m));
+    assert!((length_m(&fan, 1) - 5.0).abs() < 1e-9 && is_joined(&fan, 1) && is_joined(&fan, 2));
+    let second = apply(&fan, &Edit::AddArms { length_m: 3.0 }).unwrap().plan;
+    assert_eq!(second.wires[0].path.len(), fan.wires[0].path.len(), "it takes the joints that are there");
+    assert!((1..5).all(|arm| is_joined(&second, arm)));
+
+    // A longer wire keeps its feedpoint between the joints.
+    let feed = |plan: &Plan| station::hang::hang(plan).unwrap().feedpoint.at;
+    let longer = apply(&fan, &Edit::CutLength { wire: 0, cut_length_m: 41.0 }).unwrap().plan;
+    assert!(feed(&longer).distance_m(feed(&fan)) < 1e-6 && is_joined(&longer, 1));
+
+    // A joint that is pulled takes the arm along.
+    let mut path = fan.wires[0].path.clone();
+    let PathPoint::Free(at) = &mut path[1] else { panic!("{path:?}") };
+    at.z_m += 0.4;
+    let pulled = apply(&fan, &Edit::PathPoints { wire: 0, path }).unwrap().plan;
+    assert!(is_joined(&pulled, 1) && is_joined(&pulled, 2));
+    assert_ne!(pulled.wires[1].path, fan.wires[1].path);
+}
+
+#[test]
+fn a_closed_wire_stays_closed() {
+    let corners = [(0.0, 6.0), (10.0, 6.0), (5.0, 14.0), (0.0, 6.0)];
+    let mut plan = start::demo();
+    let path: Vec<PathPoint> =
+        corners.iter().map(|&(x, z)| PathPoint::Free(Point::new(x, 30.0, z))).collect();
+    let around_m = 10.0 + 2.0 * 5.0_f64.hypot(8.0);
+    plan.wires[0] = Wire { path: path.clone(), cut_length_m: around_m, ..spare() };
+    let mut pulled = path;
+    pulled[0] = PathPoint::Free(Point::new(-2.0, 30.0, 5.0));
+    let plan = apply(&plan, &Edit::PathPoints { wire: 0, path: pulled }).unwrap().plan;
+    assert_eq!(plan.wires[0].path[0], plan.wires[0].path[3]);
+    let hung = station::hang::hang(&plan).unwrap();
+    let (first, last) = (hung.wires[0].vertices[0], hung.wires[0].vertices.last().unwrap());
+    assert!(first.at.distance_m(last.at) < 1e-9 && hung.ropes.is_empty());
+}
+
+#[test]
+fn a_wire_fed_at_its_end_has_no_room_for_a_fan() {
+    let mut plan = start::demo();
+    plan.feedpoint.fraction = 0.005;
+    let sentence = apply(&plan, &Edit::AddArms { length_m: 5.0 }).unwrap_err().to_string();
+    assert!(sentence.contains("no room"), "{sentence}");
 }

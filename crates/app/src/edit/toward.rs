@@ -38,6 +38,9 @@ pub fn toward(plan: &Plan, edit: &Edit, share: f64) -> Option<Edit> {
             Edit::PathPoints { wire, path }
         }
         Edit::FeedFraction(fraction) => Edit::FeedFraction(number(plan.feedpoint.fraction, fraction)),
+        Edit::LoadFraction { load, fraction } => {
+            Edit::LoadFraction { load, fraction: number(plan.loads.get(load)?.fraction, fraction) }
+        }
         Edit::LeastShare(share_to_wire) => Edit::LeastShare(number(plan.least_share_to_wire, share_to_wire)),
         Edit::SupportFoot { support, foot } => {
             Edit::SupportFoot { support, foot: point(plan.site.supports.get(support)?.foot, foot) }

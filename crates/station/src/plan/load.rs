@@ -2,6 +2,9 @@
 
 use serde::{Deserialize, Serialize};
 
+/// Width of the gap in the wire that a load bridges, m: about a small strain insulator (common practice).
+pub const LOAD_GAP_M: f64 = 0.02;
+
 /// Something lumped in series with a wire.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 #[serde(deny_unknown_fields)]

@@ -11,7 +11,7 @@ mod wire;
 pub use feed::{
     Feed, LineChoice, LineConstruction, LineData, LinePiece, Link, LossLaw, MatchingUnit, Transformer,
 };
-pub use load::{Circuit, Load};
+pub use load::{Circuit, LOAD_GAP_M, Load};
 pub use site::{Earth, Point, Site, Soil, Support, SupportKind};
 pub use wire::{ConductorChoice, ConductorData, Core, Feedpoint, Insulation, PathPoint, Wire};
 

@@ -1,7 +1,7 @@
 //! Validation of parts: conductors, lines, matching units, loads.
 
 use super::{Checked, PlanError, count, number, text};
-use crate::plan::{Circuit, ConductorData, LineConstruction, LineData, Load, MatchingUnit};
+use crate::plan::{Circuit, ConductorData, LOAD_GAP_M, LineConstruction, LineData, Load, MatchingUnit, Plan};
 
 pub(super) fn check_conductor(field: &str, data: &ConductorData) -> Checked {
     text(&format!("{field}.name"), &data.name, 80)?;
@@ -113,6 +113,30 @@ pub(super) fn check_load(field: &str, load: &Load, wires: usize) -> Checked {
         });
     }
     check_circuit(&format!("{field}.circuit"), &load.circuit, 0)
+}
+
+/// A load bridges a gap of its own: neither the feedpoint's nor that of a load before it in the list.
+pub(super) fn check_load_place(plan: &Plan, index: usize) -> Checked {
+    let load = &plan.loads[index];
+    let arc_m = |wire: usize, fraction: f64| plan.wires.get(wire).map_or(0.0, |w| fraction * w.cut_length_m);
+    let at_m = arc_m(load.wire, load.fraction);
+    let feed = plan.feedpoint;
+    let others = plan.loads[..index].iter().map(|other| {
+        (other.wire, arc_m(other.wire, other.fraction), LOAD_GAP_M, format!("load \"{}\"", other.name))
+    });
+    let mut taken =
+        others.chain([(feed.wire, arc_m(feed.wire, feed.fraction), feed.gap_m, "the feedpoint".to_owned())]);
+    let in_it = taken.find(|(wire, other_m, gap_m, _)| {
+        *wire == load.wire && (at_m - other_m).abs() < 0.5 * (LOAD_GAP_M + gap_m)
+    });
+    match in_it {
+        None => Ok(()),
+        Some((_, other_m, gap_m, what)) => Err(PlanError::Contradiction {
+            field: format!("loads[{index}].fraction"),
+            value: format!("{:.1} cm from {what}", 100.0 * (at_m - other_m).abs()),
+            accepted: format!("{:.1} cm or more from it", 50.0 * (LOAD_GAP_M + gap_m)),
+        }),
+    }
 }
 
 fn check_circuit(field: &str, circuit: &Circuit, depth: usize) -> Checked {

@@ -6,10 +6,7 @@ use physics::wire::{
 
 use super::trace::coordinates;
 use crate::hang::Hung;
-use crate::plan::{Circuit, ConductorData, Plan};
-
-/// Width of a load's gap, m: about a small strain insulator (common practice).
-const LOAD_GAP_M: f64 = 0.02;
+use crate::plan::{Circuit, ConductorData, LOAD_GAP_M, Plan};
 
 /// Wires and ports: the feedpoint is port 0, the loads follow in the plan's order.
 pub(super) fn structure(plan: &Plan, hung: &Hung, boundary: Boundary) -> Structure {
