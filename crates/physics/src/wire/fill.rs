@@ -8,23 +8,34 @@ use pulp::{Arch, Simd, WithSimd};
 use super::coupling::{Coupling, FIELDS, GAUSS};
 use super::lanes::{Lanes, PAD, padded};
 use super::mesh::{Mesh, Run};
+use super::reflection::Reflected;
 use super::shapes::Shapes;
 use super::shares::Shares;
 use super::symmetric::Symmetric;
 
-/// Matrix of all couplings, plus `own[segment]`: what a segment's end currents do to themselves and to each other.
-pub(super) fn matrix(
-    mesh: &Mesh,
-    shares: &Shares,
-    couplings: &[Coupling],
-    own: &[[Complex64; 2]],
-    (k, reflected): (f64, Complex64),
-) -> Symmetric {
-    let mut matrix = Symmetric::zero(mesh.unknowns.len());
-    let columns = Columns::new(mesh, k);
-    let fill = Fill { mesh, shares, couplings, own, columns: &columns, k, reflected, matrix: &mut matrix };
-    Arch::new().dispatch(fill);
-    matrix
+/// What a matrix is made of.
+pub(super) struct Terms<'a> {
+    pub mesh: &'a Mesh,
+    pub shares: &'a Shares,
+    pub couplings: &'a [Coupling],
+    /// What a segment's end currents do to themselves and to each other, by metal and cover.
+    pub own: &'a [[Complex64; 2]],
+    /// Wave number, rad/m.
+    pub k: f64,
+    /// What the earth gives back of an image's part: 1 for the mirror.
+    pub reflected: Complex64,
+    /// Kernels of another boundary.
+    pub reflection: Option<Reflected<'a>>,
+}
+
+impl Terms<'_> {
+    /// Their sum.
+    pub fn matrix(&self) -> Symmetric {
+        let mut matrix = Symmetric::zero(self.mesh.unknowns.len());
+        let columns = Columns::new(self.mesh, self.k);
+        Arch::new().dispatch(Fill { terms: self, columns: &columns, matrix: &mut matrix });
+        matrix
+    }
 }
 
 /// Shapes of all segments as sources, halved, in blocks of [`PAD`] segments: even, odd and even slope.
@@ -69,8 +80,9 @@ impl Blocks {
         Complex64::new(self.parts[part][column], self.parts[4 + part][column])
     }
 
-    fn add_own(&mut self, column: usize, [same, cross]: [Complex64; 2]) {
-        for (part, value) in [same, cross, cross, same].into_iter().enumerate() {
+    /// Adds beginning–beginning, beginning–end, end–beginning, end–end.
+    pub fn add(&mut self, column: usize, couplings: [Complex64; 4]) {
+        for (part, value) in couplings.into_iter().enumerate() {
             self.parts[part][column] += value.re;
             self.parts[4 + part][column] += value.im;
         }
@@ -78,14 +90,8 @@ impl Blocks {
 }
 
 struct Fill<'a> {
-    mesh: &'a Mesh,
-    shares: &'a Shares,
-    couplings: &'a [Coupling],
-    own: &'a [[Complex64; 2]],
+    terms: &'a Terms<'a>,
     columns: &'a Columns,
-    k: f64,
-    /// What the earth gives back of an image's part: 1 for the mirror.
-    reflected: Complex64,
     matrix: &'a mut Symmetric,
 }
 
@@ -94,33 +100,37 @@ impl WithSimd for Fill<'_> {
 
     #[inline(always)]
     fn with_simd<S: Simd>(self, simd: S) {
-        let segments = self.mesh.segments.len();
+        let Terms { mesh, shares, couplings, own, k, reflected, reflection } = self.terms;
+        let segments = mesh.segments.len();
         let mut sums = vec![0.0; SUMS * padded(segments)];
         let mut blocks = Blocks::zero(segments);
         for row in 0..segments {
             for part in &mut blocks.parts {
                 part[..padded(row + 1)].fill(0.0);
             }
-            for coupling in self.couplings {
+            for coupling in *couplings {
                 let sums = &mut sums[..SUMS * padded(row + 1)];
-                wave_sums(simd, coupling.table(row), self.k, sums);
+                wave_sums(simd, coupling.table(row), *k, sums);
                 for near in coupling.near(row) {
                     add_sums(sums, near.column, near.sums);
                 }
                 if coupling.sign > 0.0 {
-                    add_sums(sums, row, kink(self.k, self.mesh.segments[row].length_m()));
-                } else if self.reflected != Complex64::ONE {
-                    weigh(sums, self.reflected);
+                    add_sums(sums, row, kink(*k, mesh.segments[row].length_m()));
+                } else if *reflected != Complex64::ONE {
+                    weigh(sums, *reflected);
                 }
-                let shapes = &self.columns.shapes[row];
-                let scale = RowScale::new(simd, shapes, coupling.sign);
+                let scale = RowScale::new(simd, &self.columns.shapes[row], coupling.sign);
                 add_blocks(simd, &scale, [sums, &self.columns.table, coupling.table(row)], &mut blocks);
             }
-            blocks.add_own(row, self.own[row]);
-            for run in &self.mesh.runs {
-                add_run(self.matrix, self.shares, row, run, &blocks);
+            if let Some(reflection) = reflection {
+                reflection.add_row(row, &self.columns.shapes, &mut blocks);
             }
-            self.shares.add_joints(self.matrix, self.mesh, row, &blocks);
+            let [same, cross] = own[row];
+            blocks.add(row, [same, cross, cross, same]);
+            for run in &mesh.runs {
+                add_run(self.matrix, shares, row, run, &blocks);
+            }
+            shares.add_joints(self.matrix, mesh, row, &blocks);
         }
     }
 }

@@ -2,7 +2,7 @@
 
 use num_complex::Complex64;
 
-use super::fill;
+use super::fill::Terms;
 use super::structure::{Boundary, PortPlace, Structure, WireShape};
 use super::{Material, Segment, WireModel};
 use crate::constants::{SPEED_OF_LIGHT_M_PER_S, VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
@@ -28,7 +28,9 @@ fn model(wires: &[(f64, [f64; 3])], radius_m: f64, boundary: Boundary) -> WireMo
 fn impedance(model: &WireModel, wires: &[(f64, [f64; 3])], a: usize, b: usize) -> Complex64 {
     let k = wave_number_rad_per_m(FREQUENCY_HZ);
     let own = vec![[Complex64::ZERO; 2]; model.segments().len()];
-    let matrix = fill::matrix(&model.mesh, &model.shares, &model.couplings, &own, (k, Complex64::ONE));
+    let (mesh, shares, couplings) = (&model.mesh, &model.shares, &model.couplings[..]);
+    let terms = Terms { mesh, shares, couplings, own: &own, k, reflected: Complex64::ONE, reflection: None };
+    let matrix = terms.matrix();
     let current = |wire: usize| -> Vec<f64> {
         let (half_m, [_, y, _]) = wires[wire];
         let at = |unknown: &super::mesh::Unknown| {

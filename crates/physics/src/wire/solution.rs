@@ -8,10 +8,11 @@ use num_complex::Complex64;
 use super::check::{self, LOWEST_HZ};
 use super::coupling::{Coupling, Sources};
 use super::error::WireError;
-use super::fill;
+use super::fill::Terms;
 use super::grading::Fineness;
 use super::mesh::{Arm, Mesh};
 use super::power::{port_power_w, segment_loss_w};
+use super::reflection::{Reflected, Reflection};
 use super::segment::{EndCurrents, Segment};
 use super::shapes::Shapes;
 use super::shares::Shares;
@@ -105,6 +106,19 @@ impl WireModel {
     /// # Errors
     /// A frequency outside the mesh's range; equations without a usable solution.
     pub fn solve(&self, frequency_hz: f64) -> Result<Solution, WireError> {
+        self.solve_with(frequency_hz, None)
+    }
+
+    /// Solution at one frequency with what another boundary gives back added to the structure's own, which is free
+    /// space for a reflection that stands for all there is.
+    ///
+    /// # Errors
+    /// As [`WireModel::solve`].
+    pub fn solve_over(&self, frequency_hz: f64, reflection: &dyn Reflection) -> Result<Solution, WireError> {
+        self.solve_with(frequency_hz, Some(Reflected::new(reflection, &self.mesh.segments)))
+    }
+
+    fn solve_with(&self, frequency_hz: f64, reflection: Option<Reflected>) -> Result<Solution, WireError> {
         if !(LOWEST_HZ..=self.highest_hz * (1.0 + 1e-9)).contains(&frequency_hz) {
             let (lowest_hz, highest_hz) = (LOWEST_HZ, self.highest_hz);
             return Err(WireError::FrequencyOutOfRange { frequency_hz, lowest_hz, highest_hz });
@@ -113,8 +127,16 @@ impl WireModel {
         // Everything over jkη/4π
         let scale_s = Complex64::new(0.0, -2.0 * TAU / (k * VACUUM_IMPEDANCE_OHM));
         let own = self.own_impedances(scale_s, frequency_hz);
-        let reflected = self.structure.boundary.reflected(frequency_hz);
-        let matrix = fill::matrix(&self.mesh, &self.shares, &self.couplings, &own, (k, reflected));
+        let terms = Terms {
+            mesh: &self.mesh,
+            shares: &self.shares,
+            couplings: &self.couplings,
+            own: &own,
+            k,
+            reflected: self.structure.boundary.reflected(frequency_hz),
+            reflection,
+        };
+        let matrix = terms.matrix();
         let drive = self.drive(k);
         let (solution, residual) =
             matrix.solve(&drive).ok_or(WireError::Singular { frequency_hz, residual: f64::INFINITY })?;
