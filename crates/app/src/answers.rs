@@ -4,7 +4,7 @@ use std::time::{Duration, Instant};
 
 use eframe::egui;
 use station::evaluate::Proof;
-use station::report::Report;
+use station::report::{Model, Report};
 
 use crate::document::Document;
 use crate::worker::{Answer, News, Worker};
@@ -106,6 +106,12 @@ impl Answers {
     #[must_use]
     pub fn current(&self, document: &Document) -> Option<&Report> {
         self.report.as_ref().filter(|report| report.revision == document.revision())
+    }
+
+    /// The full answer on the plan as it is now: what may go on paper.
+    #[must_use]
+    pub fn settled(&self, document: &Document) -> Option<&Report> {
+        self.current(document).filter(|report| report.model != Model::Sketch)
     }
 
     /// Whether what is shown is old enough to be marked.

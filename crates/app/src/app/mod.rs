@@ -144,7 +144,7 @@ impl Wirewright {
         if !self.desk.wants_sheet() {
             return;
         }
-        let Some(report) = self.answers.current(&self.document) else { return };
+        let Some(report) = self.answers.settled(&self.document) else { return };
         let Some(path) = self.desk.take_sheet_path() else { return };
         let request = crate::paper::request(self.looks.paper, self.looks.units);
         let notice = match crate::paper::save(self.document.plan(), report, &request, &path) {

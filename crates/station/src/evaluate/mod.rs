@@ -21,6 +21,8 @@ pub use physics::field::Direction;
 
 pub use self::full::{Gains, Proof};
 
+use std::sync::Arc;
+
 use physics::line::LineError;
 use physics::sinusoid::SketchError;
 use physics::sweep::SweepError;
@@ -34,7 +36,7 @@ use self::watts::Passage;
 use self::wire::{BandSolution, WireSolution};
 use crate::catalogue::CatalogueError;
 use crate::hang::{HangError, Hung, hang};
-use crate::plan::{Earth, Feed, Plan};
+use crate::plan::{Earth, Feed, Load, Plan};
 use crate::report::{BandFeed, BandReport, FrequencyReport, Model, Report};
 use crate::validate::{self, PlanError};
 
@@ -98,11 +100,23 @@ pub enum EvaluateError {
 /// Turns plans into reports and keeps what it can between them.
 #[derive(Debug, Default)]
 pub struct Evaluator {
-    full: Option<(WireKey, full::Solved)>,
-    sketch: Option<(WireKey, WireSolution)>,
+    full: Option<Full>,
+    sketch: Option<(WireKey, Arc<WireSolution>)>,
     chains: Vec<(Feed, Chain)>,
     /// The frequencies that all of these were made for.
     grids: Vec<Grid>,
+}
+
+/// What a wire model answers, and its name.
+type Answered = Result<(Model, Arc<WireSolution>), EvaluateError>;
+
+/// The full model's stages: solved wires, and the answer with loads attached.
+#[derive(Debug)]
+struct Full {
+    key: WireKey,
+    solved: full::Solved,
+    loads: Vec<Load>,
+    solution: Arc<WireSolution>,
 }
 
 /// What a wire solution depends on, beside the frequencies.
@@ -113,6 +127,12 @@ struct WireKey {
     gap_m: f64,
     /// Wire and fraction of each load.
     load_places: Vec<(usize, f64)>,
+}
+
+impl Full {
+    fn model(&self) -> Model {
+        Model::Full { unknowns: self.solved.unknowns() }
+    }
 }
 
 impl WireKey {
@@ -176,8 +196,7 @@ impl Evaluator {
     /// # Errors
     /// What the solver refuses on the finer mesh.
     pub fn prove(&self, plan: &Plan, frequency_hz: f64) -> Result<Option<Proof>, EvaluateError> {
-        let solved = self.full.as_ref().map(|(_, solved)| solved.prove(plan, frequency_hz));
-        solved.transpose()
+        self.full.as_ref().map(|full| full.solved.prove(plan, frequency_hz)).transpose()
     }
 
     /// Gains of the newest full answer at one of its frequencies; `None` before the first one and over soil.
@@ -190,8 +209,8 @@ impl Evaluator {
         frequency_hz: f64,
         directions: &[Direction],
     ) -> Result<Option<Gains>, EvaluateError> {
-        let Some((_, solved)) = &self.full else { return Ok(None) };
-        solved.gains(plan, frequency_hz, directions)
+        let Some(full) = &self.full else { return Ok(None) };
+        full.solved.gains(plan, frequency_hz, directions)
     }
 
     fn run(
@@ -199,7 +218,7 @@ impl Evaluator {
         plan: &Plan,
         revision: u64,
         grids: Vec<Grid>,
-        solve: fn(&mut Self, &Plan, &Hung) -> Result<(Model, WireSolution), EvaluateError>,
+        solve: fn(&mut Self, &Plan, &Hung) -> Answered,
     ) -> Result<Report, EvaluateError> {
         if self.grids != grids {
             *self = Self { grids, ..Self::default() };
@@ -228,29 +247,32 @@ impl Evaluator {
     }
 
     /// The full model; solved wires are kept where nothing that they depend on has changed.
-    fn full(&mut self, plan: &Plan, hung: &Hung) -> Result<(Model, WireSolution), EvaluateError> {
+    fn full(&mut self, plan: &Plan, hung: &Hung) -> Answered {
         let key = WireKey::new(plan, hung);
-        let solved = match self.full.take() {
-            Some((kept, solved)) if kept == key => solved,
-            before => {
-                let boundary = full::boundary(&plan.site.earth)?;
-                let before = before.map(|(_, solved)| solved);
-                full::Solved::new(plan, hung, boundary, &self.grids, before.as_ref())?
-            }
+        let kept = self.full.take();
+        if let Some(full) = kept.as_ref().filter(|full| full.key == key && full.loads == plan.loads) {
+            let answer = (full.model(), Arc::clone(&full.solution));
+            self.full = kept;
+            return Ok(answer);
+        }
+        let solved = match kept {
+            Some(full) if full.key == key => full.solved,
+            _ => full::Solved::new(plan, hung, full::boundary(&plan.site.earth)?, &self.grids)?,
         };
-        let solution = solved.answer(plan, hung, &self.grids)?;
-        let model = Model::Full { unknowns: solved.unknowns() };
-        self.full = Some((key, solved));
+        let solution = Arc::new(solved.answer(plan, hung, &self.grids)?);
+        let full = Full { key, solved, loads: plan.loads.clone(), solution: Arc::clone(&solution) };
+        let model = full.model();
+        self.full = Some(full);
         Ok((model, solution))
     }
 
-    fn sketched(&mut self, plan: &Plan, hung: &Hung) -> Result<(Model, WireSolution), EvaluateError> {
+    fn sketched(&mut self, plan: &Plan, hung: &Hung) -> Answered {
         let key = WireKey::new(plan, hung);
         let solution = match self.sketch.take() {
             Some((kept, solution)) if kept == key => solution,
-            _ => sketch::solve(hung, &plan.site.earth, &self.grids)?,
+            _ => Arc::new(sketch::solve(hung, &plan.site.earth, &self.grids)?),
         };
-        self.sketch = Some((key, solution.clone()));
+        self.sketch = Some((key, Arc::clone(&solution)));
         Ok((Model::Sketch, solution))
     }
 

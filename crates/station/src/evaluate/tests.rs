@@ -1,5 +1,5 @@
 use super::*;
-use crate::plan::{Earth, LineChoice, LinePiece, Link};
+use crate::plan::{Circuit, Earth, LineChoice, LinePiece, Link, Load};
 use crate::report::VerdictKind;
 use crate::sample;
 
@@ -132,4 +132,111 @@ fn json_has_no_null() {
     }
     no_null(&value);
     assert_eq!(value["bands"][0]["frequencies"].as_array().unwrap().len(), 101);
+}
+
+/// The sample with a trap that is far narrower than the distance between two solutions.
+fn with_trap() -> Plan {
+    let mut plan = sample::plan();
+    plan.loads = vec![Load {
+        name: "7 MHz trap".to_owned(),
+        wire: 0,
+        fraction: 0.76,
+        circuit: Circuit::MeasuredTrap { resonance_hz: 7.1e6, capacitance_f: 60e-12, q: 300.0 },
+    }];
+    plan
+}
+
+/// The trap is attached to the solved ports at each frequency, so it cannot slip between the sweep's solutions: the
+/// swept answer is that of a direct solution at every frequency.
+#[test]
+fn a_sharp_trap_between_sweep_frequencies_is_found() {
+    let plan = with_trap();
+    let swept = report(&plan);
+    let band = &swept.bands[1];
+    let asked: Vec<f64> = band.points.iter().skip(2).step_by(14).map(|point| point.frequency_hz).collect();
+    for chunk in asked.chunks(8) {
+        let direct = Evaluator::new().evaluate_at(&plan, 1, chunk).unwrap();
+        for point in &direct.bands[0].points {
+            let off = |p: &&FrequencyReport| (p.frequency_hz - point.frequency_hz).abs();
+            let near = band.points.iter().min_by(|a, b| off(a).total_cmp(&off(b))).unwrap();
+            let difference = (near.feedpoint_ohm - point.feedpoint_ohm).norm() / point.feedpoint_ohm.norm();
+            assert!(difference < 2e-3, "{} Hz: {difference}", point.frequency_hz);
+        }
+    }
+    // And it is sharp: it changes the impedance by far more than the band's width does without it.
+    let bare = report(&sample::plan());
+    let change = (band.points[50].feedpoint_ohm - bare.bands[1].points[50].feedpoint_ohm).norm();
+    assert!(change > 0.2 * bare.bands[1].points[50].feedpoint_ohm.norm(), "{change}");
+}
+
+/// A change of line, power or limits keeps the attached answer; a change of a load's circuit keeps the solved wires.
+#[test]
+fn lines_and_loads_never_solve_the_wires_again() {
+    let mut plan = with_trap();
+    let mut evaluator = Evaluator::new();
+    evaluator.evaluate(&plan, 1).unwrap();
+    let kept = |e: &Evaluator| {
+        e.full.as_ref().map(|full| (Arc::as_ptr(&full.solution), full.solved.identity())).unwrap()
+    };
+    let before = kept(&evaluator);
+    plan.feeds[0].links.clear();
+    plan.transmitter.power_w = 20.0;
+    evaluator.evaluate(&plan, 2).unwrap();
+    assert_eq!(kept(&evaluator), before);
+    plan.loads[0].circuit = Circuit::Resistor { resistance_ohm: 200.0 };
+    evaluator.evaluate(&plan, 3).unwrap();
+    assert_eq!(kept(&evaluator).1, before.1);
+    plan.wires[0].cut_length_m -= 0.1;
+    evaluator.evaluate(&plan, 4).unwrap();
+    assert_ne!(kept(&evaluator).1, before.1);
+}
+
+/// The potential jumps across the feed gap by the feedpoint voltage; the gap's own inductance (20 mm at about 1 µH/m)
+/// turns its phase a little where the feedpoint's impedance is low, so sizes are compared.
+#[test]
+fn the_potential_jumps_by_the_feed_voltage() {
+    let mut plan = sample::plan();
+    for earth in [Earth::NoEarth, Earth::Mirror] {
+        plan.site.earth = earth;
+        for band in report(&plan).bands {
+            let z = band.middle_point().feedpoint_ohm;
+            let volts = (2.0 / z.inv().re).sqrt();
+            let wave = &band.wave.wires[0];
+            let before = wave.arc_m.iter().position(|arc| (arc - 19.99).abs() < 1e-9).unwrap();
+            let jump = wave.potential_v[before + 1] - wave.potential_v[before];
+            assert!((jump.norm() / volts - 1.0).abs() < 0.01, "{}: {jump} for {volts}", band.name);
+            assert!(jump.arg().abs() < 0.03, "{}: {jump} for {volts}", band.name);
+        }
+    }
+}
+
+/// Watts to the sky, by integration over the sphere, and watts burnt add up to what the feedpoint takes.
+#[test]
+fn energy_is_in_balance_with_and_without_loads() {
+    let mut plan = with_trap();
+    for earth in [Earth::NoEarth, Earth::Mirror] {
+        plan.site.earth = earth;
+        let mut evaluator = Evaluator::new();
+        let report = evaluator.evaluate(&plan, 1).unwrap();
+        for band in report.bands {
+            let proof = evaluator.prove(&plan, band.middle_point().frequency_hz).unwrap().unwrap();
+            let balance = proof.energy_balance().unwrap();
+            assert!((balance - 1.0).abs() < 3e-3, "{}: {balance}", band.name);
+            assert!(proof.mesh_error < 5e-3, "{}: {}", band.name, proof.mesh_error);
+        }
+    }
+}
+
+/// The sketch is a sketch of the full answer: the same picture, not the same figures.
+#[test]
+fn the_sketch_looks_like_the_full_answer() {
+    let plan = sample::plan();
+    let full = report(&plan);
+    let sketch = Evaluator::new().sketch(&plan, 7).unwrap();
+    assert!(matches!(full.model, Model::Full { .. }) && sketch.model == Model::Sketch);
+    for (full, sketch) in full.bands.iter().zip(&sketch.bands) {
+        let (a, b) = (full.middle_point().feedpoint_ohm, sketch.middle_point().feedpoint_ohm);
+        assert!((a - b).norm() < 0.5 * a.norm(), "{}: {a} and {b}", full.name);
+        assert_eq!(full.wave.wires[0].marks.len(), sketch.wave.wires[0].marks.len(), "{}", full.name);
+    }
 }

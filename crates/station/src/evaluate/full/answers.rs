@@ -23,13 +23,13 @@ pub(super) enum Answers {
 }
 
 impl Answers {
-    /// `before` is the number of solutions that each section of an earlier sweep took.
-    pub fn new(model: &WireModel, frequencies_hz: &[f64], before: &[usize]) -> Result<Self, EvaluateError> {
+    /// Always begins afresh, so that a plan's numbers do not depend on what was evaluated before it: window, terminal and
+    /// paper agree to the last digit.
+    pub fn new(model: &WireModel, frequencies_hz: &[f64]) -> Result<Self, EvaluateError> {
         if frequencies_hz.len() <= FEW {
             return solve(model, frequencies_hz).map(Self::Direct);
         }
-        let range = range(model, frequencies_hz);
-        let mut sweep = Sweep::like(&range, before)?;
+        let mut sweep = Sweep::new(&range(model, frequencies_hz))?;
         loop {
             let wanted_hz = sweep.wanted_hz();
             if wanted_hz.is_empty() {
@@ -71,13 +71,6 @@ impl Answers {
                 each.map(|(index, &frequency_hz)| loaded(frequency_hz, &admittances.matrix_s(index)))
                     .collect()
             }
-        }
-    }
-
-    pub fn solutions(&self) -> Vec<usize> {
-        match self {
-            Self::Direct(_) => Vec::new(),
-            Self::Swept(fit) => fit.solutions(),
         }
     }
 }

@@ -6,10 +6,11 @@ mod structure;
 mod trace;
 
 use num_complex::Complex64;
-use physics::field::{PotentialSource, SurfacePoint};
+use physics::field::PotentialSource;
 use physics::sweep::Sample;
 use physics::wire::ports::{PortUse, attach};
 use physics::wire::{Boundary, EndCurrents, Load, WireModel, port_power_w};
+use rayon::prelude::*;
 
 pub use self::proof::{Gains, Proof};
 
@@ -19,7 +20,7 @@ use super::EvaluateError;
 use super::grid::Grid;
 use super::wire::{BandSolution, Cut, WirePoint, WireSolution, marks, places};
 use crate::catalogue;
-use crate::hang::{Hung, HungWire};
+use crate::hang::Hung;
 use crate::plan::{Earth, Plan};
 use crate::report::{StandingWave, WireWave};
 
@@ -41,29 +42,31 @@ struct Fed {
 
 /// Frequencies of a band at which the burnt share is computed; between them it is interpolated.
 const EFFICIENCY_PLACES: usize = 9;
+/// Places on a segment at which its mean potential is taken: beside a gap the charge varies most.
+const PLACES_BESIDE_GAP: usize = 20;
+const PLACES_ELSEWHERE: usize = 3;
 
 impl Solved {
-    /// Solves the wires; `before` is an earlier solution of a similar structure.
-    pub fn new(
-        plan: &Plan,
-        hung: &Hung,
-        boundary: Boundary,
-        grids: &[Grid],
-        before: Option<&Self>,
-    ) -> Result<Self, EvaluateError> {
+    /// Solves the wires.
+    pub fn new(plan: &Plan, hung: &Hung, boundary: Boundary, grids: &[Grid]) -> Result<Self, EvaluateError> {
         let mut frequencies_hz: Vec<f64> =
             grids.iter().flat_map(|grid| grid.frequencies_hz.clone()).collect();
         frequencies_hz.sort_by(f64::total_cmp);
         frequencies_hz.dedup();
         let highest_hz = frequencies_hz.last().copied().ok_or(EvaluateError::NoFrequency)?;
         let model = WireModel::new(structure::structure(plan, hung, boundary), highest_hz)?;
-        let solutions = before.map(|solved| solved.answers.solutions()).unwrap_or_default();
-        let answers = Answers::new(&model, &frequencies_hz, &solutions)?;
+        let answers = Answers::new(&model, &frequencies_hz)?;
         let traces = hung.wires.iter().enumerate();
         let traces =
             traces.map(|(index, wire)| Trace::new(wire, index, model.segments(), model.wire_of_segment()));
         let traces = traces.collect();
         Ok(Self { model, answers, traces })
+    }
+
+    /// Tells one solution from another: where its mesh lies in memory.
+    #[cfg(test)]
+    pub fn identity(&self) -> *const physics::wire::Segment {
+        self.model.segments().as_ptr()
     }
 
     /// Number of unknown currents.
@@ -74,7 +77,7 @@ impl Solved {
     /// Attaches the plan's loads and answers at every frequency.
     pub fn answer(&self, plan: &Plan, hung: &Hung, grids: &[Grid]) -> Result<WireSolution, EvaluateError> {
         let loads = structure::loads(plan);
-        let bands = grids.iter().map(|grid| self.band(plan, hung, grid, &loads));
+        let bands = grids.par_iter().map(|grid| self.band(plan, hung, grid, &loads));
         Ok(WireSolution { bands: bands.collect::<Result<_, _>>()? })
     }
 
@@ -105,7 +108,7 @@ impl Solved {
         let places = last.min(EFFICIENCY_PLACES - 1);
         (0..=places)
             .map(|place| {
-                let index = if places == 0 { 0 } else { place * last / places };
+                let index = (place * last).checked_div(places).unwrap_or(0);
                 let fed = self.fed(&self.answers.sample(grid.frequencies_hz[index])?, loads)?;
                 Ok((index, (1.0 - fed.burnt_w).clamp(0.0, 1.0)))
             })
@@ -134,12 +137,25 @@ impl Solved {
     }
 
     /// Potential along a wire; indicative.
-    fn potentials(&self, wire: &HungWire, arc_m: &[f64], fed: &Fed) -> Vec<Complex64> {
-        let boundary = self.model.structure().boundary;
-        let source = PotentialSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz);
-        let radius_m = 0.5 * wire.conductor.diameter_m;
-        let at = |&arc: &f64| SurfacePoint { axis_m: trace::coordinates(wire.point_at(arc)), radius_m };
-        arc_m.iter().map(|arc| source.potential_v(at(arc))).collect()
+    ///
+    /// At a single place it ripples with the mesh; its mean over a segment does not, for that is what the solver's
+    /// equations hold. So the means stand at the segments' middles, and straight lines between them; none crosses a gap.
+    fn potentials(&self, index: usize, arc_m: &[f64], cuts: &[Cut], fed: &Fed) -> Vec<Complex64> {
+        let (segments, boundary) = (self.model.segments(), self.model.structure().boundary);
+        let source = PotentialSource::new(segments, &fed.currents, boundary, fed.frequency_hz);
+        let in_gap = self.model.port_of_segment();
+        let means: Vec<(f64, Complex64)> = self.traces[index]
+            .middles()
+            .filter(|&(segment, _)| in_gap[segment].is_none())
+            .map(|(segment, middle_m)| {
+                let half_m = 0.51 * segments[segment].length_m();
+                let beside_gap =
+                    cuts.iter().any(|cut| (middle_m - cut.arc_m).abs() < cut.half_width_m + half_m);
+                let places = if beside_gap { PLACES_BESIDE_GAP } else { PLACES_ELSEWHERE };
+                (middle_m, source.mean_potential_v(&segments[segment], places))
+            })
+            .collect();
+        arc_m.iter().map(|&arc| between_cuts(&means, cuts, arc)).collect()
     }
 
     fn wave(&self, plan: &Plan, hung: &Hung, fed: &Fed) -> StandingWave {
@@ -151,11 +167,24 @@ impl Solved {
                 .iter()
                 .map(|&arc| self.traces[index].current_a(arc, segments, &fed.currents, fed.frequency_hz))
                 .collect();
-            let potential_v = self.potentials(wire, &arc_m, fed);
+            let potential_v = self.potentials(index, &arc_m, &cuts, fed);
             let marks = marks(&arc_m, &current_a);
             WireWave { arc_m, current_a, potential_v, marks }
         });
         StandingWave { frequency_hz: fed.frequency_hz, wires: wires.collect() }
+    }
+}
+
+/// Straight lines through the known places on one side of every cut; beyond the outermost the nearest counts.
+fn between_cuts(known: &[(f64, Complex64)], cuts: &[Cut], arc_m: f64) -> Complex64 {
+    let same_side = |at: f64| cuts.iter().all(|cut| (at < cut.arc_m) == (arc_m < cut.arc_m));
+    let next = known.partition_point(|&(at, _)| at < arc_m);
+    let right = known.get(next).filter(|(at, _)| same_side(*at));
+    let left = next.checked_sub(1).and_then(|before| known.get(before)).filter(|(at, _)| same_side(*at));
+    match (left, right) {
+        (Some(&(x0, v0)), Some(&(x1, v1))) => v0 + (v1 - v0) * ((arc_m - x0) / (x1 - x0)),
+        (Some(&(_, value)), None) | (None, Some(&(_, value))) => value,
+        (None, None) => Complex64::ZERO,
     }
 }
 

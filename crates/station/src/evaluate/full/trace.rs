@@ -41,6 +41,11 @@ impl Trace {
         Self { pieces }
     }
 
+    /// Segments in order of their place, with the places of their middles, m from the wire's beginning.
+    pub fn middles(&self) -> impl Iterator<Item = (usize, f64)> + '_ {
+        self.pieces.iter().map(|piece| (piece.segment, piece.start_arc_m + 0.5 * piece.length_m))
+    }
+
     /// The segment at a place of the wire, m from its beginning, and how far along that segment.
     pub fn at(&self, arc_m: f64) -> (usize, f64) {
         let next = self.pieces.partition_point(|piece| piece.start_arc_m <= arc_m);
