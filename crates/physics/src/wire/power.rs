@@ -3,7 +3,7 @@
 use num_complex::Complex64;
 
 use super::segment::{EndCurrents, Segment};
-use super::shapes::Shapes;
+use super::shapes::Overlaps;
 use crate::constants::wave_number_rad_per_m;
 
 /// Power lost in the metal of a segment, W, for peak currents.
@@ -17,7 +17,7 @@ pub fn segment_loss_w(
     frequency_hz: f64,
 ) -> f64 {
     // ½·R′·∫|I|² ds with I = I₁·S₁ + I₂·S₂
-    let [same, cross] = Shapes::overlaps(wave_number_rad_per_m(frequency_hz), segment.length_m());
+    let [same, cross] = Overlaps::new(wave_number_rad_per_m(frequency_hz), segment.length_m()).current_m;
     let square = same * (currents.from_a.norm_sqr() + currents.to_a.norm_sqr())
         + 2.0 * cross * (currents.from_a * currents.to_a.conj()).re;
     0.5 * resistance_ohm_per_m * square

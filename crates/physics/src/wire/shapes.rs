@@ -41,14 +41,17 @@ pub(super) struct Shapes {
     pub odd_slope: f64,
 }
 
+/// Σ cₙ·y²ⁿ; with y ≤ π/12 the tables leave less than 1e-12.
+fn series(coefficients: &[f64], y2: f64) -> f64 {
+    coefficients.iter().rev().fold(0.0, |sum, c| sum * y2 + c)
+}
+
 impl Shapes {
     pub fn new(k: f64, length_m: f64) -> Self {
         let h = 0.5 * length_m;
         let y = k * h;
-        let y2 = y * y;
-        // (1 − y·cot y)/y² and (tan y/y − 1)/y² by their Taylor series: y stays below π/12, the error below 1e-12.
-        let series = |terms: &[f64]| terms.iter().rev().fold(0.0, |sum, term| sum * y2 + term);
-        let (falling, rising) = (series(&COTANGENT), series(&TANGENT));
+        // (1 − y·cot y)/y² and (tan y/y − 1)/y²
+        let (falling, rising) = (series(&COTANGENT, y * y), series(&TANGENT, y * y));
         let root3 = 3_f64.sqrt();
         Self {
             // ½∫E dx = tan y/k
@@ -61,27 +64,77 @@ impl Shapes {
             odd_slope: k.recip(),
         }
     }
+}
 
-    /// ∫I₁-shape² and ∫I₁-shape·I₂-shape over the segment, m.
-    pub fn overlaps(k: f64, length_m: f64) -> [f64; 2] {
-        let y = k * length_m;
-        if y < 0.02 {
-            // L/3·(1 + 2y²/15) and L/6·(1 + 7y²/30)
-            return [
-                length_m / 3.0 * (1.0 + 2.0 * y * y / 15.0),
-                length_m / 6.0 * (1.0 + 7.0 * y * y / 30.0),
-            ];
+/// Integrals over a segment of the products of the two shapes, of I₁ = 1 and of I₂ = 1, and of their slopes.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct Overlaps {
+    /// ∫S₁² dx and ∫S₁S₂ dx, m.
+    pub current_m: [f64; 2],
+    /// ∫S₁′² dx and ∫S₁′S₂′ dx, 1/m.
+    pub slope_per_m: [f64; 2],
+}
+
+impl Overlaps {
+    pub fn new(k: f64, length_m: f64) -> Self {
+        let h = 0.5 * length_m;
+        let y2 = k * h * k * h;
+        // q = tan y/y = 1 + r·y²
+        let r = series(&TANGENT, y2);
+        let q = 1.0 + r * y2;
+        // ∫E² = h·(1 + tan²y + q),   ∫O² = h·(1 − r/q²),   ∫E′² = k²·h·y²·(q² − r),   ∫O′² = (1 + tan²y + q)/(h·q²)
+        let sum = 1.0 + q * q * y2 + q;
+        let (even, odd) = (h * sum, h * (1.0 - r / (q * q)));
+        let (even_slope, odd_slope) = (k * k * h * y2 * (q * q - r), sum / (h * q * q));
+        // S₁ = (E − O)/2,   S₂ = (E + O)/2
+        Self {
+            current_m: [0.25 * (even + odd), 0.25 * (even - odd)],
+            slope_per_m: [0.25 * (even_slope + odd_slope), 0.25 * (even_slope - odd_slope)],
         }
-        let (sin, cos) = y.sin_cos();
-        let scale = length_m / (2.0 * sin * sin);
-        [scale * (1.0 - sin * cos / y), scale * (sin / y - cos)]
     }
-    /// ∫(dI₁-shape/dx)² and ∫dI₁-shape/dx·dI₂-shape/dx over the segment, 1/m.
-    pub fn slope_overlaps(k: f64, length_m: f64) -> [f64; 2] {
-        // k²L/2·[1 + sin y·cos y/y]/sin² y and −k²L/2·[cos y + sin y/y]/sin² y
-        let y = k * length_m;
-        let (sin, cos) = y.sin_cos();
-        let scale = 0.5 * y * y / (length_m * sin * sin);
-        [scale * (1.0 + sin * cos / y), -scale * (cos + sin / y)]
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// ∫ f dx over 0 to the length, by Simpson's rule.
+    fn integral(length_m: f64, f: impl Fn(f64) -> f64) -> f64 {
+        let steps = 400_u32;
+        let h = length_m / f64::from(steps);
+        let weight = |index: u32| if index.is_multiple_of(steps) { 1.0 } else { f64::from(2 + 2 * (index % 2)) };
+        (0..=steps).map(|index| weight(index) * f(h * f64::from(index))).sum::<f64>() * h / 3.0
+    }
+
+    #[test]
+    fn integrals_are_those_of_the_sinusoids() {
+        for (k, length_m) in [(0.3_f64, 1.6_f64), (0.3, 0.1), (0.05, 1e-3)] {
+            let [first, second] =
+                [|y: f64, x: f64| (y - x).sin() / y.sin(), |y: f64, x: f64| x.sin() / y.sin()];
+            let [first_slope, second_slope] =
+                [|y: f64, x: f64| -(y - x).cos() / y.sin(), |y: f64, x: f64| x.cos() / y.sin()];
+            let y = k * length_m;
+            let near = |got: f64, expected: f64| {
+                assert!((got - expected).abs() < 1e-9 * expected.abs(), "{y}: {got} for {expected}");
+            };
+            let overlaps = Overlaps::new(k, length_m);
+            near(overlaps.current_m[0], integral(length_m, |x| first(y, k * x).powi(2)));
+            near(overlaps.current_m[1], integral(length_m, |x| first(y, k * x) * second(y, k * x)));
+            near(overlaps.slope_per_m[0], k * k * integral(length_m, |x| first_slope(y, k * x).powi(2)));
+            let cross = integral(length_m, |x| first_slope(y, k * x) * second_slope(y, k * x));
+            near(overlaps.slope_per_m[1], k * k * cross);
+            let shapes = Shapes::new(k, length_m);
+            let (even, odd) = (|x: f64| first(y, x) + second(y, x), |x: f64| second(y, x) - first(y, x));
+            // The points' linear functions have the sinusoids' integrals and first moments.
+            let h = 0.5 * length_m;
+            let moment = h / 3_f64.sqrt();
+            near(2.0 * shapes.even, integral(length_m, |x| even(k * x)));
+            near(2.0 * moment * shapes.odd, integral(length_m, |x| (x - h) * odd(k * x)));
+            near(2.0 * shapes.odd_slope * k, 2.0);
+            // ∫(x − h)·E′ dx = h·(E(0) + E(L)) − ∫E dx; its digits go where kh is small.
+            let expected = 2.0 * h - integral(length_m, |x| even(k * x));
+            let got = 2.0 * moment * shapes.even_slope * k;
+            assert!((got - expected).abs() < 1e-9 * h, "{y}: {got} for {expected}");
+        }
     }
 }

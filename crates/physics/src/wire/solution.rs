@@ -14,7 +14,7 @@ use super::mesh::{Arm, Mesh};
 use super::power::{port_power_w, segment_loss_w};
 use super::reflection::{Reflected, Reflection};
 use super::segment::{EndCurrents, Segment};
-use super::shapes::Shapes;
+use super::shapes::Overlaps;
 use super::shares::Shares;
 use super::skeleton::{End, Skeleton};
 use super::structure::{Structure, WireShape};
@@ -165,13 +165,10 @@ impl WireModel {
         let own = |(segment, &wire): (&Segment, &usize)| {
             let length_m = segment.length_m();
             let [metal, cover] = per_wire[wire];
-            let mut own = Shapes::overlaps(k, length_m).map(|overlap| metal * overlap);
-            if cover != Complex64::ZERO {
-                for (own, overlap) in own.iter_mut().zip(Shapes::slope_overlaps(k, length_m)) {
-                    *own += cover * overlap;
-                }
-            }
-            own
+            let overlaps = Overlaps::new(k, length_m);
+            std::array::from_fn(|index| {
+                metal * overlaps.current_m[index] + cover * overlaps.slope_per_m[index]
+            })
         };
         self.mesh.segments.iter().zip(&self.mesh.wire_of).map(own).collect()
     }
