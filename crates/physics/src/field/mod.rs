@@ -1,10 +1,32 @@
 //! Fields of known currents: near, far, and the power that leaves.
+//!
+//! Everything follows from the currents at the ends of segments ([`crate::wire::EndCurrents`]); the sinusoid between
+//! them has closed fields, so nothing near a wire is numerical quadrature.
+//!
+//! * [`NearFieldSource`]: E and H at any point.
+//! * [`FarFieldSource`]: far field in any direction, thousands of them at once.
+//! * [`radiated_power_w`]: the power toward the sky by integration over the sphere, which is found without asking the
+//!   feedpoint; [`strongest_direction`]: where most of it goes.
+//! * [`PotentialSource`], [`surface_field_v_per_m`]: what stands on the wire's surface.
 
 mod far;
+mod near;
+mod peak;
+mod polarisation;
 mod potential;
 mod quadrature;
+mod run;
+mod smooth;
+mod source;
+mod space;
 mod sphere;
+mod surface;
 
-pub use far::{Direction, FarField, FarFieldSource};
+pub use far::{Direction, FarField};
+pub use near::{NearField, NearFieldSource};
+pub use peak::strongest_direction;
+pub use polarisation::{Polarisation, Sense};
 pub use potential::{PotentialSource, SurfacePoint};
+pub use source::FarFieldSource;
 pub use sphere::radiated_power_w;
+pub use surface::surface_field_v_per_m;

@@ -4,7 +4,7 @@ use std::f64::consts::PI;
 
 use num_complex::Complex64;
 
-use super::quadrature::THREE;
+use super::quadrature::{THREE, gauss_legendre};
 use crate::constants::{VACUUM_PERMITTIVITY_F_PER_M, wave_number_rad_per_m};
 use crate::wire::{Boundary, EndCurrents, Segment};
 
@@ -79,6 +79,27 @@ impl<'a> PotentialSource<'a> {
             }
         }
         sum / (4.0 * PI * VACUUM_PERMITTIVITY_F_PER_M)
+    }
+
+    /// Mean of the potential over the surface of a segment, V peak, by a Gauss-Legendre rule of `places`.
+    ///
+    /// The solver's equations hold such means, so that they follow the wire smoothly where the potential at single
+    /// places ripples with the mesh by a few percent. The charge steps from segment to segment: three places are good to
+    /// two percent of the feedpoint voltage beside a gap, twenty to half a percent.
+    #[must_use]
+    pub fn mean_potential_v(&self, segment: &Segment, places: usize) -> Complex64 {
+        let (direction, length_m) = (segment.direction(), segment.length_m());
+        let place = |x: f64| {
+            let along_m = 0.5 * (x + 1.0) * length_m;
+            std::array::from_fn(|axis| segment.from_m[axis] + along_m * direction[axis])
+        };
+        gauss_legendre(places)
+            .into_iter()
+            .map(|(x, weight)| {
+                let at = SurfacePoint { axis_m: place(x), radius_m: segment.radius_m };
+                self.potential_v(at) * (0.5 * weight)
+            })
+            .sum()
     }
 
     /// ∫ q·e^(−jkR)/R over a segment.

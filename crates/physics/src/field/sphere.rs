@@ -1,9 +1,9 @@
 //! Power through a large sphere.
 
-use std::f64::consts::{PI, TAU};
+use std::f64::consts::TAU;
 
-use super::far::FarFieldSource;
 use super::quadrature::gauss_legendre;
+use super::source::{FarFieldSource, Toward};
 use crate::wire::Boundary;
 
 /// Power that leaves toward the sky, W: the intensity integrated over the sphere, over its upper half above a mirror.
@@ -13,18 +13,20 @@ use crate::wire::Boundary;
 #[must_use]
 pub fn radiated_power_w(source: &FarFieldSource) -> f64 {
     let degree = 2.0 * source.electrical_size() + 16.0;
-    let rings = (0.5 * degree).ceil() as usize + 2;
+    // n points are exact to degree 2n − 1. An even number of them has none on the horizon.
+    let rings = 2 * (0.25 * degree + 1.0).ceil() as usize;
     let around = degree.ceil() as usize + 1;
-    let half = source.boundary() == Boundary::Mirror;
-    let mut power_w = 0.0;
-    for (x, weight) in gauss_legendre(if half { 2 * rings } else { rings }) {
-        // Above a mirror −1…1 becomes 0…1.
-        let (sine, weight) = if half { (0.5 * (x + 1.0), 0.5 * weight) } else { (x, weight) };
-        let cosine = (1.0 - sine * sine).sqrt();
-        let ring: f64 = (0..around)
-            .map(|step| source.field_at(sine, cosine, TAU * step as f64 / around as f64).intensity_w_per_sr())
-            .sum();
-        power_w += weight * ring * 2.0 * PI / around as f64;
-    }
-    power_w
+    let azimuths: Vec<[f64; 2]> =
+        (0..around).map(|step| (TAU * step as f64 / around as f64).sin_cos().into()).collect();
+    // Wires and images together radiate the same downward as upward, so half the points serve.
+    let skyward = |sine: f64| source.boundary() == Boundary::FreeSpace || sine > 0.0;
+    gauss_legendre(rings)
+        .into_iter()
+        .filter(|&(sine, _)| skyward(sine))
+        .map(|(sine, weight)| {
+            let toward = azimuths.iter().map(|&azimuth| Toward { sine, azimuth });
+            let ring: f64 = toward.map(|toward| source.field_at(toward).intensity_w_per_sr()).sum();
+            weight * ring * TAU / around as f64
+        })
+        .sum()
 }

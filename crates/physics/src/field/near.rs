@@ -1,0 +1,172 @@
+//! E and H at any point.
+
+use std::f64::consts::PI;
+
+use num_complex::Complex64;
+
+use super::run::slopes;
+use super::smooth::{Bowed, bowed};
+use super::space::{Vec3, add, cross, dot, length, mirrored, sub};
+use crate::constants::{VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
+use crate::wire::{Boundary, EndCurrents, Segment};
+
+/// Field at a point; peak phasors, components along x, y, z.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct NearField {
+    /// Electric field, V/m.
+    pub e_v_per_m: [Complex64; 3],
+    /// Magnetic field, A/m.
+    pub h_a_per_m: [Complex64; 3],
+}
+
+/// The currents of a structure at one frequency, ready for near fields.
+#[derive(Clone, Debug)]
+pub struct NearFieldSource {
+    k: f64,
+    boundary: Boundary,
+    /// Segments and their images.
+    filaments: Vec<Filament>,
+}
+
+/// A segment or its image.
+#[derive(Clone, Copy, Debug)]
+struct Filament {
+    from_m: Vec3,
+    direction: Vec3,
+    length_m: f64,
+    radius_m: f64,
+    current: Bowed,
+    /// −1 for an image, whose current runs against the mirrored direction.
+    sign: f64,
+}
+
+impl NearFieldSource {
+    /// The source for currents at the ends of segments (A peak); `None` over soil, whose near field is not offered.
+    ///
+    /// Segments must be shorter than half a wave, as those of a mesh are.
+    #[must_use]
+    pub fn new(
+        segments: &[Segment],
+        currents: &[EndCurrents],
+        boundary: Boundary,
+        frequency_hz: f64,
+    ) -> Option<Self> {
+        let k = wave_number_rad_per_m(frequency_hz);
+        let currents = bowed(segments, currents, boundary, k);
+        let wires = segments.iter().zip(currents).map(|(segment, current)| Filament::new(segment, current));
+        let filaments = match boundary {
+            Boundary::Soil { .. } => return None,
+            Boundary::FreeSpace => wires.collect(),
+            Boundary::Mirror => wires.flat_map(|filament| [filament, filament.image()]).collect(),
+        };
+        Some(Self { k, boundary, filaments })
+    }
+
+    /// The field at a point, m; none below a mirror.
+    ///
+    /// In closed form from the currents on the axes and their charges, which go smoothly from segment to segment close
+    /// by. Where the currents of the segments that meet at a point do not sum to zero, their difference is taken as a
+    /// point charge there. Right outside the wires; nearer than a few radii the true current's crowding toward other
+    /// conductors matters. A point inside a wire gets the field at its surface, so that the answer is always finite.
+    #[must_use]
+    pub fn field(&self, at_m: [f64; 3]) -> NearField {
+        let mut field = NearField::default();
+        if self.boundary == Boundary::Mirror && at_m[2] < 0.0 {
+            return field;
+        }
+        for filament in &self.filaments {
+            filament.add_field(self.k, at_m, &mut field);
+        }
+        field
+    }
+}
+
+/// A part longer than this many times its distance is divided: seen from closer, the bow of its current matters.
+const NEAR: f64 = 1.25;
+
+impl Filament {
+    fn new(segment: &Segment, current: Bowed) -> Self {
+        Self {
+            from_m: segment.from_m,
+            direction: segment.direction(),
+            length_m: segment.length_m(),
+            radius_m: segment.radius_m,
+            current,
+            sign: 1.0,
+        }
+    }
+
+    /// In a mirror the current's level component is turned round, its vertical one is not: the mirrored place with the
+    /// current against the mirrored direction.
+    fn image(&self) -> Self {
+        Self { from_m: mirrored(self.from_m), direction: mirrored(self.direction), sign: -1.0, ..*self }
+    }
+
+    fn add_field(&self, k: f64, at_m: Vec3, field: &mut NearField) {
+        let from_start = sub(at_m, self.from_m);
+        let along_m = dot(from_start, self.direction);
+        let across: Vec3 = std::array::from_fn(|axis| from_start[axis] - along_m * self.direction[axis]);
+        let point = Cylindrical { along_m, across, off_axis_m: length(across) };
+        self.add_part(k, &point, [0.0, self.length_m], field);
+    }
+
+    fn add_part(&self, k: f64, point: &Cylindrical, [from_m, to_m]: [f64; 2], field: &mut NearField) {
+        let length_m = to_m - from_m;
+        let beyond_m = (from_m - point.along_m).max(point.along_m - to_m).max(0.0);
+        let distance_m = beyond_m.hypot(point.off_axis_m).max(self.radius_m);
+        if length_m > NEAR * distance_m {
+            let middle_m = 0.5 * (from_m + to_m);
+            self.add_part(k, point, [from_m, middle_m], field);
+            self.add_part(k, point, [middle_m, to_m], field);
+        } else {
+            self.add_sinusoid(k, point, [from_m, to_m], field);
+        }
+    }
+
+    /// A part of the filament is the z axis of cylindrical coordinates; per end, with ζ = z − z', R = √(ρ² + ζ²), beginning
+    /// subtracted from end:
+    ///
+    /// 4π·E_z = η/jk·[I·ζ·(1 + jkR)/R³ − I'/R]·e^(−jkR)
+    /// 4πρ·E_ρ = jη/k·[jkI·ζ²/R² − I·ρ²/R³ − I'·ζ/R]·e^(−jkR)
+    /// 4πρ·H_φ = −[I·ζ/R + jI'/k]·e^(−jkR)
+    ///
+    /// From the vector potential of the sinusoid by partial integration, and Maxwell's equations for the rest
+    /// (Schelkunoff & Friis, "Antennas", 1952, have the same for a standing wave, from memory).
+    fn add_sinusoid(&self, k: f64, point: &Cylindrical, [from_m, to_m]: [f64; 2], field: &mut NearField) {
+        let ends = self.current.part(from_m, to_m);
+        let slope_a_per_m = slopes(&ends, k, to_m - from_m);
+        let beside = (from_m - self.radius_m..=to_m + self.radius_m).contains(&point.along_m);
+        let rho = if beside { point.off_axis_m.max(self.radius_m) } else { point.off_axis_m };
+        let (mut axial, mut radial, mut round) = (Complex64::ZERO, Complex64::ZERO, Complex64::ZERO);
+        let j = Complex64::i();
+        let starts = (from_m, ends.from_a, slope_a_per_m[0], -self.sign);
+        for (end_m, current, slope, sign) in [starts, (to_m, ends.to_a, slope_a_per_m[1], self.sign)] {
+            let zeta = point.along_m - end_m;
+            let r = rho.hypot(zeta);
+            let wave = Complex64::cis(-k * r) * sign;
+            let (over_r, cosine) = (r.recip(), zeta / r);
+            axial += (current * cosine * over_r * Complex64::new(over_r, k) - slope * over_r) * wave;
+            let spread = Complex64::new(-rho * rho * over_r.powi(3), k * cosine * cosine);
+            radial += (current * spread - slope * cosine) * wave;
+            round -= (current * cosine + j * slope / k) * wave;
+        }
+        let scale = VACUUM_IMPEDANCE_OHM / (4.0 * PI * k);
+        add(&mut field.e_v_per_m, -j * scale * axial, self.direction);
+        // On the axis itself there is no direction across it, and no field there.
+        if point.off_axis_m > 0.0 {
+            let outward = point.across.map(|component| component / point.off_axis_m);
+            add(&mut field.e_v_per_m, j * scale * radial / rho, outward);
+            add(&mut field.h_a_per_m, round / (4.0 * PI * rho), cross(self.direction, outward));
+        }
+    }
+}
+
+/// A point as a filament sees it.
+struct Cylindrical {
+    /// Along the axis from the filament's beginning, m.
+    along_m: f64,
+    /// From the axis to the point.
+    across: Vec3,
+    /// Its length, m.
+    off_axis_m: f64,
+}

@@ -1,0 +1,179 @@
+//! The current between the nodes of a mesh, with a continuous charge.
+//!
+//! A solution's currents at the nodes are far better than the sinusoids between them: those meet with kinks, and the
+//! charge, which is the slope, jumps by a few percent. At a distance the jumps cancel; closer than a segment's length
+//! they do not. Here each sinusoid bows by as much as makes the slopes of neighbours equal: a spline whose pieces obey
+//! I'' + k²I = g with g'' + k²g = 0 (for k = 0 the cubic spline), because what a wire's current lacks of a sinusoid
+//! follows the current itself.
+
+use num_complex::Complex64;
+
+use super::space::{Vec3, length, sub};
+use crate::wire::{Boundary, EndCurrents, Segment};
+
+/// A sinusoid of current on a segment, bowed.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Bowed {
+    k: f64,
+    length_m: f64,
+    ends_a: [Complex64; 2],
+    /// g = I'' + k²I at both ends, A/m².
+    bow_a_per_m2: [Complex64; 2],
+}
+
+/// Distance below which an end and a beginning are one point, m.
+const JOINED_M: f64 = 1e-9;
+
+/// Jump of the current, as a share of it, above which something branches off.
+const BRANCH: f64 = 1e-9;
+
+impl Bowed {
+    /// Current at a distance from the beginning, A.
+    pub fn current_a(&self, along_m: f64) -> Complex64 {
+        // I = [I₁·sin k(L − s) + I₂·sin ks + g₁·r(L − s) + g₂·r(s)]/sin kL
+        // r'' + k²r = sin ks,  r(0) = r(L) = 0:  r(s) = [L·cot kL·sin ks − s·cos ks]/2k
+        let Self { k, length_m, ends_a, bow_a_per_m2, .. } = *self;
+        let (sine, cosine) = (k * length_m).sin_cos();
+        let from_each_end = |distance_m: f64| {
+            let (s, c) = (k * distance_m).sin_cos();
+            (s / sine, (length_m * cosine / sine * s - distance_m * c) / (2.0 * k * sine))
+        };
+        let (one, other) = (from_each_end(length_m - along_m), from_each_end(along_m));
+        ends_a[0] * one.0 + ends_a[1] * other.0 + bow_a_per_m2[0] * one.1 + bow_a_per_m2[1] * other.1
+    }
+
+    /// Slope of the current at a distance from the beginning, A/m.
+    pub fn slope_a_per_m(&self, along_m: f64) -> Complex64 {
+        // r'(s) = [(kL·cot kL − 1)·cos ks + ks·sin ks]/2k
+        let Self { k, length_m, ends_a, bow_a_per_m2, .. } = *self;
+        let x = k * length_m;
+        let (sine, cosine) = x.sin_cos();
+        let from_each_end = |distance_m: f64| {
+            let (s, c) = (k * distance_m).sin_cos();
+            (k * c / sine, ((x * cosine / sine - 1.0) * c + k * distance_m * s) / (2.0 * k * sine))
+        };
+        let (one, other) = (from_each_end(length_m - along_m), from_each_end(along_m));
+        ends_a[1] * other.0 - ends_a[0] * one.0 + bow_a_per_m2[1] * other.1 - bow_a_per_m2[0] * one.1
+    }
+
+    /// The part between two distances from the beginning, as a sinusoid with the same currents at its ends.
+    pub fn part(&self, from_m: f64, to_m: f64) -> EndCurrents {
+        EndCurrents { from_a: self.current_a(from_m), to_a: self.current_a(to_m) }
+    }
+}
+
+/// Bows the sinusoids of all segments.
+///
+/// Consecutive segments are taken together as long as the same current goes on; at the ends of such a chain, where a
+/// mesh is fine, the sinusoid is left as it is. A chain that stands on a mirror goes on evenly below it.
+pub(super) fn bowed(
+    segments: &[Segment],
+    currents: &[EndCurrents],
+    boundary: Boundary,
+    k: f64,
+) -> Vec<Bowed> {
+    let count = segments.len().min(currents.len());
+    let mut bowed = Vec::with_capacity(count);
+    let mut first = 0;
+    for next in 1..=count {
+        let goes_on = next < count && continues([&segments[next - 1], &segments[next]], currents, next);
+        if !goes_on {
+            bowed.extend(chain(&segments[first..next], &currents[first..next], boundary, k));
+            first = next;
+        }
+    }
+    bowed
+}
+
+fn continues([before, after]: [&Segment; 2], currents: &[EndCurrents], next: usize) -> bool {
+    let (arriving, leaving) = (currents[next - 1].to_a, currents[next].from_a);
+    length(sub(after.from_m, before.to_m)) < JOINED_M
+        && (arriving - leaving).norm() <= BRANCH * (arriving.norm() + leaving.norm())
+}
+
+/// Bows one chain: the slopes on both sides of each inner node are equal.
+fn chain(segments: &[Segment], currents: &[EndCurrents], boundary: Boundary, k: f64) -> Vec<Bowed> {
+    let mut pieces: Vec<Bowed> = segments
+        .iter()
+        .zip(currents)
+        .map(|(segment, ends)| Bowed {
+            k,
+            length_m: segment.length_m(),
+            ends_a: [ends.from_a, ends.to_a],
+            bow_a_per_m2: [Complex64::ZERO; 2],
+        })
+        .collect();
+    let on_mirror = |end_m: Vec3| boundary == Boundary::Mirror && end_m[2].abs() < JOINED_M;
+    let last = segments.len() - 1;
+    let mut equations = Equations::new(segments.len() + 1);
+    for (index, piece) in pieces.iter().enumerate() {
+        let [own, other] = piece.stiffness_m();
+        equations.diagonal[index] += own;
+        equations.diagonal[index + 1] += own;
+        equations.beside[index] = other;
+        equations.right[index] += piece.slope_a_per_m(0.0);
+        equations.right[index + 1] -= piece.slope_a_per_m(piece.length_m);
+    }
+    if !on_mirror(segments[0].from_m) {
+        equations.fix(0);
+    }
+    if !on_mirror(segments[last].to_m) {
+        equations.fix(last + 1);
+    }
+    let bow = equations.solve();
+    for (piece, pair) in pieces.iter_mut().zip(bow.windows(2)) {
+        piece.bow_a_per_m2 = [pair[0], pair[1]];
+    }
+    pieces
+}
+
+impl Bowed {
+    /// How much the slope at the beginning falls per bow at the beginning and at the end, m.
+    fn stiffness_m(&self) -> [f64; 2] {
+        // r'(L)/sin x = (x/sin x − cos x)/(2k·sin x),   −r'(0)/sin x = (1 − x·cot x)/(2k·sin x),   x = kL;
+        // L/3 and L/6 for short ones
+        let (sine, cosine) = (self.k * self.length_m).sin_cos();
+        let x = self.k * self.length_m;
+        let scale = 2.0 * self.k * sine;
+        [(x / sine - cosine) / scale, (1.0 - x * cosine / sine) / scale]
+    }
+}
+
+/// Symmetric equations with three diagonals, diagonally dominant.
+struct Equations {
+    diagonal: Vec<f64>,
+    beside: Vec<f64>,
+    right: Vec<Complex64>,
+}
+
+impl Equations {
+    fn new(count: usize) -> Self {
+        Self { diagonal: vec![0.0; count], beside: vec![0.0; count], right: vec![Complex64::ZERO; count] }
+    }
+
+    /// Makes an unknown zero.
+    fn fix(&mut self, index: usize) {
+        self.diagonal[index] = 1.0;
+        self.right[index] = Complex64::ZERO;
+        self.beside[index] = 0.0;
+        if let Some(before) = index.checked_sub(1) {
+            self.beside[before] = 0.0;
+        }
+    }
+
+    fn solve(mut self) -> Vec<Complex64> {
+        let count = self.diagonal.len();
+        for index in 1..count {
+            let factor = self.beside[index - 1] / self.diagonal[index - 1];
+            self.diagonal[index] -= factor * self.beside[index - 1];
+            let above = self.right[index - 1];
+            self.right[index] -= factor * above;
+        }
+        let mut below = Complex64::ZERO;
+        for index in (0..count).rev() {
+            below = (self.right[index] - self.beside[index] * below) / self.diagonal[index];
+            self.right[index] = below;
+        }
+        self.right
+    }
+}
