@@ -385,3 +385,62 @@ proptest! {
         prop_assert!(lost_w > 0.0 && accepted_w > lost_w, "{} of {}", lost_w, accepted_w);
     }
 }
+
+/// Two parallel wires joined at both ends, fed in the middle of one of the short sides.
+fn narrow_loop(length_m: f64, spacing_m: f64, radius_m: f64) -> Structure {
+    let corners =
+        [[0.0, 0.0, 0.0], [0.0, spacing_m, 0.0], [length_m, spacing_m, 0.0], [length_m, 0.0, 0.0], [0.0; 3]];
+    Structure {
+        wires: vec![wire(&corners, radius_m)],
+        ports: vec![port(0, 0.5 * spacing_m, 0.02)],
+        boundary: Boundary::FreeSpace,
+    }
+}
+
+#[test]
+fn shorted_pair_of_wires_is_a_line() {
+    // Z = jZ0·tan k(l + e),  Z0 = η0/π·acosh(D/2a); the short sides add the same e to any length.
+    let (radius_m, frequency_hz) = (1e-3, 6e6);
+    let k = wave_number_rad_per_m(frequency_hz);
+    for spacing_m in [0.05, 0.1, 0.2] {
+        let z0_ohm = VACUUM_IMPEDANCE_OHM / PI * (0.5_f64 * spacing_m / radius_m).acosh();
+        let phase = |length_m: f64| {
+            let z = impedance(narrow_loop(length_m, spacing_m, radius_m), frequency_hz);
+            assert!(z.re > 0.0 && z.re < 0.1, "{z}");
+            (z.im / z0_ohm).atan()
+        };
+        let metres = (phase(6.0) - phase(4.0)) / k;
+        assert!((metres - 2.0).abs() < 0.004, "{spacing_m} m apart: {metres} m for 2 m");
+        let end_m = phase(5.0) / k - 5.0;
+        assert!(end_m > 0.0 && end_m < spacing_m, "{end_m} m for two sides of {spacing_m} m");
+    }
+}
+
+#[test]
+fn folded_half_wave_steps_up_four_times() {
+    // Two equal wires: the impedance of the antenna mode is four times that of one wire of the pair's mean radius
+    // √(aD), and the line mode is open at a half wave (common practice).
+    let (length_m, spacing_m, radius_m) = (10.0, 0.05, 1e-3);
+    let frequency_hz = 14.4e6;
+    let corners = [
+        [0.0, 0.0, 0.0],
+        [0.5 * length_m, 0.0, 0.0],
+        [0.5 * length_m, spacing_m, 0.0],
+        [-0.5 * length_m, spacing_m, 0.0],
+        [-0.5 * length_m, 0.0, 0.0],
+        [0.0, 0.0, 0.0],
+    ];
+    let folded = Structure {
+        wires: vec![wire(&corners, radius_m)],
+        ports: vec![port(0, 0.0, 0.02)],
+        boundary: Boundary::FreeSpace,
+    };
+    let plain = dipole(length_m, (radius_m * spacing_m).sqrt(), 0.02);
+    let (folded, plain) = (impedance(folded, frequency_hz), impedance(plain, frequency_hz));
+    // The line mode: two shorted quarter waves in series across the feed.
+    let line_ohm = VACUUM_IMPEDANCE_OHM / PI * (0.5 * spacing_m / radius_m).acosh();
+    let stub =
+        Complex64::new(0.0, 2.0 * line_ohm * (wave_number_rad_per_m(frequency_hz) * 0.5 * length_m).tan());
+    let expected = ((4.0 * plain).inv() + stub.inv()).inv();
+    assert!((folded - expected).norm() < 0.04 * expected.norm(), "{folded} for {expected}");
+}
