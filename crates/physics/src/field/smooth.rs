@@ -177,3 +177,68 @@ impl Equations {
         self.right
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    const K: f64 = 1.0;
+
+    /// A chain up the z axis through uneven nodes, with a given current.
+    fn chain(nodes_m: &[f64], current_a: impl Fn(f64) -> f64) -> (Vec<Segment>, Vec<EndCurrents>) {
+        let pair = |pair: &[f64]| {
+            let [from_m, to_m] = [pair[0], pair[1]].map(|z| [0.0, 0.0, z]);
+            let [from_a, to_a] = [pair[0], pair[1]].map(|z| Complex64::from(current_a(z)));
+            (Segment { from_m, to_m, radius_m: 1e-4 }, EndCurrents { from_a, to_a })
+        };
+        nodes_m.windows(2).map(pair).unzip()
+    }
+
+    fn worst(
+        pieces: &[Bowed],
+        nodes_m: &[f64],
+        truth: impl Fn(f64) -> f64,
+        of: fn(&Bowed, f64) -> Complex64,
+    ) -> f64 {
+        let of_piece = |(piece, &start_m): (&Bowed, &f64)| {
+            let parts = [0.0, 0.3, 0.8, 1.0].map(|part| part * piece.length_m);
+            parts.map(|along_m| (of(piece, along_m) - truth(start_m + along_m)).norm())
+        };
+        pieces.iter().zip(nodes_m).flat_map(of_piece).fold(0.0, f64::max)
+    }
+
+    /// I = sin z − ½z·cos z has g = sin z, none at both ends of half a wave: the spline's own kind, found exactly.
+    #[test]
+    fn currents_that_bow_with_themselves_are_found_between_the_nodes() {
+        let nodes_m = [0.0, 0.01, 0.04, 0.3, 0.9, 1.4, 2.0, 2.6, 3.0, std::f64::consts::PI];
+        let current = |z: f64| z.sin() - 0.5 * z * z.cos();
+        let slope = |z: f64| z.cos() - 0.5 * (z.cos() - z * z.sin());
+        let (segments, currents) = chain(&nodes_m, current);
+        let pieces = bowed(&segments, &currents, Boundary::FreeSpace, K);
+        assert!(worst(&pieces, &nodes_m, current, Bowed::current_a) < 1e-10);
+        assert!(worst(&pieces, &nodes_m, slope, Bowed::slope_a_per_m) < 1e-9);
+    }
+
+    /// I = cos z + ½z·sin z goes on evenly below a mirror: g = cos z, none a quarter wave up.
+    #[test]
+    fn a_chain_on_a_mirror_has_no_charge_at_its_foot() {
+        let nodes_m = [0.0, 0.5, 1.0, 1.5, std::f64::consts::FRAC_PI_2];
+        let current = |z: f64| z.cos() + 0.5 * z * z.sin();
+        let (segments, currents) = chain(&nodes_m, current);
+        let pieces = bowed(&segments, &currents, Boundary::Mirror, K);
+        assert!(worst(&pieces, &nodes_m, current, Bowed::current_a) < 1e-10);
+        assert!(pieces[0].slope_a_per_m(0.0).norm() < 1e-10);
+    }
+
+    /// Where something branches off, the charge may jump.
+    #[test]
+    fn a_branch_ends_the_chain() {
+        let (segments, mut currents) = chain(&[0.0, 0.5, 1.0, 1.5, 2.0], f64::sin);
+        for ends in &mut currents[2..] {
+            (ends.from_a, ends.to_a) = (0.5 * ends.from_a, 0.5 * ends.to_a);
+        }
+        let pieces = bowed(&segments, &currents, Boundary::FreeSpace, K);
+        // Two pure sinusoids stay as they are.
+        assert!(pieces.iter().all(|piece| piece.bow_a_per_m2.iter().all(|bow| bow.norm() < 1e-12)));
+    }
+}
