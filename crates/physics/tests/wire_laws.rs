@@ -245,11 +245,14 @@ fn shorted_port_is_no_port_and_open_port_cuts() {
 
 #[test]
 fn refined_mesh_changes_little() {
-    for structure in [dipole(20.0, 1e-3, 0.02), fan()] {
+    // A short wire close beside a long one: the charge of the long one follows the other's ends.
+    let mut beside = dipole(20.0, 1e-3, 0.02);
+    beside.wires.push(wire(&[[0.05, 0.0, -7.0], [0.05, 0.0, 7.0]], 1e-3));
+    for structure in [dipole(20.0, 1e-3, 0.02), fan(), beside] {
         let model = WireModel::new(structure, 15e6).unwrap();
         let refined = model.refined().unwrap();
         assert!(refined.unknowns() > model.unknowns() + 10);
-        for frequency_hz in [3e6, 7.1e6, 14.2e6] {
+        for frequency_hz in [3e6, 7.1e6, 10e6, 14.2e6] {
             let error =
                 mesh_error(&model.solve(frequency_hz).unwrap(), &refined.solve(frequency_hz).unwrap());
             assert!(error > 1e-6 && error < 5e-3, "{frequency_hz} Hz: {error}");
@@ -398,21 +401,40 @@ fn narrow_loop(length_m: f64, spacing_m: f64, radius_m: f64) -> Structure {
 }
 
 #[test]
-fn shorted_pair_of_wires_is_a_line() {
-    // Z = jZ0·tan k(l + e),  Z0 = η0/π·acosh(D/2a); the short sides add the same e to any length.
-    let (radius_m, frequency_hz) = (1e-3, 6e6);
-    let k = wave_number_rad_per_m(frequency_hz);
+fn waves_on_a_shorted_pair_of_wires_are_as_fast_as_light() {
+    // The pair is a quarter wave long, with what its far end adds, where its susceptance vanishes: the side with the
+    // feed, in series with it, does not matter there.
     for spacing_m in [0.05, 0.1, 0.2] {
-        let z0_ohm = VACUUM_IMPEDANCE_OHM / PI * (0.5_f64 * spacing_m / radius_m).acosh();
-        let phase = |length_m: f64| {
-            let z = impedance(narrow_loop(length_m, spacing_m, radius_m), frequency_hz);
-            assert!(z.re > 0.0 && z.re < 0.1, "{z}");
-            (z.im / z0_ohm).atan()
+        let quarter_wave_m = |length_m: f64| {
+            let highest_hz = 0.25 * SPEED_OF_LIGHT_M_PER_S / length_m;
+            let model = WireModel::new(narrow_loop(length_m, spacing_m, 1e-3), highest_hz).unwrap();
+            let (mut low_hz, mut high_hz) = (0.9 * highest_hz, highest_hz);
+            for _ in 0..40 {
+                let middle_hz = 0.5 * (low_hz + high_hz);
+                let y = model.solve(middle_hz).unwrap().port_admittance_s[(0, 0)];
+                if y.im < 0.0 { low_hz = middle_hz } else { high_hz = middle_hz }
+            }
+            0.25 * SPEED_OF_LIGHT_M_PER_S / low_hz
         };
-        let metres = (phase(6.0) - phase(4.0)) / k;
-        assert!((metres - 2.0).abs() < 0.004, "{spacing_m} m apart: {metres} m for 2 m");
-        let end_m = phase(5.0) / k - 5.0;
-        assert!(end_m > 0.0 && end_m < spacing_m, "{end_m} m for two sides of {spacing_m} m");
+        let [four_m, six_m] = [4.0, 6.0].map(quarter_wave_m);
+        assert!((six_m - four_m - 2.0).abs() < 0.002, "{spacing_m} m apart: {four_m} m and {six_m} m");
+        assert!(four_m > 4.0 && four_m < 4.0 + spacing_m, "{spacing_m} m apart: {four_m} m");
+    }
+}
+
+#[test]
+fn shorted_pair_of_wires_has_the_impedance_of_theory() {
+    // Far below resonance  L/l = µ0/π·acosh(D/2a)
+    let (radius_m, frequency_hz) = (1e-3, 1e6);
+    for spacing_m in [0.05, 0.1, 0.2] {
+        let reactance_ohm =
+            |length_m: f64| impedance(narrow_loop(length_m, spacing_m, radius_m), frequency_hz).im;
+        let per_metre = (reactance_ohm(3.0) - reactance_ohm(1.0)) / (2.0 * TAU * frequency_hz);
+        let expected = VACUUM_PERMEABILITY_H_PER_M / PI * (0.5_f64 * spacing_m / radius_m).acosh();
+        assert!(
+            (per_metre / expected - 1.0).abs() < 0.004,
+            "{spacing_m} m apart: {per_metre} for {expected} H/m"
+        );
     }
 }
 

@@ -5,6 +5,8 @@ use super::grading::{Fineness, Wanted};
 use super::segment::Segment;
 use super::skeleton::{End, Skeleton, StretchEnd};
 use super::structure::{Structure, WireShape};
+use crate::constants::SPEED_OF_LIGHT_M_PER_S;
+
 use super::vector::{Vec3, distance, dot, lerp, sub};
 
 /// Segments of all wires and the unknown currents between them.
@@ -60,7 +62,10 @@ impl Mesh {
         fineness: &Fineness,
         highest_hz: f64,
     ) -> Result<Self, WireError> {
-        let wanted = wanted_lengths(structure, skeleton, fineness, highest_hz);
+        let longest_m = SPEED_OF_LIGHT_M_PER_S / highest_hz / fineness.per_wavelength;
+        let crowded = |joint: usize| shortest_at_joint(structure, skeleton, fineness, joint) < longest_m;
+        let skeleton = &skeleton.cut_beside(crowded, longest_m);
+        let wanted = wanted_lengths(structure, skeleton, fineness, longest_m);
         let mut mesh = Self::default();
         let mut end_segments = Vec::with_capacity(skeleton.stretches.len());
         for (index, (stretch, wanted)) in skeleton.stretches.iter().zip(&wanted).enumerate() {
@@ -173,36 +178,27 @@ fn arm(segment: usize, end: End, sign: f64) -> Option<Arm> {
 }
 
 /// Wanted segment lengths of every stretch.
+///
+/// A place counts by its distance from the nearest crowding of charge, on its own wire or on another beside it.
 fn wanted_lengths(
     structure: &Structure,
     skeleton: &Skeleton,
     fineness: &Fineness,
-    highest_hz: f64,
+    longest_m: f64,
 ) -> Vec<Wanted> {
-    let longest_m = crate::constants::SPEED_OF_LIGHT_M_PER_S / highest_hz / fineness.per_wavelength;
     let growth = fineness.growth(longest_m);
-    let farthest_m = growth.distance_of(longest_m);
-    let mut at_joints_m: Vec<f64> = (0..skeleton.joints.len())
+    let starts_m: Vec<(Vec3, f64)> = (0..skeleton.joints.len())
         .map(|joint| {
-            let shortest_m = shortest_at_joint(structure, skeleton, fineness, joint);
-            if shortest_m < longest_m { growth.start_m(shortest_m).min(farthest_m) } else { farthest_m }
+            (skeleton.joints[joint].position_m, shortest_at_joint(structure, skeleton, fineness, joint))
         })
+        .filter(|(_, shortest_m)| *shortest_m < longest_m)
+        .map(|(position_m, shortest_m)| (position_m, growth.start_m(shortest_m)))
         .collect();
-    // A short length is felt through smooth vertices and joints; each round carries it one stretch further.
-    let mut changed = true;
-    while changed {
-        changed = false;
-        for stretch in &skeleton.stretches {
-            let [from, to] = stretch.joints;
-            for (near, far) in [(from, to), (to, from)] {
-                let felt_m = at_joints_m[near] + stretch.length_m;
-                if felt_m < at_joints_m[far] * (1.0 - 1e-9) {
-                    at_joints_m[far] = felt_m;
-                    changed = true;
-                }
-            }
-        }
-    }
+    let farthest_m = growth.distance_of(longest_m);
+    let felt_m = |at_m: Vec3| {
+        starts_m.iter().map(|&(from_m, start_m)| start_m + distance(from_m, at_m)).fold(farthest_m, f64::min)
+    };
+    let at_joints_m: Vec<f64> = skeleton.joints.iter().map(|joint| felt_m(joint.position_m)).collect();
     skeleton
         .stretches
         .iter()

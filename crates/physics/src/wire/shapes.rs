@@ -102,7 +102,8 @@ mod tests {
     fn integral(length_m: f64, f: impl Fn(f64) -> f64) -> f64 {
         let steps = 400_u32;
         let h = length_m / f64::from(steps);
-        let weight = |index: u32| if index.is_multiple_of(steps) { 1.0 } else { f64::from(2 + 2 * (index % 2)) };
+        let weight =
+            |index: u32| if index.is_multiple_of(steps) { 1.0 } else { f64::from(2 + 2 * (index % 2)) };
         (0..=steps).map(|index| weight(index) * f(h * f64::from(index))).sum::<f64>() * h / 3.0
     }
 

@@ -2,7 +2,7 @@
 
 use super::error::WireError;
 use super::structure::{Boundary, Structure};
-use super::vector::{Vec3, distance, lerp};
+use super::vector::{Vec3, along, distance, lerp};
 
 /// Vertices of different wires that are this near are joined, m.
 pub(super) const JOINT_TOLERANCE_M: f64 = 1e-3;
@@ -129,17 +129,66 @@ impl Skeleton {
             };
             let middle_m = 0.5 * (from.1 + edge_m);
             let inside = |gap: &&&Gap| gap.edges_m[0] < middle_m && middle_m < gap.edges_m[1];
-            let stretch = self.stretches.len();
-            self.joints[from.0].stretches.push(StretchEnd { stretch, end: End::From });
-            self.joints[joint].stretches.push(StretchEnd { stretch, end: End::To });
-            self.stretches.push(Stretch {
-                wire: side.wire,
-                joints: [from.0, joint],
-                length_m: distance(self.joints[from.0].position_m, self.joints[joint].position_m),
-                port: gaps.iter().find(inside).map(|gap| gap.port),
-            });
+            let port = gaps.iter().find(inside).map(|gap| gap.port);
+            let of = Stretch { wire: side.wire, joints: [0; 2], length_m: 0.0, port };
+            self.push(&of, [from.0, joint]);
             from = (joint, edge_m);
         }
+    }
+}
+
+impl Skeleton {
+    /// Cuts the stretches where a joint of another wire, crowded with charge, is nearest: there the charge changes over
+    /// the distance between the wires. Joints farther than `reach_m` do not matter.
+    pub fn cut_beside(&self, crowded: impl Fn(usize) -> bool, reach_m: f64) -> Self {
+        let crowds_m: Vec<(usize, Vec3)> = (0..self.joints.len())
+            .filter(|&joint| crowded(joint))
+            .map(|joint| (joint, self.joints[joint].position_m))
+            .collect();
+        let mut cut =
+            Self { joints: self.joints.clone(), stretches: Vec::with_capacity(self.stretches.len()) };
+        for joint in &mut cut.joints {
+            joint.stretches.clear();
+        }
+        for stretch in &self.stretches {
+            let mut from = stretch.joints[0];
+            for place_m in self.places_beside(stretch, &crowds_m, reach_m) {
+                let to = cut.new_joint(place_m);
+                cut.push(stretch, [from, to]);
+                from = to;
+            }
+            cut.push(stretch, [from, stretch.joints[1]]);
+        }
+        cut
+    }
+
+    /// Places on a stretch beside crowded joints, in order, none much nearer to another or an end than to its joint.
+    fn places_beside(&self, stretch: &Stretch, crowds_m: &[(usize, Vec3)], reach_m: f64) -> Vec<Vec3> {
+        if stretch.port.is_some() {
+            return Vec::new();
+        }
+        let [from_m, to_m] = stretch.joints.map(|joint| self.joints[joint].position_m);
+        let mut places: Vec<(f64, f64)> = crowds_m
+            .iter()
+            .filter(|(joint, _)| !stretch.joints.contains(joint))
+            .map(|&(_, at_m)| {
+                let part = along([from_m, to_m], at_m);
+                (part * stretch.length_m, distance(at_m, lerp(from_m, to_m, part)))
+            })
+            .filter(|&(arc_m, away_m)| away_m < reach_m && arc_m.min(stretch.length_m - arc_m) > away_m)
+            .collect();
+        places.sort_by(|a, b| a.0.total_cmp(&b.0));
+        places.dedup_by(|next, kept| next.0 - kept.0 < next.1.max(kept.1));
+        places.iter().map(|&(arc_m, _)| lerp(from_m, to_m, arc_m / stretch.length_m)).collect()
+    }
+
+    /// Adds a part of a stretch.
+    fn push(&mut self, of: &Stretch, joints: [usize; 2]) {
+        let stretch = self.stretches.len();
+        self.joints[joints[0]].stretches.push(StretchEnd { stretch, end: End::From });
+        self.joints[joints[1]].stretches.push(StretchEnd { stretch, end: End::To });
+        let length_m = distance(self.joints[joints[0]].position_m, self.joints[joints[1]].position_m);
+        self.stretches.push(Stretch { joints, length_m, ..*of });
     }
 }
 

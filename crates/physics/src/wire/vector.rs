@@ -21,6 +21,12 @@ pub(super) fn lerp(a: Vec3, b: Vec3, along: f64) -> Vec3 {
     std::array::from_fn(|axis| a[axis] + along * (b[axis] - a[axis]))
 }
 
+/// Part of the way along a straight stretch, 0 to 1, that is nearest to a point.
+pub(super) fn along([from, to]: [Vec3; 2], point: Vec3) -> f64 {
+    let span = sub(to, from);
+    (dot(sub(point, from), span) / dot(span, span)).clamp(0.0, 1.0)
+}
+
 /// `a` + `t`·`direction`.
 pub(super) fn advance(a: Vec3, direction: Vec3, t: f64) -> Vec3 {
     std::array::from_fn(|axis| a[axis] + t * direction[axis])
