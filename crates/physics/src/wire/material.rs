@@ -162,3 +162,67 @@ impl Insulation {
         share * (self.outer_radius_m / radius_m).ln() / (TAU * VACUUM_PERMITTIVITY_F_PER_M)
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::conductor::RoundWire;
+
+    const COPPER: Conductor = Conductor { conductivity_s_per_m: 58e6, relative_permeability: 1.0 };
+    const STEEL: Conductor = Conductor { conductivity_s_per_m: 6e6, relative_permeability: 200.0 };
+    const RADIUS_M: f64 = 1e-3;
+
+    fn near(got: Complex64, expected: Complex64, tolerance: f64) {
+        assert!((got - expected).norm() < tolerance * expected.norm(), "{got} for {expected}");
+    }
+
+    #[test]
+    fn solid_wire_is_the_round_wire() {
+        let wire = RoundWire { radius_m: RADIUS_M, conductivity_s_per_m: 58e6 };
+        for frequency_hz in [10.0, 1e4, 1e6, 30e6, 1e12] {
+            let got = Metal::Solid(COPPER).internal_impedance_ohm_per_m(RADIUS_M, frequency_hz);
+            near(got, wire.internal_impedance_ohm_per_m(frequency_hz), 1e-9);
+        }
+    }
+
+    #[test]
+    fn two_layers_of_one_metal_are_solid() {
+        for frequency_hz in [10.0, 1e4, 1e6, 30e6, 1e12] {
+            for thickness_m in [1e-6, 1e-4, 0.9e-3] {
+                let clad = Metal::Clad { core: STEEL, cladding: STEEL, thickness_m };
+                let solid = Metal::Solid(STEEL).internal_impedance_ohm_per_m(RADIUS_M, frequency_hz);
+                near(clad.internal_impedance_ohm_per_m(RADIUS_M, frequency_hz), solid, 1e-9);
+            }
+        }
+    }
+
+    #[test]
+    fn cladding_hides_the_core_when_thick_and_shares_the_current_when_slow() {
+        let clad = Metal::Clad { core: STEEL, cladding: COPPER, thickness_m: 0.2e-3 };
+        // Skin depth of copper at 30 MHz: 12 µm.
+        let solid = Metal::Solid(COPPER).internal_impedance_ohm_per_m(RADIUS_M, 30e6);
+        near(clad.internal_impedance_ohm_per_m(RADIUS_M, 30e6), solid, 1e-6);
+        // Direct current: both conduct in parallel.
+        let core_s_m = 6e6 * PI * 0.8e-3 * 0.8e-3;
+        let cladding_s_m = 58e6 * PI * (1e-6 - 0.8e-3 * 0.8e-3);
+        let slow = clad.internal_impedance_ohm_per_m(RADIUS_M, 1e-3);
+        assert!((slow.re * (core_s_m + cladding_s_m) - 1.0).abs() < 1e-6, "{slow}");
+    }
+
+    #[test]
+    fn thin_copper_on_steel_loses_more_than_copper_and_less_than_steel() {
+        let loss = |metal: Metal| metal.internal_impedance_ohm_per_m(RADIUS_M, 1.8e6).re;
+        let clad = loss(Metal::Clad { core: STEEL, cladding: COPPER, thickness_m: 20e-6 });
+        assert!(clad > 1.2 * loss(Metal::Solid(COPPER)) && clad < 0.5 * loss(Metal::Solid(STEEL)));
+    }
+
+    #[test]
+    fn cover_counts_as_the_inductance_of_its_formula() {
+        // L = δ/c² = µ0/2π·(1 − 1/ε)·ln(b/a)
+        let cover = Insulation { outer_radius_m: 2e-3, relative_permittivity: 2.3 };
+        let inductance_h_per_m =
+            cover.elastance_m_per_f(RADIUS_M) * VACUUM_PERMEABILITY_H_PER_M * VACUUM_PERMITTIVITY_F_PER_M;
+        let expected = VACUUM_PERMEABILITY_H_PER_M / TAU * (1.0 - 1.0 / 2.3) * 2.0_f64.ln();
+        assert!((inductance_h_per_m / expected - 1.0).abs() < 1e-12);
+    }
+}
