@@ -13,7 +13,7 @@ fn demo(name: &str) -> PathBuf {
     Path::new(env!("CARGO_MANIFEST_DIR")).join("../../demo-projects").join(name)
 }
 
-const DEMOS: [&str; 2] = ["saltmarsh-relief-post.ron", "ridge-hut.ron"];
+const DEMOS: [&str; 3] = ["saltmarsh-relief-post.ron", "ridge-hut.ron", "heron-spit-lookout.ron"];
 
 /// Runs `wirewright` as on a machine without a display.
 fn wirewright(arguments: &[&str]) -> Output {

@@ -8,6 +8,7 @@ pub mod band;
 pub mod feed_path;
 mod fields;
 pub mod lanes;
+mod loads;
 pub mod marks;
 pub mod sheet;
 pub mod station;

@@ -1,9 +1,12 @@
-//! The station in words and numbers: what it is, what stands on the site, the wire, and the bands that must work.
+//! The station in words and numbers: what it is, what stands on the site, the wires and their loads, and the bands that
+//! must work.
 
 mod about;
 mod bands;
+mod loads;
 mod site;
 mod typed;
+mod wires;
 
 use eframe::egui::{self, CornerRadius, Frame, Margin, RichText, Role, ScrollArea, Ui, UiBuilder};
 use sheet::tokens::Ink;
@@ -39,7 +42,9 @@ pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut StationState, out:
 
 fn boxes(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut StationState, out: &mut Vec<Command>) {
     frame(ui, snapshot, "What it is", |ui| about::show(ui, snapshot, &mut state.typed, out));
-    frame(ui, snapshot, "Wire and earth", |ui| site::wire_and_earth(ui, snapshot, out));
+    frame(ui, snapshot, "Wires", |ui| wires::show(ui, snapshot, &mut state.typed, out));
+    frame(ui, snapshot, "Loads in the wires", |ui| loads::show(ui, snapshot, &mut state.typed, out));
+    frame(ui, snapshot, "Earth and entrance", |ui| site::earth_and_entrance(ui, snapshot, out));
     frame(ui, snapshot, "Supports", |ui| site::supports(ui, snapshot, &mut state.typed, out));
 }
 

@@ -1,8 +1,8 @@
-//! What stands on the site, what lies under it, and what the wire is made of.
+//! What stands on the site and what lies under it.
 
 use eframe::egui::{ComboBox, Id, Ui};
 use station::catalogue;
-use station::plan::{ConductorChoice, Earth, Point, Support, SupportKind};
+use station::plan::{Earth, Point, Support, SupportKind};
 
 use super::typed::{TextField, Typed};
 use super::{grid, group};
@@ -24,7 +24,12 @@ const PICK_LIST: f32 = 420.0;
 type Coordinate = (&'static str, &'static str, f64, fn(Point, f64) -> Point);
 
 /// A length of the plan in its field.
-fn length<'a>(snapshot: &Snapshot<'_>, label: &'a str, sentence: &'a str, value_m: f64) -> Quantity<'a> {
+pub(super) fn length<'a>(
+    snapshot: &Snapshot<'_>,
+    label: &'a str,
+    sentence: &'a str,
+    value_m: f64,
+) -> Quantity<'a> {
     let unit = snapshot.units.to_metres(1.0);
     let suffix = if snapshot.units == station::units::Units::Feet { " ft" } else { " m" };
     let reach = REACH_M / unit;
@@ -40,65 +45,14 @@ fn length<'a>(snapshot: &Snapshot<'_>, label: &'a str, sentence: &'a str, value_
     }
 }
 
-/// Conductor, cut length, place of the feedpoint; earth; entrance.
-pub(super) fn wire_and_earth(ui: &mut Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {
-    grid(ui, "wire and earth", |ui| {
-        for (wire, planned) in snapshot.plan.wires.iter().enumerate() {
-            ui.label(&planned.name);
-            conductor(ui, wire, &planned.conductor, out);
-            ui.end_row();
-            let sentence = "Electrical length of wire between its two ends; the sheet adds what knots need.";
-            let field = Quantity {
-                range: 0.5..=1e6,
-                ..length(snapshot, "cut length", sentence, planned.cut_length_m)
-            };
-            if let Some(cut_length_m) = quantity(ui, &field, out) {
-                out.push(Command::Edit(Edit::CutLength { wire, cut_length_m }));
-            }
-        }
-        let fed_at = Quantity {
-            label: "fed at",
-            sentence: "Share of the wire between its beginning and the feedpoint: 50 % is the centre.",
-            value: snapshot.plan.feedpoint.fraction,
-            unit: 0.01,
-            suffix: " %",
-            range: 0.0..=100.0,
-            speed: 0.1,
-            decimals: 1,
-        };
-        if let Some(fraction) = quantity(ui, &fed_at, out) {
-            out.push(Command::Edit(Edit::FeedFraction(fraction)));
-        }
+/// Earth; entrance.
+pub(super) fn earth_and_entrance(ui: &mut Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {
+    grid(ui, "earth and entrance", |ui| {
         let label = ui.label("earth").id;
         earth(ui, label, &snapshot.plan.site.earth, out);
         ui.end_row();
         entrance(ui, snapshot, out);
     });
-}
-
-fn conductor(ui: &mut Ui, wire: usize, chosen: &ConductorChoice, out: &mut Vec<Command>) {
-    let (name, sentence) = match chosen {
-        ConductorChoice::Own(data) => {
-            (data.name.clone(), format!("{}, the station's own figures", data.name))
-        }
-        ConductorChoice::Catalogue(id) => match catalogue::conductor_entry(id) {
-            Ok(entry) => (entry.data.name.clone(), format!("{}. Figures: {}", entry.hint, entry.data.source)),
-            Err(error) => (id.clone(), error.to_string()),
-        },
-    };
-    let picker =
-        ComboBox::from_id_salt(("conductor", wire)).selected_text(name).height(PICK_LIST).show_ui(ui, |ui| {
-            for entry in catalogue::conductors() {
-                let is_chosen = matches!(chosen, ConductorChoice::Catalogue(id) if *id == entry.id);
-                if ui.selectable_label(is_chosen, &entry.data.name).explain(&entry.hint).clicked()
-                    && !is_chosen
-                {
-                    let conductor = ConductorChoice::Catalogue(entry.id.clone());
-                    out.push(Command::Edit(Edit::Conductor { wire, conductor }));
-                }
-            }
-        });
-    picker.response.accessible_name("conductor").explain(sentence);
 }
 
 fn earth(ui: &mut Ui, label: Id, chosen: &Earth, out: &mut Vec<Command>) {

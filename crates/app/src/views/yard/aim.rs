@@ -40,10 +40,10 @@ impl Model<'_> {
                     self.on_path(wire).map(|on| place_on_path(view, on, at, true) - on.wire.start_m);
                 Numbers { along_m: place_m, up_m: None }
             }
-            Grip::Feedpoint => Numbers {
-                along_m: place_on_wire(self, view, self.plan.feedpoint.wire, at).map(|(arc_m, _)| arc_m),
-                up_m: None,
-            },
+            Grip::Feedpoint | Grip::Load { .. } => {
+                let place = self.wire_of(grip).and_then(|wire| place_on_wire(self, view, wire, at));
+                Numbers { along_m: place.map(|(arc_m, _)| arc_m), up_m: None }
+            }
             _ => {
                 let Some(place) = self.place(grip) else { return now };
                 let flat = view.flat(at);

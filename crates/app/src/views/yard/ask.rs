@@ -124,6 +124,7 @@ impl Model<'_> {
             (Grip::WireBeginning { wire }, Some(cut_m), _) => self.ask_beginning(wire, cut_m),
             (Grip::WireEnd { wire }, Some(cut_m), _) => self.ask_end(wire, cut_m),
             (Grip::Feedpoint, Some(from_beginning_m), _) => self.ask_feedpoint(from_beginning_m),
+            (Grip::Load { load }, Some(from_beginning_m), _) => self.ask_load(load, from_beginning_m),
             (Grip::PathPoint { wire, point }, along_m, Some(height_m)) => {
                 self.ask_path_point(wire, point, along_m, height_m)
             }
@@ -178,6 +179,14 @@ impl Model<'_> {
         // The places it likes are exact shares, not what is left of them after a division.
         let exact = FEED_PLACES.iter().find(|(place, _)| (place - share).abs() < 1e-9);
         Some(Asked::one(Edit::FeedFraction(exact.map_or(share, |(place, _)| *place))).hinted(hint))
+    }
+
+    fn ask_load(&self, load: usize, from_beginning_m: f64) -> Option<Asked> {
+        let cut_m = self.plan.wires.get(self.load(load)?.wire)?.cut_length_m;
+        let (low, high) = (*FEED_FRACTION.start(), *FEED_FRACTION.end());
+        let share = from_beginning_m / cut_m;
+        let (fraction, hint) = held(share, (low, "the wire begins here"), (high, "the wire ends here"));
+        Some(Asked::one(Edit::LoadFraction { load, fraction }).hinted(hint))
     }
 
     /// A point with a new place: the height is over the earth, the distance from the grip's datum.
@@ -249,8 +258,11 @@ impl Model<'_> {
         Some(Asked::one(Edit::SupportHeight { support, height_m }).hinted(hint))
     }
 
-    /// The path without one of its inner points; `None` for the points at its ends.
+    /// The path without one of its inner points, or the plan without a load; `None` for all else.
     pub fn ask_removal(&self, grip: Grip) -> Option<Edit> {
+        if let Grip::Load { load } = grip {
+            return Some(Edit::RemoveLoad { load });
+        }
         let Grip::PathPoint { wire, point } = grip else { return None };
         let mut path = self.plan.wires.get(wire)?.path.clone();
         if point == 0 || point + 1 >= path.len() {
@@ -270,8 +282,8 @@ impl Model<'_> {
                 let outward = self.on_path(wire).map_or(0.0, |on| self.outward(on, at_end, right, up));
                 Numbers { along_m: step(now.along_m, outward), up_m: None }
             }
-            Grip::Feedpoint => {
-                let forward = self.forward_at_feed(right, up);
+            Grip::Feedpoint | Grip::Load { .. } => {
+                let forward = self.forward_at(grip, right, up);
                 Numbers { along_m: step(now.along_m, forward), up_m: None }
             }
             _ => {
@@ -296,10 +308,12 @@ impl Model<'_> {
         sense * self.sense_of(from.at, to.at, right, up)
     }
 
-    fn forward_at_feed(&self, right: f64, up: f64) -> f64 {
-        let Ok(hung) = &self.hung else { return 0.0 };
-        let Some(wire) = hung.wires.get(hung.feedpoint.wire) else { return 0.0 };
-        let pair = wire.vertices.windows(2).find(|pair| hung.feedpoint.arc_m <= pair[1].arc_m);
+    /// 1 where an arrow points along the wire at the feedpoint or a load, −1 where it points against it.
+    fn forward_at(&self, grip: Grip, right: f64, up: f64) -> f64 {
+        let pair = self.wire_of(grip).and_then(|wire| {
+            let arc_m = self.numbers(grip).along_m?;
+            self.hung_wire(wire)?.vertices.windows(2).find(|pair| arc_m <= pair[1].arc_m)
+        });
         pair.map_or(0.0, |pair| self.sense_of(pair[0].at, pair[1].at, right, up))
     }
 

@@ -1,6 +1,6 @@
 //! Grips: the things of the Yard that can be taken hold of, with their names and their numbers.
 
-use station::plan::{PathPoint, Point};
+use station::plan::{Load, PathPoint, Point};
 
 use super::model::Model;
 
@@ -31,6 +31,10 @@ pub enum Grip {
         support: usize,
     },
     Entrance,
+    /// A load, which slides along its wire.
+    Load {
+        load: usize,
+    },
 }
 
 impl Grip {
@@ -71,12 +75,20 @@ impl Model<'_> {
             if self.paths.get(wire).is_none_or(Vec::is_empty) {
                 continue;
             }
-            grips.push(Grip::WireBeginning { wire });
+            let [begins, ends] = self.joined_ends(wire);
+            if !begins {
+                grips.push(Grip::WireBeginning { wire });
+            }
             if self.plan.feedpoint.wire == wire {
                 grips.push(Grip::Feedpoint);
             }
-            grips.push(Grip::WireEnd { wire });
-            grips.extend((0..on.path.len()).map(|point| Grip::PathPoint { wire, point }));
+            let loads = self.plan.loads.iter().enumerate().filter(|(_, load)| load.wire == wire);
+            grips.extend(loads.map(|(load, _)| Grip::Load { load }));
+            if !ends {
+                grips.push(Grip::WireEnd { wire });
+            }
+            let own = (0..on.path.len()).filter(|&point| !self.follows(wire, point));
+            grips.extend(own.map(|point| Grip::PathPoint { wire, point }));
             grips.extend((1..on.path.len()).map(|end| Grip::NewPoint { wire, span: end - 1 }));
         }
         for support in 0..self.plan.site.supports.len() {
@@ -87,24 +99,52 @@ impl Model<'_> {
         grips
     }
 
-    /// The name that a screen reader says and a test asks for.
-    pub fn name(&self, grip: Grip) -> String {
-        let wire_name = |wire: usize| match self.plan.wires.as_slice() {
+    fn wire_name(&self, wire: usize) -> String {
+        match self.plan.wires.as_slice() {
             [_] => "wire".to_owned(),
             wires => wires.get(wire).map_or_else(String::new, |w| w.name.clone()),
-        };
+        }
+    }
+
+    /// The name that a screen reader says and a test asks for.
+    pub fn name(&self, grip: Grip) -> String {
         let support_name =
             |support: usize| self.plan.site.supports.get(support).map_or("", |s| s.name.as_str());
         match grip {
-            Grip::WireBeginning { wire } => format!("{} beginning", wire_name(wire)),
-            Grip::WireEnd { wire } => format!("{} end", wire_name(wire)),
+            Grip::WireBeginning { wire } => format!("{} beginning", self.wire_name(wire)),
+            Grip::WireEnd { wire } => format!("{} end", self.wire_name(wire)),
             Grip::Feedpoint => "feedpoint".to_owned(),
             Grip::PathPoint { wire, point } => self.point_name(wire, point),
-            Grip::NewPoint { span, .. } => format!("new point in span {}", span + 1),
+            Grip::NewPoint { wire, span } => format!("new point in span {}{}", span + 1, self.of_wire(wire)),
             Grip::SupportFoot { support } => format!("support {}", support_name(support)),
             Grip::SupportTop { support } => format!("top of {}", support_name(support)),
             Grip::Entrance => "entrance".to_owned(),
+            Grip::Load { load } => self.load_name(load),
         }
+    }
+
+    /// "load 7 MHz trap"; of two with one name, the second is numbered.
+    fn load_name(&self, load: usize) -> String {
+        let Some(found) = self.load(load) else { return String::new() };
+        let before = self.plan.loads[..load].iter().filter(|other| other.name == found.name).count();
+        if before == 0 {
+            format!("load {}", found.name)
+        } else {
+            format!("load {} ({})", found.name, before + 1)
+        }
+    }
+
+    /// " of arm 2", where there is more than one wire.
+    fn of_wire(&self, wire: usize) -> String {
+        match self.plan.wires.get(wire) {
+            Some(found) if self.plan.wires.len() > 1 => format!(" of {}", found.name),
+            _ => String::new(),
+        }
+    }
+
+    /// A load of the plan.
+    pub fn load(&self, load: usize) -> Option<&Load> {
+        self.plan.loads.get(load)
     }
 
     fn point_name(&self, wire: usize, point: usize) -> String {
@@ -114,11 +154,11 @@ impl Model<'_> {
             && here > before
             && here > after
         {
-            return "apex".to_owned();
+            return format!("apex{}", self.of_wire(wire));
         }
         match self.path_point(wire, point) {
-            Some(PathPoint::OnSupport { support, .. }) => format!("wire on {support}"),
-            _ => format!("free point {}", point + 1),
+            Some(PathPoint::OnSupport { support, .. }) => format!("{} on {support}", self.wire_name(wire)),
+            _ => format!("free point {}{}", point + 1, self.of_wire(wire)),
         }
     }
 
@@ -144,6 +184,11 @@ impl Model<'_> {
                 site.supports.get(support).map(|s| Point { z_m: s.foot.z_m + s.height_m, ..s.foot })
             }
             Grip::Entrance => Some(site.entrance),
+            Grip::Load { load } => {
+                let load = self.load(load)?;
+                let wire = self.hung_wire(load.wire)?;
+                Some(wire.point_at(load.fraction * wire.length_m()))
+            }
         }
     }
 
@@ -156,6 +201,9 @@ impl Model<'_> {
                 let feedpoint = self.plan.feedpoint;
                 Numbers::along(feedpoint.fraction * cut_m(feedpoint.wire))
             }
+            Grip::Load { load } => self
+                .load(load)
+                .map_or_else(Numbers::default, |load| Numbers::along(load.fraction * cut_m(load.wire))),
             Grip::PathPoint { wire, point } => match self.path_point(wire, point) {
                 Some(PathPoint::OnSupport { height_m, .. }) => Numbers::up(*height_m),
                 Some(PathPoint::Free(at)) => Numbers::both(self.distance_m(grip, *at), at.z_m),
@@ -178,7 +226,7 @@ impl Model<'_> {
     pub fn number_words(&self, grip: Grip) -> (String, &'static str) {
         let along = match grip {
             Grip::WireBeginning { .. } | Grip::WireEnd { .. } => "cut length".to_owned(),
-            Grip::Feedpoint => "from the beginning".to_owned(),
+            Grip::Feedpoint | Grip::Load { .. } => "from the beginning".to_owned(),
             _ => match self.datum(self.moves_first(grip)).name {
                 name if name.is_empty() => "along".to_owned(),
                 name => format!("from {name}"),
@@ -224,6 +272,9 @@ impl Model<'_> {
             Grip::SupportFoot { .. } => "Drag sideways to move the support with everything made fast to it.",
             Grip::SupportTop { .. } => {
                 "Drag up or down to change the support's height; what is at its top follows."
+            }
+            Grip::Load { .. } => {
+                "Drag along the wire; its values are in the Station view. Delete takes it away, Alt leaves the grid."
             }
             Grip::Entrance => "Where the feed line enters the station: drag it to its place.",
         }

@@ -2,15 +2,17 @@
 
 use eframe::egui::{Pos2, Rect, Vec2, pos2, vec2};
 use sheet::tokens::Ink;
-use station::plan::{Point, SupportKind};
+use station::plan::{Load, Point, SupportKind};
 use station::report::BandReport;
 use station::units::Units;
+
+use crate::views::loads::Kind;
 
 use super::grip::Grip;
 use super::model::Model;
 use super::rulers::{self, Tick};
 use super::side_view::SideView;
-use super::wave::{Size, Wave, WaveMark};
+use super::wave::{Peaks, Size, Wave, WaveMark};
 
 /// Width of the height ruler and height of the distance ruler, px.
 pub const GUTTER: Vec2 = vec2(44.0, 24.0);
@@ -22,6 +24,11 @@ const SIGN_PX: f32 = 15.0;
 const GRIP_GAP_PX: f32 = 20.0;
 /// Space between the plot's edge and what stands at it, px.
 pub const EDGE_PX: f32 = 10.0;
+
+/// A side of the feedpoint shorter than this is a stub, wavelengths.
+const STUB_WAVELENGTHS: f64 = 0.03;
+/// Exact.
+const SPEED_OF_LIGHT_M_PER_S: f64 = 299_792_458.0;
 
 /// Two sizes of text.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -56,6 +63,17 @@ pub struct SupportShape {
     pub foot: Pos2,
     /// Where it ends.
     pub top: Pos2,
+}
+
+/// A load on the screen.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct LoadShape {
+    /// What it is.
+    pub kind: Kind,
+    /// Where on the wire.
+    pub at: Pos2,
+    /// The wire's direction there.
+    pub along: Vec2,
 }
 
 /// A grip on the screen.
@@ -98,6 +116,8 @@ pub struct Layout<'a> {
     pub ropes: Vec<Vec<Pos2>>,
     /// Wires.
     pub wires: Vec<Vec<Pos2>>,
+    /// Loads in the plan's order.
+    pub loads: Vec<LoadShape>,
     /// From the feedpoint to the entrance.
     pub feed_line: Vec<Pos2>,
     /// Standing waves, by wire.
@@ -169,6 +189,7 @@ impl<'a> Layout<'a> {
             supports,
             ropes,
             wires,
+            loads: load_shapes(model, &view),
             feed_line,
             waves: Vec::new(),
             marks: Vec::new(),
@@ -192,9 +213,18 @@ impl<'a> Layout<'a> {
         for (index, source) in band.wave.wires.iter().enumerate() {
             let Some(wire) = model.hung_wire(index) else { continue };
             let Some(wave) = Wave::along(&self.view, wire, source, size) else { continue };
-            self.marks.extend(wave.marks(&self.view, wire));
+            let joined = model.joined_ends(index);
+            let marks = wave.marks(&self.view, wire).into_iter();
+            self.marks.extend(marks.filter(|mark| !at_joint(mark.reading.arc_m, wire.length_m(), joined)));
             self.waves.push((index, wave));
         }
+        let stub = short_stub(model, band);
+        let peaks = self.waves.iter().fold(Peaks::default(), |peaks, (wire, wave)| {
+            let stub = stub.filter(|(of, _)| of == wire).map(|(_, arcs)| arcs);
+            peaks.or(wave.peaks_without(stub))
+        });
+        let waves = std::mem::take(&mut self.waves);
+        self.waves = waves.into_iter().map(|(wire, wave)| (wire, wave.measured_by(peaks))).collect();
     }
 
     /// At the feedpoint the sign of a loop or node stands off the wire, so that both can be seen.
@@ -239,11 +269,47 @@ impl<'a> Layout<'a> {
     }
 }
 
+/// Whether a place of a wire is a joint at one of its ends: the wave goes on there, whatever one wire alone shows.
+fn at_joint(arc_m: f64, length_m: f64, [begins, ends]: [bool; 2]) -> bool {
+    const NEAR_M: f64 = 1e-3;
+    (begins && arc_m < NEAR_M) || (ends && arc_m > length_m - NEAR_M)
+}
+
+/// The short side of a wire that is fed close to its open end: its wire and arcs, m. Its few whiskers stand far above
+/// all others, which would be too short to read beside them.
+fn short_stub(model: &Model<'_>, band: &BandReport) -> Option<(usize, (f64, f64))> {
+    let feedpoint = model.hung.as_ref().ok()?.feedpoint;
+    let length_m = model.hung_wire(feedpoint.wire)?.length_m();
+    let stub_m = STUB_WAVELENGTHS * SPEED_OF_LIGHT_M_PER_S / band.wave.frequency_hz;
+    let [begins, ends] = model.joined_ends(feedpoint.wire);
+    let half_gap_m = 0.5 * model.plan.feedpoint.gap_m + 1e-6;
+    if feedpoint.arc_m < stub_m && !begins {
+        Some((feedpoint.wire, (0.0, feedpoint.arc_m + half_gap_m)))
+    } else if length_m - feedpoint.arc_m < stub_m && !ends {
+        Some((feedpoint.wire, (feedpoint.arc_m - half_gap_m, f64::INFINITY)))
+    } else {
+        None
+    }
+}
+
+/// The loads on their wires; a wire that is seen from its end has them upright.
+fn load_shapes(model: &Model<'_>, view: &SideView) -> Vec<LoadShape> {
+    let shape = |load: &Load| {
+        let wire = model.hung_wire(load.wire)?;
+        let arc_m = load.fraction * wire.length_m();
+        let pair = wire.vertices.windows(2).find(|pair| arc_m <= pair[1].arc_m)?;
+        let along = (view.at(pair[1].at) - view.at(pair[0].at)).normalized();
+        let along = if along == Vec2::ZERO { vec2(1.0, 0.0) } else { along };
+        Some(LoadShape { kind: Kind::of(&load.circuit), at: view.at(wire.point_at(arc_m)), along })
+    };
+    model.plan.loads.iter().filter_map(shape).collect()
+}
+
 /// Who stands at its thing and who gives way.
 fn rank(grip: Grip) -> u8 {
     match grip {
         Grip::WireBeginning { .. } | Grip::WireEnd { .. } => 0,
-        Grip::Feedpoint => 1,
+        Grip::Feedpoint | Grip::Load { .. } => 1,
         Grip::PathPoint { .. } => 2,
         Grip::Entrance => 3,
         Grip::SupportFoot { .. } => 4,
@@ -266,7 +332,7 @@ fn way_out(model: &Model<'_>, view: &SideView, grip: Grip) -> Vec2 {
                 _ => up,
             }
         }
-        Grip::Feedpoint | Grip::Entrance | Grip::SupportFoot { .. } => -up,
+        Grip::Feedpoint | Grip::Load { .. } | Grip::Entrance | Grip::SupportFoot { .. } => -up,
         _ => up,
     }
 }

@@ -3,6 +3,7 @@
 use station::hang::{HangError, Hung, HungWire, Vertex, hang, resolve_path};
 use station::plan::{PathPoint, Plan, Point, Wire};
 
+use super::grip::Grip;
 use super::side_view::{Bounds, Plane};
 
 /// A plan made ready to be drawn.
@@ -46,6 +47,44 @@ impl<'a> Model<'a> {
     /// A wire as it hangs.
     pub fn hung_wire(&self, wire: usize) -> Option<&HungWire> {
         self.hung.as_ref().ok()?.wires.get(wire)
+    }
+
+    /// The wire that the feedpoint or a load is on.
+    pub fn wire_of(&self, grip: Grip) -> Option<usize> {
+        match grip {
+            Grip::Feedpoint => Some(self.plan.feedpoint.wire),
+            Grip::Load { load } => self.load(load).map(|load| load.wire),
+            _ => None,
+        }
+    }
+
+    /// Whether a wire's beginning and its end are joined to another wire, or to each other.
+    pub fn joined_ends(&self, wire: usize) -> [bool; 2] {
+        let Ok(hung) = &self.hung else { return [false; 2] };
+        let Some(vertices) = hung.wires.get(wire).map(|wire| &wire.vertices) else { return [false; 2] };
+        let last = vertices.len() - 1;
+        [0, last].map(|end| {
+            let at = vertices[end].at;
+            let others = hung.wires.iter().enumerate().flat_map(|(index, other)| {
+                other.vertices.iter().enumerate().map(move |(number, vertex)| (index, number, vertex.at))
+            });
+            others
+                .filter(|(index, number, _)| (*index, *number) != (wire, end))
+                .any(|(_, _, v)| is_joint(v, at))
+        })
+    }
+
+    /// Whether a path point is joined to one that comes before it, with which it moves.
+    pub fn follows(&self, wire: usize, point: usize) -> bool {
+        let Some(at) = self.paths.get(wire).and_then(|path| path.get(point)).map(|v| v.at) else {
+            return false;
+        };
+        let free = matches!(self.path_point(wire, point), Some(PathPoint::Free(_)));
+        let before = self.paths.iter().take(wire + 1).enumerate().flat_map(|(index, path)| {
+            let count = if index == wire { point } else { path.len() };
+            path.iter().take(count)
+        });
+        free && before.into_iter().any(|v| is_joint(v.at, at))
     }
 
     /// Everything that should be in view.
@@ -97,6 +136,13 @@ impl<'a> Model<'a> {
         let path = self.paths.get(wire).filter(|path| path.len() > 1)?;
         Some(OnPath { wire: self.plan.wires.get(wire)?, path })
     }
+}
+
+/// Points this close are one to the solver, m.
+const JOINT_M: f64 = 1e-3;
+
+fn is_joint(a: Point, b: Point) -> bool {
+    a.distance_m(b) <= JOINT_M
 }
 
 /// The support's name, or nothing for a free point.

@@ -8,7 +8,7 @@ use station::plan::Earth;
 use station::report::MarkKind;
 
 use crate::theme::{color, wash};
-use crate::views::marks::patterned;
+use crate::views::{loads, marks::patterned};
 
 use super::grip::Grip;
 use super::layout::{GRIP_PX, Handle, Layout, SupportShape, Text, Type};
@@ -91,6 +91,10 @@ pub fn paint(ui: &Ui, frame: Rect, layout: &Layout<'_>, look: &Look<'_>) {
     let wire = Stroke::new(Pen::Curve.width(), look.ink(Ink::Wire));
     inside.extend(layout.wires.iter().map(|line| Shape::line(line.clone(), wire)));
     paint_marks(&inside, layout, look);
+    for load in &layout.loads {
+        let (ink, fill) = (look.ink(Ink::Wire), look.ink(Ink::Background));
+        loads::mark(&inside, load.at, load.along, load.kind, ink, fill);
+    }
     paint_rulers(ui, &painter, frame, layout, look);
     for text in &layout.texts {
         paint_text(ui, &inside, text, look);

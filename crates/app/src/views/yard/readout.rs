@@ -93,7 +93,8 @@ fn lines(bench: &Bench<'_>, probe: Probe) -> Option<[String; 2]> {
     let feedpoint = bench.model.hung.as_ref().ok()?.feedpoint;
     let from_feed_m = reading.arc_m - feedpoint.arc_m;
     let place = if feedpoint.wire != probe.wire {
-        format!("{} from the wire's beginning", length(reading.arc_m))
+        let name = bench.model.plan.wires.get(probe.wire).map_or("wire", |wire| wire.name.as_str());
+        format!("{} from the beginning of {name}", length(reading.arc_m))
     } else if from_feed_m.abs() < 0.005 {
         "at the feedpoint".to_owned()
     } else {

@@ -8,6 +8,7 @@ use eframe::egui::{
 use sheet::tokens::{Ink, Pen};
 
 use crate::command::Command;
+use crate::views::loads::values;
 
 use super::YardState;
 use super::ask::{Grid, feed_place};
@@ -55,7 +56,7 @@ pub fn in_words(bench: &Bench<'_>, grip: Grip) -> String {
     let length = |m| bench.snapshot.units.length(m);
     let mut parts = Vec::with_capacity(3);
     if let Some(m) = along_m {
-        parts.push(if grip == Grip::Feedpoint {
+        parts.push(if matches!(grip, Grip::Feedpoint | Grip::Load { .. }) {
             format!("{} {along}", length(m))
         } else {
             format!("{along} {}", length(m))
@@ -88,6 +89,7 @@ fn note(bench: &Bench<'_>, grip: Grip) -> Option<String> {
             let percent = || format!("{} % of the wire", station::units::fixed(100.0 * fraction, 1));
             Some(feed_place(fraction).map_or_else(percent, str::to_owned))
         }
+        Grip::Load { load } => bench.model.load(load).map(|load| values(&load.circuit)),
         _ => None,
     }
 }

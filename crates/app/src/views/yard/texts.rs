@@ -10,7 +10,7 @@ use super::layout::{Asking, EDGE_PX, Layout, Measure, Text, Type, watts_to_wire}
 use super::model::Model;
 
 /// How far from its mark a number may stand, px.
-const NUMBER_REACH_PX: f32 = 76.0;
+const NUMBER_REACH_PX: f32 = 88.0;
 /// Up to so many marks are named in words; more are told by their shapes and the legend.
 const WORDY: usize = 4;
 /// Samples of the wave's outline that are kept free of labels together.
@@ -56,7 +56,7 @@ impl<'a> Layout<'a> {
         self.write_legend(&mut writer, asking);
         self.write_supports(&mut writer, model);
         self.write_marks(&mut writer);
-        self.write_ends(&mut writer);
+        self.write_ends(&mut writer, model);
         self.write_feed_line(&mut writer, asking);
         self.texts = writer.texts;
     }
@@ -155,13 +155,15 @@ impl<'a> Layout<'a> {
     }
 
     /// The volts at the wire's ends, where the insulators are.
-    fn write_ends(&self, writer: &mut Writer<'_, '_>) {
+    fn write_ends(&self, writer: &mut Writer<'_, '_>, model: &Model<'_>) {
         for (wire, wave) in &self.waves {
             let Some(line) = self.wires.get(*wire) else { continue };
             let (Some(first), Some(last)) = (line.first(), line.last()) else { continue };
             let readings = wave.at_ends();
-            for (at, reading) in [(*first, readings.0), (*last, readings.1)] {
-                if self.marks.iter().any(|m| m.at.distance(at) < END_REACH_PX) {
+            let [begins, ends] = model.joined_ends(*wire);
+            for (at, reading, joined) in [(*first, readings.0, begins), (*last, readings.1, ends)] {
+                // Only an open end has an insulator.
+                if joined || self.marks.iter().any(|m| m.at.distance(at) < END_REACH_PX) {
                     continue;
                 }
                 let number = volts(reading.voltage_v);

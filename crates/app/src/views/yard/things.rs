@@ -143,6 +143,12 @@ pub fn grip(painter: &Painter, handle: &Handle, look: &Look<'_>) {
             let cap = vec![at + vec2(-5.0, 2.5), at + vec2(0.0, -4.5), at + vec2(5.0, 2.5)];
             painter.add(Shape::convex_polygon(cap, fill, pen(Ink::Support)));
         }
+        // The load itself stands on the wire; a grip beside it is a small ring.
+        Grip::Load { .. } => {
+            if handle.at != handle.anchor {
+                painter.circle(at, 3.5, fill, pen(Ink::Wire));
+            }
+        }
         Grip::Entrance => {
             let stroke = pen(Ink::Text);
             painter.rect(

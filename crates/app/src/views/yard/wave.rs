@@ -25,6 +25,9 @@ const GAP_M: f64 = 0.03;
 /// The thinnest ribbon that shows its grain, half of it, px.
 const GRAIN_HALF_PX: f32 = 2.5;
 
+/// The longest whisker of a stub, in longest whiskers of all else.
+const LONGEST_WHISKER: f32 = 1.25;
+
 /// A peak phasor.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
 pub struct Phasor {
@@ -145,11 +148,29 @@ pub struct Wave<'a> {
     amplitude: f64,
     step_px: f32,
     samples: Vec<Sample>,
-    peak_a: f32,
-    peak_v: f32,
+    peaks: Peaks,
     size: Size,
     /// What lies outside is not drawn piece by piece.
     seen: Rect,
+}
+
+/// What the ribbon's thickness and the whiskers' length are measured by.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct Peaks {
+    /// Largest current, A for 1 W.
+    pub current_a: f32,
+    /// Largest potential, V for 1 W.
+    pub voltage_v: f32,
+}
+
+impl Peaks {
+    /// The larger of each.
+    pub fn or(self, other: Self) -> Self {
+        Self {
+            current_a: self.current_a.max(other.current_a),
+            voltage_v: self.voltage_v.max(other.voltage_v),
+        }
+    }
 }
 
 /// Both edges of the ribbon.
@@ -176,8 +197,7 @@ impl<'a> Wave<'a> {
             amplitude: size.watts.max(0.0).sqrt(),
             step_px: 0.0,
             samples: Vec::new(),
-            peak_a: 0.0,
-            peak_v: 0.0,
+            peaks: Peaks::default(),
             size,
             seen: view.frame.expand(size.whisker_px),
         };
@@ -196,10 +216,24 @@ impl<'a> Wave<'a> {
                 bend: track.bend(run_px),
             });
         }
-        let peak = |values: &[Complex64]| values.iter().map(|z| z.norm()).fold(0.0, f64::max) as f32;
-        wave.peak_a = peak(&source.current_a);
-        wave.peak_v = peak(&source.potential_v);
-        (wave.peak_a > 0.0 || wave.peak_v > 0.0).then_some(wave)
+        wave.peaks = wave.peaks_without(None);
+        (wave.peaks.current_a > 0.0 || wave.peaks.voltage_v > 0.0).then_some(wave)
+    }
+
+    /// The largest current of the wire, and its largest potential outside a stub: arcs of the report, m.
+    pub fn peaks_without(&self, stub: Option<(f64, f64)>) -> Peaks {
+        let outside = |arc_m: f64| stub.is_none_or(|(from_m, to_m)| arc_m < from_m || arc_m > to_m);
+        let norms = |values: &'a [Complex64]| values.iter().map(|z| z.norm() as f32);
+        let placed = self.source.arc_m.iter().zip(norms(&self.source.potential_v));
+        Peaks {
+            current_a: norms(&self.source.current_a).fold(0.0, f32::max),
+            voltage_v: placed.filter(|(arc_m, _)| outside(**arc_m)).map(|(_, v)| v).fold(0.0, f32::max),
+        }
+    }
+
+    /// Measured by common peaks, so that wires can be compared.
+    pub fn measured_by(self, peaks: Peaks) -> Self {
+        Self { peaks, ..self }
     }
 
     /// Current and voltage for 1 W at a distance from the wire's beginning.
@@ -261,11 +295,17 @@ impl<'a> Wave<'a> {
     }
 
     fn ribbon_scale(&self) -> f32 {
-        if self.peak_a > 0.0 { self.size.ribbon_px / self.peak_a } else { 0.0 }
+        if self.peaks.current_a > 0.0 { self.size.ribbon_px / self.peaks.current_a } else { 0.0 }
     }
 
     fn whisker_scale(&self) -> f32 {
-        if self.peak_v > 0.0 { self.size.whisker_px / self.peak_v } else { 0.0 }
+        if self.peaks.voltage_v > 0.0 { self.size.whisker_px / self.peaks.voltage_v } else { 0.0 }
+    }
+
+    /// A whisker's length, px; what goes far beyond the scale is cut short.
+    fn whisker_px(&self, voltage_v: f32) -> f32 {
+        let most_px = LONGEST_WHISKER * self.size.whisker_px;
+        (voltage_v * self.whisker_scale()).clamp(-most_px, most_px)
     }
 
     /// The ribbon at a phase: as thick as the current is now.
@@ -282,22 +322,20 @@ impl<'a> Wave<'a> {
 
     /// How far the whiskers reach, on both sides.
     pub fn voltage_envelope(&self) -> Ribbon {
-        let scale = self.whisker_scale();
-        self.ribbon_of(|s| s.voltage.peak() * scale)
+        self.ribbon_of(|s| self.whisker_px(s.voltage.peak()))
     }
 
     /// The larger of both envelopes at each sample: what labels keep out of.
     pub fn outline(&self) -> Ribbon {
-        let (ribbon, whisker) = (self.ribbon_scale(), self.whisker_scale());
-        self.ribbon_of(|s| (s.current.peak() * ribbon).max(s.voltage.peak() * whisker))
+        let ribbon = self.ribbon_scale();
+        self.ribbon_of(|s| (s.current.peak() * ribbon).max(self.whisker_px(s.voltage.peak())))
     }
 
     /// The whiskers at a phase, each from the wire to its tip.
     pub fn whiskers(&self, phase: Phase) -> Vec<[Pos2; 2]> {
-        let scale = self.whisker_scale();
         let whisker = |run_px: f32| {
             let s = self.sample(run_px);
-            let length_px = s.voltage.now(phase) * scale;
+            let length_px = self.whisker_px(s.voltage.now(phase));
             // Too short to be seen, or running into the whiskers of the wire's other leg.
             (self.seen.contains(s.at) && length_px.abs() > 0.7 && !s.crosses(length_px))
                 .then(|| [s.at, s.off_by(length_px)])
@@ -309,7 +347,7 @@ impl<'a> Wave<'a> {
     /// where the charge is plus, and thin out where it is minus.
     pub fn grain(&self, phase: Phase) -> Vec<[Pos2; 3]> {
         let ribbon = self.ribbon_scale();
-        let swing = if self.peak_a > 0.0 { GRAIN_SWING_PX / self.peak_a } else { 0.0 };
+        let swing = if self.peaks.current_a > 0.0 { GRAIN_SWING_PX / self.peaks.current_a } else { 0.0 };
         let chevron = |rest_px: f32| {
             let run_px = rest_px + self.sample(rest_px).current.flowed(phase) * swing;
             let s = self.sample(run_px);

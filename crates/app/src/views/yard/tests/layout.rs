@@ -6,7 +6,8 @@ use station::evaluate::Evaluator;
 use station::plan::Plan;
 use station::units::Units;
 
-use super::{bent, end_fed, flat, vee, view};
+use super::{bent, closed, ell, end_fed, fan, flat, loaded, vee, vertical, view};
+use crate::views::loads::Kind;
 use crate::views::yard::grip::Grip;
 use crate::views::yard::layout::{Asking, GRIP_PX, Layout, Type};
 use crate::views::yard::model::Model;
@@ -19,8 +20,18 @@ fn measure(text: &str, size: Type) -> Vec2 {
     vec2(0.52 * em * text.chars().count() as f32, 1.2 * em)
 }
 
-fn plans() -> [(&'static str, Plan); 4] {
-    [("flat", flat()), ("vee", vee()), ("bent", bent()), ("end-fed", end_fed())]
+fn plans() -> [(&'static str, Plan); 9] {
+    [
+        ("flat", flat()),
+        ("vee", vee()),
+        ("bent", bent()),
+        ("end-fed", end_fed()),
+        ("fan", fan()),
+        ("ell", ell()),
+        ("closed", closed()),
+        ("vertical", vertical()),
+        ("loaded", loaded()),
+    ]
 }
 
 /// Does something with the layout of each plan in each size on each band.
@@ -111,8 +122,58 @@ fn every_grip_has_a_name_of_its_own() {
         names.sort();
         names.dedup();
         assert_eq!(names.len(), count, "{what}: {names:?}");
-        for name in ["wire beginning", "wire end", "feedpoint", "entrance"] {
-            assert!(names.iter().any(|n| n == name), "{what}: no {name}");
+        let ends: &[&str] = match what {
+            "fan" => &["main wire beginning", "arm 1 end", "arm 2 end"],
+            "ell" => &["main wire beginning", "drop end"],
+            "closed" => &["apex"],
+            _ => &["wire beginning", "wire end"],
+        };
+        for name in ends.iter().chain(&["feedpoint", "entrance"]) {
+            assert!(names.iter().any(|n| n == *name), "{what}: no {name}");
         }
     }
+}
+
+#[test]
+fn every_wire_carries_its_wave_and_every_load_stands_on_its_wire() {
+    each(|what, layout| {
+        assert_eq!(layout.waves.len(), layout.wires.len(), "{what}");
+        for (wire, wave) in &layout.waves {
+            let ribbon = wave.current_envelope();
+            assert!(ribbon.upper.len() > 8, "{what}: wire {wire}");
+        }
+    });
+    let plan = loaded();
+    let model = Model::of(&plan);
+    let asking = Asking { band: None, feed: (0, ""), units: Units::Metres, buttons: vec2(200.0, 24.0) };
+    let layout = Layout::of(&model, view(&model, SIZES[1]), &asking, &measure);
+    let kinds: Vec<Kind> = layout.loads.iter().map(|load| load.kind).collect();
+    assert_eq!(kinds, [Kind::Coil, Kind::Trap, Kind::Capacitor, Kind::Resistor]);
+    for (n, load) in layout.loads.iter().enumerate() {
+        let handle = layout.handles.iter().find(|h| h.grip == Grip::Load { load: n }).unwrap();
+        assert_eq!(handle.anchor, load.at);
+        let line = &layout.wires[0];
+        assert!((load.at.y - line[0].y).abs() < 0.5 && load.at.x > line[0].x && load.at.x < line[1].x);
+    }
+}
+
+#[test]
+fn a_short_stub_does_not_shrink_all_other_whiskers() {
+    // 0.4 m of 80 m: one hundredth of a wavelength on 40 m.
+    let plan = end_fed();
+    let report = Evaluator::new().evaluate(&plan, 1).unwrap();
+    let model = Model::of(&plan);
+    let band = &report.bands[0];
+    let asking = Asking { band: Some(band), feed: (0, ""), units: Units::Metres, buttons: vec2(200.0, 24.0) };
+    let layout = Layout::of(&model, view(&model, SIZES[3]), &asking, &measure);
+    let (_, wave) = &layout.waves[0];
+    let envelope = wave.voltage_envelope();
+    let reach = |n: usize| 0.5 * envelope.upper[n].distance(envelope.lower[n]);
+    let begins = model.hung_wire(0).unwrap().length_m() * 0.1;
+    let far = (0..envelope.upper.len())
+        .filter(|&n| n as f64 * 80.0 / envelope.upper.len() as f64 > begins)
+        .map(reach)
+        .fold(0.0_f32, f32::max);
+    let longest = (0..envelope.upper.len()).map(reach).fold(0.0_f32, f32::max);
+    assert!(far > 0.6 * longest, "the rest reaches {far} px, the longest {longest} px");
 }

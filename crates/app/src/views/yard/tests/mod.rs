@@ -6,8 +6,8 @@ mod wave;
 
 use eframe::egui::{Rect, Vec2, pos2, vec2};
 use station::plan::{
-    Band, BandRange, ConductorChoice, Earth, Feed, Feedpoint, LineChoice, LinePiece, Link, PathPoint, Plan,
-    Point, Site, Support, SupportKind, Transmitter, Wire,
+    Band, BandRange, Circuit, ConductorChoice, Earth, Feed, Feedpoint, LineChoice, LinePiece, Link, Load,
+    PathPoint, Plan, Point, Site, Support, SupportKind, Transmitter, Wire,
 };
 
 use crate::start;
@@ -80,6 +80,69 @@ pub fn end_fed() -> Plan {
     plan.site.supports[1].foot.x_m = 84.0;
     (plan.wires[0].start_m, plan.wires[0].cut_length_m) = (1.0, 80.0);
     plan.feedpoint.fraction = 0.005;
+    plan
+}
+
+fn free(x_m: f64, z_m: f64) -> PathPoint {
+    PathPoint::Free(Point::new(x_m, 0.0, z_m))
+}
+
+/// The flat wire with two arms from its feedpoint.
+pub fn fan() -> Plan {
+    crate::edit::apply(&flat(), &crate::command::Edit::AddArms { length_m: 5.0 }).unwrap().plan
+}
+
+/// A level wire that goes on as a second one down a mast.
+pub fn ell() -> Plan {
+    let mut plan = flat();
+    let down = Wire {
+        name: "drop".to_owned(),
+        path: vec![free(35.0, 10.0), free(35.0, 2.0)],
+        start_m: 0.0,
+        cut_length_m: 8.0,
+        ..plan.wires[0].clone()
+    };
+    plan.wires.push(down);
+    plan
+}
+
+/// A closed triangle with its tip at the top.
+pub fn closed() -> Plan {
+    let mut plan = flat();
+    plan.wires[0].path = vec![free(10.0, 3.0), free(20.0, 10.5), free(30.0, 3.0), free(10.0, 3.0)];
+    (plan.wires[0].start_m, plan.wires[0].cut_length_m) = (0.0, 20.0 + 2.0 * 10.0_f64.hypot(7.5));
+    plan.feedpoint.fraction = 0.8;
+    plan
+}
+
+/// 10 m straight up, fed near its foot.
+pub fn vertical() -> Plan {
+    let mut plan = flat();
+    plan.wires[0].path = vec![free(20.0, 0.5), free(20.0, 10.5)];
+    (plan.wires[0].start_m, plan.wires[0].cut_length_m) = (0.0, 10.0);
+    plan.feedpoint.fraction = 0.1;
+    plan
+}
+
+/// The flat wire with one load of each kind.
+pub fn loaded() -> Plan {
+    let mut plan = flat();
+    let load = |name: &str, fraction: f64, circuit: Circuit| Load {
+        name: name.to_owned(),
+        wire: 0,
+        fraction,
+        circuit,
+    };
+    plan.loads = vec![
+        load("coil", 0.1, Circuit::Coil { inductance_h: 3e-6, q: Some(200.0) }),
+        load(
+            "14 MHz trap",
+            0.3,
+            Circuit::MeasuredTrap { resonance_hz: 14.1e6, capacitance_f: 40e-12, q: 200.0 },
+        ),
+        load("capacitor", 0.7, Circuit::Capacitor { capacitance_f: 100e-12, q: None }),
+        load("end resistor", 0.9, Circuit::Resistor { resistance_ohm: 400.0 }),
+    ];
     plan
 }
 

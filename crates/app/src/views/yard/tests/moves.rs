@@ -4,7 +4,7 @@ use eframe::egui::vec2;
 use station::plan::{PathPoint, Point};
 use station::units::Units;
 
-use super::{bent, flat, on, usual_view, vee};
+use super::{bent, fan, flat, loaded, on, usual_view, vee};
 use crate::command::Edit;
 use crate::views::yard::ask::{Asked, Grid};
 use crate::views::yard::grip::{Grip, Numbers};
@@ -243,4 +243,33 @@ fn feet_snap_to_half_a_foot() {
     let snapped = model.snapped(END, along(30.0), Grid::coarse(Units::Feet, 0.0)).along_m.unwrap();
     let feet = Units::Feet.from_metres(snapped);
     assert!(near(feet, 98.5), "{feet}");
+}
+
+#[test]
+fn a_load_slides_along_its_wire_on_the_grid() {
+    let plan = loaded();
+    let model = Model::of(&plan);
+    let trap = Grip::Load { load: 1 };
+    assert_eq!(model.name(trap), "load 14 MHz trap");
+    let edit = one(pulled(&model, trap, Point::new(16.02, 0.0, 12.0)));
+    let Edit::LoadFraction { load: 1, fraction } = edit else { panic!("{edit:?}") };
+    assert!(near(fraction, 11.0 / 30.0));
+    let asked = model.ask(trap, along(99.0));
+    assert!(asked.hint.is_some());
+    let nudged = model.nudged(trap, 1.0, 0.0, Grid::coarse(Units::Metres, 0.0));
+    assert!(near(nudged.along_m.unwrap(), 9.1));
+    assert_eq!(model.ask_removal(trap), Some(Edit::RemoveLoad { load: 1 }));
+}
+
+#[test]
+fn of_joined_points_one_is_taken_hold_of() {
+    let plan = fan();
+    let model = Model::of(&plan);
+    let grips = model.grips();
+    for arm in [1, 2] {
+        assert!(!grips.contains(&Grip::PathPoint { wire: arm, point: 0 }), "it follows the main wire");
+        assert!(!grips.contains(&Grip::WireBeginning { wire: arm }));
+        assert!(grips.contains(&Grip::WireEnd { wire: arm }));
+    }
+    assert!(grips.contains(&Grip::PathPoint { wire: 0, point: 1 }));
 }
