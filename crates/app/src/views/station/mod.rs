@@ -29,21 +29,28 @@ const TWO_COLUMNS: f32 = 900.0;
 pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut StationState, out: &mut Vec<Command>) {
     ScrollArea::vertical().auto_shrink(false).show(ui, |ui| {
         if ui.available_width() < TWO_COLUMNS {
-            boxes(ui, snapshot, state, out);
+            station(ui, snapshot, state, out);
+            site(ui, snapshot, state, out);
             frame(ui, snapshot, "Bands that must work", |ui| bands::show(ui, snapshot, state, out));
         } else {
             ui.columns_const(|[left, right]| {
-                boxes(left, snapshot, state, out);
+                station(left, snapshot, state, out);
                 frame(right, snapshot, "Bands that must work", |ui| bands::show(ui, snapshot, state, out));
+                site(right, snapshot, state, out);
             });
         }
     });
 }
 
-fn boxes(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut StationState, out: &mut Vec<Command>) {
+/// What it is, and what hangs.
+fn station(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut StationState, out: &mut Vec<Command>) {
     frame(ui, snapshot, "What it is", |ui| about::show(ui, snapshot, &mut state.typed, out));
     frame(ui, snapshot, "Wires", |ui| wires::show(ui, snapshot, &mut state.typed, out));
     frame(ui, snapshot, "Loads in the wires", |ui| loads::show(ui, snapshot, &mut state.typed, out));
+}
+
+/// What it hangs on and over.
+fn site(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut StationState, out: &mut Vec<Command>) {
     frame(ui, snapshot, "Earth and entrance", |ui| site::earth_and_entrance(ui, snapshot, out));
     frame(ui, snapshot, "Supports", |ui| site::supports(ui, snapshot, &mut state.typed, out));
 }

@@ -227,11 +227,12 @@ impl<'a> Layout<'a> {
         self.waves = waves.into_iter().map(|(wire, wave)| (wire, wave.measured_by(peaks))).collect();
     }
 
-    /// At the feedpoint the sign of a loop or node stands off the wire, so that both can be seen.
+    /// At the feedpoint and at loads the sign of a loop or node stands off the wire, so that both can be seen.
     fn lay_signs(&mut self) {
-        let Some(feedpoint) = self.handles.iter().find(|h| h.grip == Grip::Feedpoint) else { return };
+        let feedpoint = self.handles.iter().find(|h| h.grip == Grip::Feedpoint).map(|h| h.at);
+        let things: Vec<Pos2> = feedpoint.into_iter().chain(self.loads.iter().map(|load| load.at)).collect();
         for mark in &mut self.marks {
-            if feedpoint.at.distance(mark.at) > GRIP_PX {
+            if things.iter().all(|thing| thing.distance(mark.at) > SIGN_PX) {
                 continue;
             }
             let free = |at: &Pos2| {
