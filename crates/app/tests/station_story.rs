@@ -88,6 +88,8 @@ fn the_earth_is_picked_by_what_one_sees() {
 #[test]
 fn a_support_that_holds_a_wire_stays() {
     let mut window = open();
+    window.node("Add a support").scroll_to_me();
+    window.watch(3);
     window.click("Add a support");
     assert_eq!(window.plan().site.supports.len(), 3);
     window.type_into("name of support 1", "lee mast");
