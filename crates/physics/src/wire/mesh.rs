@@ -62,7 +62,10 @@ impl Mesh {
         fineness: &Fineness,
         highest_hz: f64,
     ) -> Result<Self, WireError> {
-        let longest_m = SPEED_OF_LIGHT_M_PER_S / highest_hz / fineness.per_wavelength;
+        let wavelength_m = SPEED_OF_LIGHT_M_PER_S / highest_hz;
+        let length_m: f64 = skeleton.stretches.iter().map(|stretch| stretch.length_m).sum();
+        let fineness = &fineness.of_length(length_m / wavelength_m);
+        let longest_m = wavelength_m / fineness.per_wavelength;
         let crowded = |joint: usize| shortest_at_joint(structure, skeleton, fineness, joint) < longest_m;
         let skeleton = &skeleton.cut_beside(crowded, longest_m);
         let wanted = wanted_lengths(structure, skeleton, fineness, longest_m);

@@ -20,7 +20,7 @@
 //! # Range and accuracy
 //!
 //! Wires thin against the wavelength (radius at most 0.005 λ) and against the distance between wires (no proximity
-//! effect); current only along the wire. Against reference cases of another method: 0.03 % of |Z| in the mean, 0.2 % at
+//! effect); current only along the wire. Against reference cases of another method: 0.02 % of |Z| in the mean, 0.1 % at
 //! worst. [`WireModel::refined`] and [`mesh_error`] tell the error of the mesh at hand.
 
 mod check;
