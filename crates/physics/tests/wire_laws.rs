@@ -171,7 +171,7 @@ fn mirror_is_an_explicit_image() {
         let y_both = model.solve(frequency_hz).unwrap().port_admittance_s;
         // The image carries the opposite current. Twice the wire has a slightly coarser mesh.
         let expected = y_both[(0, 0)] - y_both[(0, 1)];
-        assert!((y - expected).norm() < 2e-4 * expected.norm(), "{y} for {expected}");
+        assert!((y - expected).norm() < 1e-3 * expected.norm(), "{y} for {expected}");
         assert!((y_both[(0, 1)] - y_both[(1, 0)]).norm() < 1e-9 * expected.norm());
     }
 }
