@@ -7,7 +7,7 @@ use std::time::Duration;
 
 use app::app::{Beginning, Wirewright};
 use app::command::{Command, Motion, Show, View};
-use app::desk::{DesktopChooser, SettingsFile};
+use app::desk::{DesktopChooser, DesktopWays, SettingsFile};
 use app::start;
 use criterion::{Criterion, criterion_group, criterion_main};
 use eframe::egui::{Context, Pos2, RawInput, Rect, vec2};
@@ -29,6 +29,7 @@ impl Window {
             notice: None,
             settings: SettingsFile::default(),
             chooser: Box::new(DesktopChooser::default()),
+            print_ways: std::sync::Arc::new(DesktopWays),
         };
         let mut program = Wirewright::new(&ctx, beginning);
         program.obey(&ctx, Command::Show(Show::View(view)));

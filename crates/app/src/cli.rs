@@ -9,6 +9,7 @@ use station::units::Units;
 
 use crate::command::Paper;
 use crate::headless::{self, HeadlessError};
+use crate::paper::PaperError;
 use crate::start;
 
 /// Plan one HF wire antenna for many bands.
@@ -27,7 +28,7 @@ pub struct Cli {
 enum Headless {
     /// Print the numbers of a plan, band by band and feed by feed
     Report(ReportArgs),
-    /// Write the page for the crew as PDF
+    /// Write the page for the crew as PDF, SVG or PNG
     Sheet(SheetArgs),
 }
 
@@ -51,7 +52,7 @@ pub struct SheetArgs {
     /// The plan
     #[arg(value_name = "PLAN.ron")]
     pub plan: PathBuf,
-    /// The PDF to write
+    /// The file to write, by its ending: .pdf, .svg or .png; of those two, each page gets its own: FILE-1.svg, …
     #[arg(long, value_name = "FILE.pdf")]
     pub out: PathBuf,
     /// The day on the sheet; without it, today
@@ -131,6 +132,10 @@ fn opened(plan: Option<PathBuf>) -> ExitCode {
 
 impl HeadlessError {
     fn is_bad_input(&self) -> bool {
-        !matches!(self, Self::Write { .. } | Self::Sheet(_))
+        match self {
+            Self::Write(_) => false,
+            Self::Sheet(error) => matches!(error, PaperError::Kind(_)),
+            Self::Plan { .. } | Self::Frequency { .. } | Self::Evaluate(_) => true,
+        }
     }
 }

@@ -225,6 +225,7 @@ pub enum Desk {
     Save,
     SaveAs,
     SaveSheet,
+    PrintSheet,
     Quit,
     Help,
 }

@@ -48,7 +48,7 @@ pub fn table() -> [Entry; 17] {
         entry((CTRL_SHIFT, Key::S), Always, "Save the plan under another name", |_| {
             Command::Desk(Desk::SaveAs)
         }),
-        entry((CTRL, Key::P), Always, "Save the sheet as PDF", |_| Command::Desk(Desk::SaveSheet)),
+        entry((CTRL, Key::P), Always, "Save the sheet", |_| Command::Desk(Desk::SaveSheet)),
         entry((CTRL, Key::Z), WhenNotTyping, "Undo the last step", |_| Command::Undo),
         entry((CTRL_SHIFT, Key::Z), WhenNotTyping, "Redo the step that was undone", |_| Command::Redo),
         entry((CTRL, Key::Y), WhenNotTyping, "Redo the step that was undone", |_| Command::Redo),

@@ -1,13 +1,14 @@
 //! Starting: the plans that come with the program, and the window.
 
 use std::path::PathBuf;
+use std::sync::Arc;
 
 use eframe::egui;
 use station::file;
 use station::plan::Plan;
 
 use crate::app::{Beginning, Wirewright};
-use crate::desk::{self, DesktopChooser, Notice, SettingsFile};
+use crate::desk::{self, DesktopChooser, DesktopWays, Notice, SettingsFile};
 
 /// The station that the program opens with.
 const DEMO: &str = include_str!("../../../demo-projects/saltmarsh-relief-post.ron");
@@ -86,6 +87,7 @@ fn beginning(path: Option<PathBuf>) -> Beginning {
         notice,
         settings: SettingsFile::of_user(),
         chooser: Box::new(DesktopChooser::default()),
+        print_ways: Arc::new(DesktopWays),
     }
 }
 

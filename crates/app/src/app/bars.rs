@@ -61,7 +61,13 @@ impl Wirewright {
             ui.separator();
             out.extend(entry(ui, "Save", "Writes the plan to its file", Desk::Save));
             out.extend(entry(ui, "Save as…", "Writes the plan to another file", Desk::SaveAs));
-            out.extend(entry(ui, "Save sheet…", "Writes the page for the crew as PDF", Desk::SaveSheet));
+            out.extend(entry(
+                ui,
+                "Save sheet…",
+                "Writes the page for the crew as PDF, SVG or PNG, as the file's name ends",
+                Desk::SaveSheet,
+            ));
+            out.extend(entry(ui, "Print sheet", "Sends the page for the crew to the printer, or to the PDF viewer where there is no print command", Desk::PrintSheet));
             ui.separator();
             out.extend(entry(ui, "Commands by key", "Every command that has a key", Desk::Help));
             out.extend(entry(ui, "Quit", "Closes the window", Desk::Quit));

@@ -4,14 +4,15 @@ mod bars;
 mod central;
 mod findings;
 
-use std::path::PathBuf;
+use std::path::{Path, PathBuf};
+use std::sync::Arc;
 
 use eframe::egui;
 use station::plan::Plan;
 
 use crate::answers::Answers;
 use crate::command::{Command, Desk as DeskCommand, View};
-use crate::desk::{Chooser, Desk, Notice, SettingsFile};
+use crate::desk::{Chooser, Desk, Notice, PrintWays, SettingsFile, SheetTo};
 use crate::document::Document;
 use crate::looks::Looks;
 use crate::snapshot::Snapshot;
@@ -35,6 +36,8 @@ pub struct Beginning {
     pub settings: SettingsFile,
     /// How files are chosen.
     pub chooser: Box<dyn Chooser>,
+    /// How sheets come to paper.
+    pub print_ways: Arc<dyn PrintWays>,
 }
 
 /// The program behind the window.
@@ -57,7 +60,7 @@ impl Wirewright {
     #[must_use]
     pub fn new(ctx: &egui::Context, beginning: Beginning) -> Self {
         theme::install(ctx);
-        let mut desk = Desk::new(beginning.settings, beginning.chooser);
+        let mut desk = Desk::new(beginning.settings, beginning.chooser, beginning.print_ways);
         if let Some(path) = &beginning.path {
             desk.remember(|settings| settings.note_recent(path));
         }
@@ -136,22 +139,31 @@ impl Wirewright {
         }
         self.looks.fit(self.document.plan());
         self.answers.poll(ctx, &self.document);
-        self.save_waiting_sheet();
+        self.send_waiting_sheet(ctx);
     }
 
     /// The sheet that was asked for, as soon as the numbers belong to the plan.
-    fn save_waiting_sheet(&mut self) {
+    fn send_waiting_sheet(&mut self, ctx: &egui::Context) {
         if !self.desk.wants_sheet() {
             return;
         }
         let Some(report) = self.answers.settled(&self.document) else { return };
-        let Some(path) = self.desk.take_sheet_path() else { return };
+        let Some(to) = self.desk.take_sheet() else { return };
+        let plan = self.document.plan();
         let request = crate::paper::request(self.looks.paper, self.looks.units);
-        let notice = match crate::paper::save(self.document.plan(), report, &request, &path) {
-            Ok(()) => Notice::made(format!("Sheet saved to {}", path.display()), path),
-            Err(error) => Notice::problem(error.to_string()),
-        };
-        self.desk.say(notice);
+        match to {
+            SheetTo::File(path) => {
+                let notice = match crate::paper::save(plan, report, &request, &path) {
+                    Ok(files) => saved(files),
+                    Err(error) => Notice::problem(error.to_string()),
+                };
+                self.desk.say(notice);
+            }
+            SheetTo::Printer(name) => match sheet::pdf_for(plan, report, &request) {
+                Ok(pdf) => self.desk.print(ctx, name, pdf),
+                Err(error) => self.desk.say(Notice::problem(error.to_string())),
+            },
+        }
     }
 
     /// Lets the RF cycle run while it can be seen.
@@ -225,6 +237,18 @@ impl Wirewright {
         self.answers.ask(&ctx, &self.document);
         self.set_title(&ctx);
     }
+}
+
+/// "Sheet saved to /home/x/hut-1.svg and hut-2.svg".
+fn saved(files: Vec<PathBuf>) -> Notice {
+    let name = |path: &Path| path.file_name().unwrap_or_default().to_string_lossy().into_owned();
+    let Some((first, others)) = files.split_first() else { return Notice::done("The sheet has no pages") };
+    let mut words = format!("Sheet saved to {}", first.display());
+    for (index, other) in others.iter().enumerate() {
+        words += if index + 1 == others.len() { " and " } else { ", " };
+        words += &name(other);
+    }
+    Notice::made(words, first.clone())
 }
 
 /// While a file is held over the window.

@@ -4,6 +4,8 @@ use std::path::PathBuf;
 use std::sync::mpsc::{self, Receiver};
 use std::time::{Duration, Instant};
 
+use crate::paper::Kind;
+
 /// Without a dialog the library gives up within about 20 ms, and says the same as for "cancel". No hand cancels
 /// within this time.
 const QUICKEST_HAND: Duration = Duration::from_millis(120);
@@ -32,16 +34,26 @@ impl Ask {
         match self {
             Self::Open => "Open a plan",
             Self::SavePlan { .. } => "Save the plan as",
-            Self::SaveSheet { .. } => "Save the sheet as PDF",
+            Self::SaveSheet { .. } => "Save the sheet as PDF, SVG or PNG",
         }
     }
 
-    /// The ending of the file's name.
+    /// The ending of the file's name where none is given.
     #[must_use]
     pub fn extension(&self) -> &'static str {
         match self {
             Self::Open | Self::SavePlan { .. } => "ron",
             Self::SaveSheet { .. } => "pdf",
+        }
+    }
+
+    /// What the dialog offers: names and endings, the usual one first.
+    fn filters(&self) -> Vec<(String, &'static str)> {
+        match self {
+            Self::Open | Self::SavePlan { .. } => vec![("Plans".to_owned(), self.extension())],
+            Self::SaveSheet { .. } => {
+                Kind::ALL.map(|kind| (kind.extension().to_uppercase(), kind.extension())).to_vec()
+            }
         }
     }
 
@@ -110,8 +122,10 @@ impl Chooser for DesktopChooser {
 }
 
 fn run_dialog(ask: &Ask) -> Chosen {
-    let words = if ask.extension() == "pdf" { "PDF" } else { "Plans" };
-    let mut dialog = rfd::FileDialog::new().set_title(ask.title()).add_filter(words, &[ask.extension()]);
+    let mut dialog = rfd::FileDialog::new().set_title(ask.title());
+    for (words, extension) in ask.filters() {
+        dialog = dialog.add_filter(words, &[extension]);
+    }
     if let Some(suggested) = ask.suggested() {
         if let Some(folder) = suggested.parent().filter(|folder| folder.is_dir()) {
             dialog = dialog.set_directory(folder);

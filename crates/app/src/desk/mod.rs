@@ -3,14 +3,17 @@
 mod choose;
 mod dialogs;
 mod notice;
+mod print;
 mod settings;
 mod typed;
 
 pub use choose::{Ask, Chooser, Chosen, DesktopChooser};
 pub use notice::Notice;
+pub use print::{DesktopWays, PrintWays, SpoolError};
 pub use settings::{Settings, SettingsFile};
 
 use std::path::{Path, PathBuf};
+use std::sync::Arc;
 
 use eframe::egui;
 use station::file;
@@ -18,7 +21,9 @@ use station::plan::Plan;
 
 use crate::command::Desk as DeskCommand;
 use crate::document::Document;
+use crate::paper::Kind;
 use crate::start;
+use print::Press;
 use typed::Typed;
 
 /// What the hand wanted when the question about unsaved work came up.
@@ -40,6 +45,15 @@ enum Dialog {
     Keys,
 }
 
+/// Where a sheet goes.
+#[derive(Clone, Debug, PartialEq)]
+pub enum SheetTo {
+    /// Into a file of the kind that its name says.
+    File(PathBuf),
+    /// To the printer, under this file name.
+    Printer(String),
+}
+
 /// Files, settings, dialogs and notices.
 pub struct Desk {
     settings: Settings,
@@ -51,7 +65,8 @@ pub struct Desk {
     /// What comes after a save that was asked for by the question about unsaved work.
     after_save: Option<Next>,
     /// A sheet that waits for the newest report.
-    sheet_to: Option<PathBuf>,
+    sheet_to: Option<SheetTo>,
+    press: Press,
     notice: Option<Notice>,
     may_close: bool,
 }
@@ -59,7 +74,11 @@ pub struct Desk {
 impl Desk {
     /// A desk with the user's settings.
     #[must_use]
-    pub fn new(settings_file: SettingsFile, chooser: Box<dyn Chooser>) -> Self {
+    pub fn new(
+        settings_file: SettingsFile,
+        chooser: Box<dyn Chooser>,
+        print_ways: Arc<dyn PrintWays>,
+    ) -> Self {
         Self {
             settings: settings_file.load(),
             settings_file,
@@ -68,6 +87,7 @@ impl Desk {
             dialog: Dialog::Closed,
             after_save: None,
             sheet_to: None,
+            press: Press::new(print_ways),
             notice: None,
             may_close: false,
         }
@@ -114,6 +134,14 @@ impl Desk {
             DeskCommand::Save => self.save(ctx, document),
             DeskCommand::SaveAs => self.ask(ctx, Ask::SavePlan { suggested: suggested(document, "ron") }),
             DeskCommand::SaveSheet => self.ask(ctx, Ask::SaveSheet { suggested: suggested(document, "pdf") }),
+            DeskCommand::PrintSheet if self.press.is_busy() => {
+                self.notice = Some(Notice::done("The sheet before is still on its way to the printer"));
+            }
+            DeskCommand::PrintSheet => {
+                let name = suggested(document, "pdf");
+                let name = name.file_name().unwrap_or_default().to_string_lossy().into_owned();
+                self.sheet_to = Some(SheetTo::Printer(name));
+            }
             DeskCommand::Quit => self.leave(ctx, document, Next::Quit),
             DeskCommand::Help => self.dialog = Dialog::Keys,
         }
@@ -130,6 +158,9 @@ impl Desk {
                 Chosen::NoDialog => self.dialog = Dialog::Type(Typed::new(ask)),
             }
         }
+        if let Some(notice) = self.press.arrived() {
+            self.notice = Some(notice);
+        }
         let wants_to_close = ctx.input(|input| input.viewport().close_requested());
         if wants_to_close && !self.may_close && document.is_unsaved() {
             ctx.send_viewport_cmd(egui::ViewportCommand::CancelClose);
@@ -137,9 +168,15 @@ impl Desk {
         }
     }
 
-    /// The place of a sheet that was asked for, once.
-    pub fn take_sheet_path(&mut self) -> Option<PathBuf> {
+    /// Where the sheet that was asked for goes, once.
+    pub fn take_sheet(&mut self) -> Option<SheetTo> {
         self.sheet_to.take()
+    }
+
+    /// Sends a sheet to paper; a notice says what became of it.
+    pub fn print(&mut self, ctx: &egui::Context, name: String, pdf: Vec<u8>) {
+        let ctx = ctx.clone();
+        self.press.print(name, pdf, move || ctx.request_repaint());
     }
 
     /// Whether a sheet waits for a report.
@@ -185,7 +222,14 @@ impl Desk {
         match ask {
             Ask::Open => self.open(ctx, document, path),
             Ask::SavePlan { .. } => self.save_to(ctx, document, path),
-            Ask::SaveSheet { .. } => self.sheet_to = Some(path),
+            Ask::SaveSheet { .. } => {
+                // A name without an ending is that of a PDF, as the dialog suggests.
+                let path = if path.extension().is_none() { path.with_extension("pdf") } else { path };
+                match Kind::of(&path) {
+                    Ok(_) => self.sheet_to = Some(SheetTo::File(path)),
+                    Err(error) => self.notice = Some(Notice::problem(error.to_string())),
+                }
+            }
         }
     }
 

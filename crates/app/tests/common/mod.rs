@@ -6,11 +6,12 @@ use std::cell::RefCell;
 use std::collections::VecDeque;
 use std::path::{Path, PathBuf};
 use std::rc::Rc;
+use std::sync::{Arc, Mutex};
 use std::time::{Duration, Instant};
 
 use app::app::{Beginning, Wirewright};
 use app::command::{Command, Theme};
-use app::desk::{Ask, Chooser, Chosen, SettingsFile};
+use app::desk::{Ask, Chooser, Chosen, PrintWays, SettingsFile, SpoolError};
 use app::start;
 use eframe::egui::{self, FullOutput, Key, Modifiers, Pos2, TexturesDelta, vec2};
 use egui_kittest::kittest::{By, Queryable as _};
@@ -41,6 +42,42 @@ impl Chooser for FakeChooser {
     }
 }
 
+/// Notes what comes to it in place of paper.
+pub struct FakeWays {
+    /// What the print command says.
+    pub spool: Result<String, SpoolError>,
+    pub has_viewer: bool,
+    /// What was printed or shown: the file's name and its bytes.
+    pub seen: Mutex<Vec<(&'static str, String, Vec<u8>)>>,
+}
+
+impl FakeWays {
+    pub fn new(spool: Result<&str, SpoolError>) -> Arc<Self> {
+        let spool = spool.map(ToOwned::to_owned);
+        Arc::new(Self { spool, has_viewer: true, seen: Mutex::default() })
+    }
+
+    fn note(&self, way: &'static str, pdf: &Path) {
+        let name = pdf.file_name().unwrap().to_string_lossy().into_owned();
+        self.seen.lock().unwrap().push((way, name, std::fs::read(pdf).unwrap()));
+    }
+}
+
+impl PrintWays for FakeWays {
+    fn spool(&self, pdf: &Path) -> Result<String, SpoolError> {
+        self.note("spool", pdf);
+        self.spool.clone()
+    }
+
+    fn view(&self, pdf: &Path) -> std::io::Result<()> {
+        self.note("view", pdf);
+        // Nothing reads it any more.
+        std::fs::remove_file(pdf)?;
+        std::fs::remove_dir(pdf.parent().unwrap())?;
+        if self.has_viewer { Ok(()) } else { Err(std::io::Error::other("no viewer")) }
+    }
+}
+
 /// The window under test.
 pub struct Window {
     pub harness: Harness<'static, Wirewright>,
@@ -57,6 +94,21 @@ impl Window {
 
     /// With any plan, size and look.
     pub fn with(plan: Plan, path: Option<PathBuf>, size: [f32; 2], theme: Theme) -> Self {
+        Self::printing(plan, path, size, theme, FakeWays::new(Err(SpoolError::NoCommand)))
+    }
+
+    /// With the demo, and a printer.
+    pub fn with_printer(ways: Arc<FakeWays>) -> Self {
+        Self::printing(start::demo(), None, [1280.0, 800.0], Theme::Light, ways)
+    }
+
+    fn printing(
+        plan: Plan,
+        path: Option<PathBuf>,
+        size: [f32; 2],
+        theme: Theme,
+        print_ways: Arc<FakeWays>,
+    ) -> Self {
         let folder = tempfile::tempdir().unwrap();
         let settings = folder.path().join("settings.ron");
         // The standing wave stands still, so that the window comes to rest.
@@ -68,6 +120,7 @@ impl Window {
             notice: None,
             settings: SettingsFile::at(settings),
             chooser: Box::new(chooser.clone()),
+            print_ways,
         };
         let harness = Harness::builder()
             .with_size(vec2(size[0], size[1]))
@@ -91,6 +144,19 @@ impl Window {
             std::thread::sleep(Duration::from_millis(2));
         }
         self.harness.run_steps(3);
+    }
+
+    /// Steps until something is said in the notice bar.
+    pub fn wait_for_notice(&mut self) -> String {
+        let begun = Instant::now();
+        loop {
+            self.harness.run_steps(2);
+            if let Some(notice) = self.app().desk().notice() {
+                return notice.text().to_owned();
+            }
+            assert!(begun.elapsed() < PATIENCE, "nothing is said");
+            std::thread::sleep(Duration::from_millis(2));
+        }
     }
 
     pub fn app(&self) -> &Wirewright {
@@ -239,7 +305,7 @@ impl Window {
                 std::fs::read(&self.0).map_err(|error| error.to_string())
             }
         }
-        self.harness.input_mut().dropped_files.push(std::sync::Arc::new(Dropped(path.to_owned())));
+        self.harness.input_mut().dropped_files.push(Arc::new(Dropped(path.to_owned())));
         self.harness.run_steps(3);
     }
 

@@ -111,9 +111,21 @@ fn choices(ui: &mut Ui, paper: Paper, units: Units, fit: &mut Fit, out: &mut Vec
         }
     }
     ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
-        let button = egui::Button::new("Save sheet…");
-        if ui.add(button).explain("Writes these pages as PDF (Ctrl+P); the file can be printed").clicked() {
-            out.push(Command::Desk(Desk::SaveSheet));
+        for (words, sentence, command) in [
+            (
+                "Print sheet",
+                "Sends these pages to the printer, or to the PDF viewer where there is no print command",
+                Desk::PrintSheet,
+            ),
+            (
+                "Save sheet…",
+                "Writes these pages as PDF, SVG or PNG, as the file's name ends (Ctrl+P)",
+                Desk::SaveSheet,
+            ),
+        ] {
+            if ui.button(words).explain(sentence).clicked() {
+                out.push(Command::Desk(command));
+            }
         }
     });
 }
