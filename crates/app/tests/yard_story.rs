@@ -164,6 +164,28 @@ fn the_beginning_can_be_pulled_too_and_the_end_stays() {
     assert!((middle(&yard, "wire end") - end).length() < 0.5);
 }
 
+/// Between two frames the hand presses on the wire's end and is off it already: the end comes along all the same, and
+/// the view stays.
+#[test]
+fn a_quick_hand_takes_what_it_pressed_on() {
+    let mut yard = yard(flat());
+    let (end, mast) = (middle(&yard, "wire end"), middle(&yard, "support west mast"));
+    let px = px_per_m(&yard);
+    let to = end - vec2(4.0 * px, 0.0);
+    yard.hover_at(end);
+    yard.run();
+    yard.drag_at(end);
+    yard.hover_at(end - vec2(3.0 * px, 0.0));
+    yard.step();
+    yard.hover_at(to);
+    yard.run();
+    yard.drop_at(to);
+    yard.run();
+    near(yard.state().plan.wires[0].cut_length_m, 26.0);
+    assert!((middle(&yard, "support west mast") - mast).length() < 0.5, "the view stays");
+    assert_eq!(ends_of_drag(&yard), 1);
+}
+
 #[test]
 fn ctrl_pulls_both_ends() {
     let mut yard = yard(flat());

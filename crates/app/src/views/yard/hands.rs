@@ -49,6 +49,30 @@ pub fn id(ui: &Ui, grip: Grip) -> Id {
     ui.scope_id().with(("grip", grip))
 }
 
+/// A quick hand presses on a grip and is off it before the next frame; the drag then falls to the ground below. What
+/// counts is where it pressed.
+pub fn take_late(ui: &Ui, bench: &Bench<'_>, ground: &Response, state: &mut YardState) {
+    if !ground.drag_started() || !ui.input(|i| i.pointer.primary_down()) {
+        return;
+    }
+    let Some(pressed_at) = ui.input(|i| i.pointer.press_origin()) else { return };
+    let under = |handle: &&Handle| {
+        !handle.grip.is_new_point()
+            && Rect::from_center_size(handle.at, Vec2::splat(2.0 * GRIP_PX)).contains(pressed_at)
+    };
+    if let Some(handle) = bench.layout.handles.iter().rev().find(under) {
+        ui.ctx().set_dragged_id(id(ui, handle.grip));
+        take(bench, handle, pressed_at, state);
+    }
+}
+
+/// The hand closes on a grip.
+fn take(bench: &Bench<'_>, handle: &Handle, pressed_at: Pos2, state: &mut YardState) {
+    let bend = bench.model.bend(handle.grip);
+    state.drag = Some(Drag { grip: handle.grip, hold: handle.anchor - pressed_at, bend });
+    state.chosen = Some(handle.grip);
+}
+
 /// Lets the hands work on all grips.
 pub fn work(ui: &Ui, bench: &Bench<'_>, state: &mut YardState, out: &mut Vec<Command>) {
     state.hot = None;
@@ -132,9 +156,7 @@ fn hold(
 ) {
     if response.drag_started() && ui.input(|i| i.pointer.primary_down()) {
         let taken_at = ui.input(|i| i.pointer.press_origin()).unwrap_or(handle.at);
-        let bend = bench.model.bend(handle.grip);
-        state.drag = Some(Drag { grip: handle.grip, hold: handle.anchor - taken_at, bend });
-        state.chosen = Some(handle.grip);
+        take(bench, handle, taken_at, state);
         response.request_focus();
     }
     let Some(drag) = state.drag.clone().filter(|d| d.grip == handle.grip) else { return };

@@ -53,6 +53,8 @@ pub struct YardState {
     hint: Option<String>,
     tag: Option<Rect>,
     tag_held: bool,
+    /// The hand has panned in the last frame.
+    panning: bool,
     /// The chosen grip's number is to be typed next.
     type_number: bool,
     probe: Option<Probe>,
@@ -82,6 +84,7 @@ pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut YardState, out: &m
     let layout = Layout::of(&model, view, &asking, &measure);
     let bench = Bench { model: &model, layout: &layout, snapshot };
 
+    hands::take_late(ui, &bench, &ground, state);
     hands::work(ui, &bench, state, out);
     let look = Look {
         ground: snapshot.ground,
@@ -173,13 +176,19 @@ fn steer(
         state.by_hand = true;
     }
     let middle = ui.input(|i| i.pointer.button_down(PointerButton::Middle));
-    if ground.dragged() || (middle && pointer.is_some()) {
-        let by = ui.input(|i| i.pointer.delta());
+    // In its first frame a drag may turn out to belong to a grip (`hands::take_late`); the next one makes up for it.
+    let panning = ground.dragged() && !ground.drag_started();
+    if panning || (middle && pointer.is_some()) {
+        let by = ui.input(|i| match (i.pointer.interact_pos(), i.pointer.press_origin()) {
+            (Some(now), Some(pressed)) if panning && !state.panning => now - pressed,
+            _ => i.pointer.delta(),
+        });
         if by != Vec2::ZERO {
             camera = camera.panned(by);
             state.by_hand = true;
         }
     }
+    state.panning = panning;
     if ground.has_focus() {
         camera = steer_by_keys(ui, ground, state, camera, plot);
     }
