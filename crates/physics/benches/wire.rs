@@ -77,7 +77,7 @@ fn edit(boundary: Boundary, frequencies_hz: &[f64]) -> (Vec<Complex64>, usize) {
     let model = WireModel::new(inverted_v(boundary), HIGHEST_HZ).expect("a plain inverted V");
     let fit = sweep(&model);
     let table = fit.admittances(frequencies_hz).expect("within the range");
-    let impedances = table.entry_s(0, 0).iter().map(|y| y.inv()).collect();
+    let impedances = table.entry_s(0, 0).iter().map(Complex64::inv).collect();
     let currents = BANDS_HZ
         .iter()
         .map(|&frequency_hz| {
