@@ -47,6 +47,7 @@ fn plan_strategy() -> impl Strategy<Value = Plan> {
             plan.wires[0].start_m = start_m;
             plan.wires[0].cut_length_m = cut_length_m;
             plan.feedpoint.fraction = fraction;
+            plan.loads = support::traps_and_arms().loads;
             plan
         },
     )
@@ -126,6 +127,9 @@ fn what_the_crew_measures_is_on_the_drawing_of_the_fixtures() {
                 "{}: no \"{words}\" in {said:?}",
                 station.name
             );
+        }
+        for load in &elevation.loads {
+            assert!(said.contains(&load.mark.as_str()), "{}: no {} in {said:?}", station.name, load.mark);
         }
         for fastening in &elevation.fastenings {
             let height = Units::Metres.tape(fastening.at.up_m - fastening.foot_m);

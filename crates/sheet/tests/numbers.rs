@@ -103,11 +103,14 @@ fn cut_lengths_are_on_the_sheet() {
         for units in [Units::Metres, Units::Feet] {
             let found = sheet_words(&station, &request(Paper::A4, units));
             let plan = &station.plan;
-            let fed = &plan.wires[plan.feedpoint.wire];
-            let mut lengths = vec![
-                plan.feedpoint.fraction * fed.cut_length_m,
-                (1.0 - plan.feedpoint.fraction) * fed.cut_length_m,
-            ];
+            let mut lengths = Vec::new();
+            for (index, wire) in plan.wires.iter().enumerate() {
+                let mut cuts = vec![0.0, 1.0];
+                cuts.extend((plan.feedpoint.wire == index).then_some(plan.feedpoint.fraction));
+                cuts.extend(plan.loads.iter().filter(|load| load.wire == index).map(|load| load.fraction));
+                cuts.sort_by(f64::total_cmp);
+                lengths.extend(cuts.windows(2).map(|pair| (pair[1] - pair[0]) * wire.cut_length_m));
+            }
             lengths.extend(station.report.hung.ropes.iter().map(|rope| rope.length_m));
             lengths.extend(plan.feeds.iter().flat_map(|feed| &feed.links).filter_map(|link| match link {
                 station::plan::Link::Line(piece) => Some(piece.length_m),
@@ -116,6 +119,44 @@ fn cut_lengths_are_on_the_sheet() {
             for length_m in lengths {
                 assert_all(&found, &units.tape(length_m), &format!("{} {units:?}", station.name));
             }
+        }
+    }
+}
+
+/// The row of a mark.
+fn row<'a>(rows: &'a [sheet::model::CutRow], mark: &str) -> &'a sheet::model::CutRow {
+    rows.iter().find(|row| row.mark == mark).unwrap_or_else(|| panic!("no row {mark}"))
+}
+
+#[test]
+fn every_wire_is_cut_at_its_feedpoint_and_loads() {
+    let station = support::station("traps and arms", support::traps_and_arms());
+    let request = request(Paper::A4, Units::Metres);
+    let model = sheet::model::SheetModel::new(&station.plan, &station.report, &request).unwrap();
+    let rows = &model.cut_list.rows;
+    // 40 m of wire, fed in the middle, loads at a fifth from either end; two whole arms of 10.2 m.
+    for (mark, plan, detail) in [
+        ("W1", "8.00 m", "dam tower to L1"),
+        ("W2", "12.00 m", "L1 to feedpoint"),
+        ("W3", "12.00 m", "feedpoint to L2"),
+        ("W4", "8.00 m", "L2 to weir mast"),
+        ("W5", "10.20 m", "its joint with W2 to alder, 5.50 m up"),
+        ("W6", "10.20 m", "its joint with W3 to willow, 4.50 m up"),
+    ] {
+        let row = row(rows, mark);
+        assert_eq!((row.plan.replace('\u{a0}', " ").as_str(), row.detail.as_str()), (plan, detail), "{mark}");
+    }
+    for (mark, detail) in [
+        ("L1", "7.060 MHz, 61.0 pF, Q 190; 8.00 m along main wire, between W1 and W2"),
+        ("L2", "trap 8.44 µH, Q 210 beside 60.0 pF; 32.00 m along main wire, between W3 and W4"),
+    ] {
+        let row = row(rows, mark);
+        assert_eq!((row.detail.replace('\u{a0}', " ").as_str(), row.cut.as_str()), (detail, ""), "{mark}");
+    }
+    let found = sheet_words(&station, &request);
+    for row in rows {
+        for text in [&row.mark, &row.part, &row.detail, &row.plan, &row.cut] {
+            assert_all(&found, text, &row.mark);
         }
     }
 }

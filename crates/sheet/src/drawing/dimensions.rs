@@ -2,7 +2,7 @@
 
 use station::units::Units;
 
-use super::elevation::{Elevation, Piece, Place};
+use super::elevation::{Elevation, Fastening, Piece, Place};
 use super::labels::{AROUND, Labels, along};
 use super::scale::Sight;
 use crate::fonts;
@@ -16,17 +16,11 @@ const TICK_MM: f64 = 0.9;
 const HEIGHT_OFF_MM: f64 = 7.0;
 /// From the wire to the dimension line of a piece of it, mm.
 const ARM_OFF_MM: f64 = 3.0;
-/// Shorter spans are not worth a number, m.
+/// Shorter spans and parts are not worth a number, m.
 const LEAST_SPAN_M: f64 = 0.5;
 
-/// A dimension line with its ends and its number over it.
-fn dimension(
-    from: Spot,
-    to: Spot,
-    number: &str,
-    labels: &mut Labels,
-    items: &mut Vec<Item>,
-) -> Result<(), Text> {
+/// A dimension line with its ends.
+fn dimension_line(from: Spot, to: Spot, labels: &mut Labels, items: &mut Vec<Item>) {
     items.push(Item::line(from, to, Stroke::Rule, Ink::Faint));
     let length_mm = (to.x_mm - from.x_mm).hypot(to.y_mm - from.y_mm).max(f64::MIN_POSITIVE);
     let (nx, ny) =
@@ -36,11 +30,27 @@ fn dimension(
         items.push(Item::line(a, b, Stroke::Frame, Ink::Faint));
     }
     labels.avoid(&[from, to]);
-    let candidates = along(from, to, TextStyle::Strong, number, 0.8);
+}
+
+/// The number of a dimension line, over it or under it; given back where it has no room there.
+fn number(from: Spot, to: Spot, words: &str, labels: &mut Labels) -> Result<(), Text> {
+    let candidates = along(from, to, TextStyle::Strong, words, 0.8);
     if candidates.is_empty() {
-        return Err(Text::new(0.0, 0.0, TextStyle::Strong, number));
+        return Err(Text::new(0.0, 0.0, TextStyle::Strong, words));
     }
     labels.put(candidates)
+}
+
+/// A dimension line with its ends and its number over it.
+fn dimension(
+    from: Spot,
+    to: Spot,
+    words: &str,
+    labels: &mut Labels,
+    items: &mut Vec<Item>,
+) -> Result<(), Text> {
+    dimension_line(from, to, labels, items);
+    number(from, to, words, labels)
 }
 
 /// Height of the rows of names, mm: two where three or more supports may stand close.
@@ -92,6 +102,10 @@ pub(super) fn heights(
         .zip(elevation.fastenings.last())
         .is_some_and(|(first, last)| first.at.along_m > last.at.along_m);
     for (index, fastening) in elevation.fastenings.iter().enumerate() {
+        // Two corners beside the feedpoint are one place to measure.
+        if index > 0 && is_beside(&elevation.fastenings[index - 1], fastening) {
+            continue;
+        }
         let height_m = fastening.at.up_m - fastening.foot_m;
         let side = if (index == last && last > 0) != is_leftward { 1.0 } else { -1.0 };
         let off = |spot: Spot| Spot::new(spot.x_mm + side * HEIGHT_OFF_MM, spot.y_mm);
@@ -109,6 +123,15 @@ pub(super) fn heights(
     }
 }
 
+/// Marks of the loads, beside their boxes.
+pub(super) fn loads(elevation: &Elevation, sight: &Sight, labels: &mut Labels) {
+    for load in &elevation.loads {
+        let text = Text::new(0.0, 0.0, TextStyle::Strong, &load.mark);
+        let below_first = [(0.0, 1.0), (0.0, -1.0), (0.71, 0.71), (-0.71, 0.71), (1.0, 0.0), (-1.0, 0.0)];
+        labels.put_near(sight.spot(load.at), &text, &below_first);
+    }
+}
+
 /// Lengths of the pieces of wire, each over its dimension line; the parts of a bent piece get their own numbers.
 pub(super) fn arms(
     elevation: &Elevation,
@@ -116,31 +139,59 @@ pub(super) fn arms(
     units: Units,
     (labels, items): (&mut Labels, &mut Vec<Item>),
 ) {
+    // All lines before any number: no line may cross a number that was put before it.
+    for arm in elevation.arms.iter().filter(|arm| measured_parts(arm).len() == 1) {
+        if let Some((from, to)) = measured(arm, sight) {
+            dimension_line(from, to, labels, items);
+        }
+    }
     for arm in &elevation.arms {
+        let parts = measured_parts(arm);
         let words = format!("{} {}", arm.mark, units.tape(arm.length_m()));
-        let longest = longest(arm);
-        for (index, pair) in arm.places.windows(2).enumerate() {
-            let (from, to) = (sight.spot(pair[0]), sight.spot(pair[1]));
-            if index == longest && arm.lengths_m.len() == 1 {
-                let (from, to) = lifted(from, to, ARM_OFF_MM);
-                if let Err(text) = dimension(from, to, &words, labels, items) {
-                    labels.put_near(middle(from, to), &text, &AROUND);
-                }
-                continue;
-            }
-            let part = if index == longest {
-                let text = format!("{words}, here {}", units.tape(arm.lengths_m[index]));
-                Text::new(0.0, 0.0, TextStyle::Strong, text)
-            } else {
-                Text::new(0.0, 0.0, TextStyle::Body, units.tape(arm.lengths_m[index]))
-            };
-            if along(from, to, part.style, &part.text, 1.0).is_empty()
-                || labels.put(along(from, to, part.style, &part.text, 1.0)).is_err()
+        if parts.len() == 1 {
+            if let Some((from, to)) = measured(arm, sight)
+                && let Err(text) = number(from, to, &words, labels)
             {
+                labels.put_near(middle(from, to), &text, &AROUND);
+            }
+            continue;
+        }
+        let longest = longest(arm);
+        for index in parts {
+            let length = units.tape(arm.lengths_m[index]);
+            let part = if index == longest {
+                Text::new(0.0, 0.0, TextStyle::Strong, format!("{words}, here {length}"))
+            } else {
+                Text::new(0.0, 0.0, TextStyle::Body, length)
+            };
+            let (from, to) = (sight.spot(arm.places[index]), sight.spot(arm.places[index + 1]));
+            let candidates = along(from, to, part.style, &part.text, 1.0);
+            if candidates.is_empty() || labels.put(candidates).is_err() {
                 labels.put_near(middle(from, to), &part, &AROUND);
             }
         }
     }
+}
+
+/// The straight parts that are worth a number: all but the shortest, and the longest in any case.
+fn measured_parts(arm: &Piece) -> Vec<usize> {
+    let longest = longest(arm);
+    let is_worth = |&index: &usize| index == longest || arm.lengths_m[index] >= LEAST_SPAN_M;
+    (0..arm.lengths_m.len()).filter(is_worth).collect()
+}
+
+/// Where the dimension line of a straight piece runs.
+fn measured(arm: &Piece, sight: &Sight) -> Option<(Spot, Spot)> {
+    let index = longest(arm);
+    let (from, to) = (arm.places.get(index)?, arm.places.get(index + 1)?);
+    Some(lifted(sight.spot(*from), sight.spot(*to), ARM_OFF_MM))
+}
+
+/// Whether two fastenings are so near that one height says both.
+fn is_beside(a: &Fastening, b: &Fastening) -> bool {
+    const SAME_M: f64 = 0.005;
+    let is_near = (a.at.along_m - b.at.along_m).abs() < LEAST_SPAN_M;
+    is_near && (a.at.up_m - b.at.up_m).abs() < SAME_M && (a.foot_m - b.foot_m).abs() < SAME_M
 }
 
 /// Lengths of ropes, and what the feedpoint, the line and the entrance are.
@@ -169,11 +220,7 @@ pub(super) fn names(
     }
     let (feedpoint, entrance) = (sight.spot(elevation.feedpoint), sight.spot(elevation.entrance));
     let text = format!("feedpoint, {} up", units.tape(elevation.feedpoint.up_m));
-    labels.put_near(
-        feedpoint,
-        &Text::new(0.0, 0.0, TextStyle::Body, text),
-        &[(0.71, 0.71), (-0.71, 0.71), (1.0, 0.0), (-1.0, 0.0), (0.71, -0.71), (-0.71, -0.71)],
-    );
+    labels.put_near(feedpoint, &Text::new(0.0, 0.0, TextStyle::Body, text), &AROUND);
     for line in lines {
         let text = Text::new(0.0, 0.0, TextStyle::Body, line);
         labels.put_near(middle(feedpoint, entrance), &text, &AROUND);

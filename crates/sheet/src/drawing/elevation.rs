@@ -3,7 +3,7 @@
 use station::hang::{Hung, HungWire, Vertex, WireEnd, resolve_path};
 use station::plan::{PathPoint, Plan, Point, SupportKind};
 
-use crate::model::arms;
+use crate::model::{arm_mark, arms, load_mark};
 
 /// A place in the side view, m.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -98,6 +98,17 @@ impl Piece {
     }
 }
 
+/// A load in a wire.
+#[derive(Clone, Debug, PartialEq)]
+pub struct LoadSide {
+    /// Its mark in the cut list.
+    pub mark: String,
+    /// Where it sits.
+    pub at: Place,
+    /// A place a little further along its wire: the direction of its mark.
+    pub toward: Place,
+}
+
 /// The site in side view.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Elevation {
@@ -109,6 +120,8 @@ pub struct Elevation {
     pub arms: Vec<Piece>,
     /// Ropes, R1, R2, …
     pub ropes: Vec<Piece>,
+    /// Loads, L1, L2, …
+    pub loads: Vec<LoadSide>,
     /// Ends of wires: insulators.
     pub ends: Vec<Place>,
     /// Where the wire is fed.
@@ -138,6 +151,7 @@ impl Elevation {
                 .enumerate()
                 .map(|(index, rope)| Piece::new(format!("R{}", index + 1), &rope.points, &plane))
                 .collect(),
+            loads: loads(plan, hung, &plane),
             ends: hung.wires.iter().flat_map(|wire| ends(wire, &plane)).collect(),
             feedpoint: plane.place(hung.feedpoint.at),
             entrance: plane.place(plan.site.entrance),
@@ -210,9 +224,21 @@ fn arm_pieces(plan: &Plan, hung: &Hung, plane: &Plane) -> Vec<Piece> {
             let mut points = vec![wire.point_at(arm.from_m)];
             points.extend(inner);
             points.push(wire.point_at(arm.to_m));
-            Some(Piece::new(format!("W{}", index + 1), &points, plane))
+            Some(Piece::new(arm_mark(index), &points, plane))
         })
         .collect()
+}
+
+fn loads(plan: &Plan, hung: &Hung, plane: &Plane) -> Vec<LoadSide> {
+    // Half of a load's length, about; its direction is that of the wire there.
+    const STEP_M: f64 = 0.05;
+    let side = |(index, load): (usize, &station::plan::Load)| {
+        let wire = hung.wires.get(load.wire)?;
+        let arc_m = load.fraction * wire.length_m();
+        let [at, toward] = [arc_m, arc_m + STEP_M].map(|arc_m| plane.place(wire.point_at(arc_m)));
+        Some(LoadSide { mark: load_mark(index), at, toward })
+    };
+    plan.loads.iter().enumerate().filter_map(side).collect()
 }
 
 fn ends(wire: &HungWire, plane: &Plane) -> [Place; 2] {

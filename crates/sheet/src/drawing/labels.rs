@@ -10,7 +10,7 @@ const LINE_MM: f64 = 0.3;
 /// From here on a label is tied to its place by a line, mm.
 const LEADER_FROM_MM: f64 = 4.0;
 /// How far from its place a label may stand, mm.
-const DISTANCES_MM: [f64; 7] = [1.2, 3.0, 5.0, 8.0, 12.0, 17.0, 23.0];
+const DISTANCES_MM: [f64; 8] = [1.2, 3.0, 5.0, 8.0, 12.0, 17.0, 23.0, 30.0];
 
 /// What is taken already.
 pub(super) struct Labels {
@@ -46,7 +46,7 @@ impl Labels {
         refused.map_or(Ok(()), Err)
     }
 
-    /// Puts an upright text near a spot, tied to it by a line where it has to stand off; says so in words where there
+    /// Puts a text, upright, near a spot, tied to it by a line where it has to stand off; says so in words where there
     /// is no room at all.
     pub fn put_near(&mut self, spot: Spot, text: &Text, directions: &[(f64, f64)]) {
         for distance_mm in DISTANCES_MM {
@@ -87,8 +87,8 @@ impl Labels {
     }
 }
 
-/// All eight directions, right first.
-pub(super) const AROUND: [(f64, f64); 8] = [
+/// The eight directions, right first, then those between them.
+pub(super) const AROUND: [(f64, f64); 16] = [
     (1.0, 0.0),
     (0.71, -0.71),
     (0.71, 0.71),
@@ -97,9 +97,17 @@ pub(super) const AROUND: [(f64, f64); 8] = [
     (-0.71, 0.71),
     (0.0, -1.0),
     (0.0, 1.0),
+    (0.92, 0.38),
+    (-0.92, 0.38),
+    (0.92, -0.38),
+    (-0.92, -0.38),
+    (0.38, 0.92),
+    (-0.38, 0.92),
+    (0.38, -0.92),
+    (-0.38, -0.92),
 ];
 
-/// A text beside a spot: its middle or its end nearest to the spot lies at the distance.
+/// A text beside a spot, upright: its middle or its end nearest to the spot lies at the distance.
 fn beside(spot: Spot, (x, y): (f64, f64), distance_mm: f64, text: &Text) -> Text {
     let anchor = match x {
         x if x > 0.5 => Anchor::Start,
@@ -110,7 +118,7 @@ fn beside(spot: Spot, (x, y): (f64, f64), distance_mm: f64, text: &Text) -> Text
     let half_capital_mm = crate::fonts::CAPITAL_HEIGHT * size_mm / 2.0;
     let away_mm = if anchor == Anchor::Middle { y * size_mm * 0.6 } else { 0.0 };
     let at = Spot::new(spot.x_mm + x * distance_mm, spot.y_mm + y * distance_mm + away_mm + half_capital_mm);
-    Text { at, anchor, ..text.clone() }
+    Text { at, anchor, turn_deg: 0.0, ..text.clone() }
 }
 
 /// A label along a line: over its middle, then under it, then nearer to its ends.

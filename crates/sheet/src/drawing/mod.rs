@@ -6,7 +6,7 @@ mod labels;
 mod scale;
 mod site;
 
-pub use elevation::{Elevation, Fastening, Piece, Place, Plane, SupportSide};
+pub use elevation::{Elevation, Fastening, LoadSide, Piece, Place, Plane, SupportSide};
 pub use scale::{Ratio, Sight};
 
 use station::hang::Hung;
@@ -21,6 +21,8 @@ use labels::Labels;
 const SIDE_MM: f64 = 13.0;
 /// Room over the highest support, mm.
 const OVER_MM: f64 = 6.0;
+/// The same where more than two pieces of wire crowd: their dimension lines and numbers stand above.
+const OVER_MANY_MM: f64 = 8.5;
 
 /// How large the drawing may be.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -49,12 +51,13 @@ pub fn side_view(plan: &Plan, hung: &Hung, units: Units, size: Size) -> SideView
     let (low, high) = bounds(&elevation);
     let width_mm = size.width_mm - 2.0 * SIDE_MM;
     let under_mm = site::EARTH_MM + dimensions::names_mm(&elevation) + dimensions::SPANS_MM;
-    let height_mm = (size.height_mm - OVER_MM - under_mm).max(10.0);
+    let over_mm = if elevation.arms.len() > 2 { OVER_MANY_MM } else { OVER_MM };
+    let height_mm = (size.height_mm - over_mm - under_mm).max(10.0);
     let least = ((high.along_m - low.along_m) / width_mm).max((high.up_m - low.up_m) / height_mm) * 1000.0;
     let ratio = Ratio::round(least, units);
     let drawn_mm = ratio.paper_mm(high.up_m - low.up_m);
     let left_mm = (size.width_mm - ratio.paper_mm(high.along_m - low.along_m)) / 2.0;
-    let earth_mm = OVER_MM + drawn_mm;
+    let earth_mm = over_mm + drawn_mm;
     let sight = Sight { ratio, site: low, at_mm: Spot::new(left_mm, earth_mm) };
     let scene = Scene::new(size.width_mm, earth_mm + under_mm);
     let (scene, unplaced) = paint(plan, &elevation, &sight, units, scene);
@@ -84,16 +87,23 @@ fn paint(
         let spots: Vec<Spot> = piece.places.iter().map(|&place| sight.spot(place)).collect();
         labels.avoid(&spots);
     }
+    for load in &elevation.loads {
+        let corners = site::load_outline(load, sight);
+        labels.avoid(&[corners[0], corners[2]]);
+        labels.avoid(&[corners[1], corners[3]]);
+        items.push(site::load(corners));
+    }
     labels.avoid(&[sight.spot(elevation.feedpoint), sight.spot(elevation.entrance)]);
     for sign in site::outlines(elevation, sight) {
         labels.avoid(&sign);
     }
     let below_mm = surface.iter().map(|spot| spot.y_mm).fold(0.0, f64::max) + site::EARTH_MM;
     dimensions::support_names(elevation, sight, frame, below_mm, &mut labels);
-    dimensions::entrance(elevation, sight, units, (frame, below_mm), &mut labels);
     let spans_mm = below_mm + dimensions::names_mm(elevation);
     dimensions::spans(elevation, sight, units, spans_mm, (&mut labels, items));
+    dimensions::entrance(elevation, sight, units, (frame, below_mm), &mut labels);
     dimensions::heights(elevation, sight, units, (&mut labels, items));
+    dimensions::loads(elevation, sight, &mut labels);
     dimensions::arms(elevation, sight, units, (&mut labels, items));
     dimensions::names(elevation, sight, units, &line_labels(plan, units), &mut labels);
     let (texts, unplaced) = labels.finish();

@@ -2,7 +2,7 @@
 
 use station::plan::SupportKind;
 
-use super::elevation::{Elevation, Place, SupportSide};
+use super::elevation::{Elevation, LoadSide, Place, SupportSide};
 use super::scale::Sight;
 use crate::scene::{Frame, Item, Spot};
 use crate::tokens::{Ink, Stroke};
@@ -18,6 +18,8 @@ const HALF_ENTRANCE_MM: f64 = 1.4;
 /// Most height of a tree's crown and of a roof, mm.
 const MOST_CROWN_MM: f64 = 15.0;
 const MOST_ROOF_MM: f64 = 4.5;
+/// Half of the length and of the width of a load's mark, mm.
+const HALF_LOAD_MM: (f64, f64) = (2.0, 1.1);
 /// Radius of an insulator, mm.
 const INSULATOR_MM: f64 = 0.9;
 
@@ -159,4 +161,24 @@ pub(super) fn wires(elevation: &Elevation, sight: &Sight, items: &mut Vec<Item>)
     }
     items.push(Item::disc(feedpoint, INSULATOR_MM * 1.4, Ink::Background, outline));
     items.push(Item::disc(feedpoint, INSULATOR_MM * 0.5, Ink::Wire, None));
+}
+
+/// The corners of a load's mark: a box along its wire.
+pub(super) fn load_outline(load: &LoadSide, sight: &Sight) -> [Spot; 4] {
+    let (at, toward) = (sight.spot(load.at), sight.spot(load.toward));
+    let (dx, dy) = (toward.x_mm - at.x_mm, toward.y_mm - at.y_mm);
+    let length_mm = dx.hypot(dy);
+    // A wire that runs straight at the eye has no direction here.
+    let (x, y) = if length_mm > 1e-9 { (dx / length_mm, dy / length_mm) } else { (1.0, 0.0) };
+    let corner = |along: f64, across: f64| {
+        let (along, across) = (along * HALF_LOAD_MM.0, across * HALF_LOAD_MM.1);
+        Spot::new(at.x_mm + along * x - across * y, at.y_mm + along * y + across * x)
+    };
+    [corner(-1.0, -1.0), corner(1.0, -1.0), corner(1.0, 1.0), corner(-1.0, 1.0)]
+}
+
+/// The mark of a load.
+pub(super) fn load(corners: [Spot; 4]) -> Item {
+    let outline = Some((Stroke::Frame, Ink::Wire));
+    Item::Area { points: corners.to_vec(), fill: Ink::Background, outline }
 }

@@ -1,11 +1,12 @@
 //! What to cut: wires, ropes and lines, with what knots, insulators and trimming take.
 
 use station::hang::{Hung, Rope, WireEnd};
-use station::plan::{LinePiece, Link, PathPoint, Plan, Wire};
+use station::plan::{LinePiece, Link, PathPoint, Plan};
 use station::units::Units;
 
+use super::pieces::{Arm, arm_mark, arms, place, route};
 use super::ratings::line_name;
-use super::{feed_letter, link_mark};
+use super::{feed_letter, link_mark, loads};
 use crate::fonts::printable;
 
 /// What is added to the plan's lengths. The defaults are common practice.
@@ -34,7 +35,7 @@ impl Default for Allowances {
 pub struct CutList {
     /// What all wires are made of; empty where they differ.
     pub conductor: String,
-    /// Wires first, then ropes, then lines.
+    /// Pieces of wire first, then loads, ropes and lines.
     pub rows: Vec<CutRow>,
     /// What the columns hold, and where the allowances come from.
     pub note: String,
@@ -49,13 +50,13 @@ pub struct CutRow {
     pub part: String,
     /// Of what material, from where to where.
     pub detail: String,
-    /// Its length in the plan.
+    /// Its length in the plan; empty for a load.
     pub plan: String,
     /// What its ends take.
     pub ends: String,
     /// What is left for trimming, or a halyard; empty where there is none.
     pub extra: String,
-    /// What to cut.
+    /// What to cut; empty for a load.
     pub cut: String,
 }
 
@@ -79,10 +80,14 @@ impl CutList {
         let shared = Shared { units, allowances: &allowances };
         let conductor = common_conductor(hung).map_or_else(String::new, printable);
         let mut rows = Vec::new();
-        for (index, arm) in arms(plan).into_iter().enumerate() {
+        let arms = arms(plan);
+        for (index, &arm) in arms.iter().enumerate() {
             let own = if conductor.is_empty() { hung.wires[arm.wire].conductor.name.as_str() } else { "" };
-            rows.push(arm.row(&plan.wires[arm.wire], index + 1, own, shared));
+            let comma = if own.is_empty() { "" } else { ", " };
+            let detail = format!("{own}{comma}{}", route(plan, hung, &arms, arm, units));
+            rows.push(arm_row(arm, arm_mark(index), &plan.wires[arm.wire].name, &detail, shared));
         }
+        rows.extend(loads::rows(plan, &arms, units));
         for (index, rope) in hung.ropes.iter().enumerate() {
             rows.push(rope_row(plan, rope, index + 1, shared));
         }
@@ -94,68 +99,19 @@ impl CutList {
                 }
             }
         }
-        Self { conductor, rows, note: note(units, &allowances) }
+        Self { conductor, rows, note: note(plan, units, &allowances) }
     }
 }
 
-/// A piece of wire between an end and the feedpoint, or a whole unfed wire.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Arm {
-    /// Index of the wire.
-    pub wire: usize,
-    /// Where it begins along the wire, m.
-    pub from_m: f64,
-    /// Where it ends along the wire, m.
-    pub to_m: f64,
-}
-
-impl Arm {
-    /// Length, m.
-    #[must_use]
-    pub fn length_m(self) -> f64 {
-        self.to_m - self.from_m
-    }
-}
-
-/// All pieces of wire, in the order of their marks W1, W2, …
-#[must_use]
-pub fn arms(plan: &Plan) -> Vec<Arm> {
-    // A shorter piece than this is no piece: the feedpoint sits at the wire's end.
-    const LEAST_M: f64 = 1e-6;
-    let mut out = Vec::new();
-    for (index, wire) in plan.wires.iter().enumerate() {
-        let end_m = wire.cut_length_m;
-        let cut_m = if index == plan.feedpoint.wire { plan.feedpoint.fraction * end_m } else { 0.0 };
-        let pieces = [(0.0, cut_m), (cut_m, end_m)].map(|(from_m, to_m)| Arm { wire: index, from_m, to_m });
-        out.extend(pieces.into_iter().filter(|arm| arm.length_m() > LEAST_M));
-    }
-    out
-}
-
-impl Arm {
-    fn row(self, wire: &Wire, number: usize, conductor: &str, shared: Shared<'_>) -> CutRow {
-        let Shared { units, allowances } = shared;
-        let (end, end_name) = if self.from_m > 0.0 {
-            (wire.path.last(), WireEnd::End)
-        } else {
-            (wire.path.first(), WireEnd::Beginning)
-        };
-        let is_whole = self.length_m() >= wire.cut_length_m;
-        let route = match (is_whole, wire.path.first(), wire.path.last()) {
-            (true, Some(first), Some(last)) => {
-                format!("{} to {}", place(first, WireEnd::Beginning), place(last, WireEnd::End))
-            }
-            _ => end.map_or_else(String::new, |point| format!("to {}", place(point, end_name))),
-        };
-        let lengths = Lengths {
-            plan_m: self.length_m(),
-            ends_m: 2.0 * allowances.insulator_m,
-            extra_m: (allowances.trim_share * self.length_m()).max(allowances.trim_least_m),
-        };
-        let comma = if conductor.is_empty() { "" } else { ", " };
-        let detail = format!("{conductor}{comma}{route}");
-        lengths.row(format!("W{number}"), printable(&wire.name), printable(&detail), units)
-    }
+/// The row of a piece of wire: where it goes, and what it is made of where the wires differ.
+fn arm_row(arm: Arm, mark: String, part: &str, detail: &str, shared: Shared<'_>) -> CutRow {
+    let Shared { units, allowances } = shared;
+    let lengths = Lengths {
+        plan_m: arm.length_m(),
+        ends_m: 2.0 * allowances.insulator_m,
+        extra_m: (allowances.trim_share * arm.length_m()).max(allowances.trim_least_m),
+    };
+    lengths.row(mark, printable(part), printable(detail), units)
 }
 
 /// What all wires are made of, if it is the same.
@@ -208,8 +164,8 @@ impl Lengths {
     }
 }
 
-fn note(units: Units, allowances: &Allowances) -> String {
-    format!(
+fn note(plan: &Plan, units: Units, allowances: &Allowances) -> String {
+    let allowed = format!(
         "Allowances are common practice. Ends: {} of wire through each insulator and wound back, {} of rope a knot, {} \
          of line an end. Extra: {} % of a wire, {} at least, folded back until measured and cut off last; for a rope, \
          the halyard down its support.",
@@ -218,14 +174,11 @@ fn note(units: Units, allowances: &Allowances) -> String {
         units.tape(allowances.line_end_m),
         station::units::fixed(allowances.trim_share * 100.0, 0),
         units.tape(allowances.trim_least_m),
-    )
-}
-
-/// What a path is made fast to at an end.
-fn place(point: &PathPoint, end: WireEnd) -> String {
-    match (point, end) {
-        (PathPoint::OnSupport { support, .. }, _) => support.clone(),
-        (PathPoint::Free(_), WireEnd::Beginning) => "the beginning of its path".to_owned(),
-        (PathPoint::Free(_), WireEnd::End) => "the end of its path".to_owned(),
+    );
+    if plan.loads.is_empty() {
+        return allowed;
     }
+    format!(
+        "{allowed} The place of a load counts from the beginning of its wire, where its first piece begins."
+    )
 }

@@ -5,13 +5,16 @@ mod cautions;
 mod cut_list;
 mod feeds;
 mod identity;
+mod loads;
+mod pieces;
 mod ratings;
 
 pub use bands::{BandEntry, Curve, FeedEntry};
 pub use cautions::{Caution, cautions};
-pub use cut_list::{Allowances, Arm, CutList, CutRow, arms};
+pub use cut_list::{Allowances, CutList, CutRow};
 pub use feeds::{FeedSchedule, Step, Stress};
 pub use identity::{Identity, checksum};
+pub use pieces::{Arm, Cut, arm_mark, arms, load_mark};
 
 use station::plan::Plan;
 use station::report::Report;

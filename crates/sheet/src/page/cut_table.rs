@@ -86,11 +86,14 @@ fn heads(columns: &Columns) -> Block {
 
 fn block(row: &CutRow, columns: &Columns) -> Block {
     let mut block = Block::default();
+    // Where there is nothing to cut, words take the room of the numbers.
+    let is_cut = !row.cut.is_empty();
+    let part_width = if is_cut { columns.part_width } else { columns.tick - COLUMN_GAP_MM - columns.part };
     let spans = [(TextStyle::Strong, &row.part, Ink::Text), (TextStyle::Body, &row.detail, Ink::Faint)]
-        .map(|(style, words, ink)| Span::new(style, clamp(style, words, columns.part_width, 2)).ink(ink));
+        .map(|(style, words, ink)| Span::new(style, clamp(style, words, part_width, 2)).ink(ink));
     // The first line stands in the middle of a row of one line.
     let top_mm = (ROW_MM - TextStyle::Body.leading_mm()) / 2.0;
-    let text_mm = block.spans(columns.part, top_mm, columns.part_width, &spans);
+    let text_mm = block.spans(columns.part, top_mm, part_width, &spans);
     block.height_mm = (text_mm + top_mm + PAD_MM).max(ROW_MM);
     block.text(0.0, top_mm, label(TextStyle::Strong, &row.mark));
     let [plan, ends, extra, cut] = columns.numbers;
@@ -99,8 +102,10 @@ fn block(row: &CutRow, columns: &Columns) -> Block {
             block.text(x_mm, top_mm, ending(TextStyle::Body, number));
         }
     }
-    let key_mm = (ROW_MM - TextStyle::Key.leading_mm()) / 2.0;
-    block.text(cut, key_mm, ending(TextStyle::Key, &row.cut));
+    if is_cut {
+        let key_mm = (ROW_MM - TextStyle::Key.leading_mm()) / 2.0;
+        block.text(cut, key_mm, ending(TextStyle::Key, &row.cut));
+    }
     let box_mm = (ROW_MM - TICK_MM) / 2.0;
     let tick = Frame { left_mm: columns.tick, top_mm: box_mm, width_mm: TICK_MM, height_mm: TICK_MM };
     let built = Frame {

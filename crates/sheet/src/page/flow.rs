@@ -77,6 +77,10 @@ impl<'a> Flow<'a> {
         self.bottom_mm - self.y_mm
     }
 
+    pub fn is_on_first_page(&self) -> bool {
+        self.pages.len() == 1
+    }
+
     pub fn next_page(&mut self) {
         let (width_mm, height_mm) = self.paper.size_mm();
         let mut page = Scene::new(width_mm, height_mm);

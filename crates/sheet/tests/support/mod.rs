@@ -4,7 +4,9 @@
 
 use sheet::{Date, Paper, SheetRequest};
 use station::evaluate::Evaluator;
-use station::plan::{Band, BandRange, LineChoice, Link, PathPoint, Plan, Point, Support, SupportKind};
+use station::plan::{
+    Band, BandRange, Circuit, LineChoice, Link, Load, PathPoint, Plan, Point, Support, SupportKind, Wire,
+};
 use station::report::Report;
 use station::units::Units;
 
@@ -33,6 +35,7 @@ pub fn stations() -> Vec<Station> {
         ("long list", long_list()),
         ("hanging ends", hanging_ends()),
         ("end fed", end_fed()),
+        ("traps and arms", traps_and_arms()),
         ("smallest", smallest()),
         ("far entrance", far_entrance()),
         ("strange letters", strange_letters()),
@@ -173,6 +176,50 @@ fn end_fed() -> Plan {
     plan.site.entrance = Point::new(-3.0, -1.0, 1.0);
     plan.bands.truncate(3);
     plan
+}
+
+/// Three wires joined at the feedpoint, in the fed one a trap that was measured and one of its parts.
+pub fn traps_and_arms() -> Plan {
+    let mut plan = relief_post();
+    plan.name = "Reservoir gauge".to_owned();
+    plan.bands.truncate(5);
+    plan.site.supports = vec![
+        support("dam tower", SupportKind::Building, 0.0, 12.0),
+        support("weir mast", SupportKind::Mast, 46.0, 12.0),
+        support("alder", SupportKind::Tree, 7.0, 6.0),
+        support("willow", SupportKind::Tree, 39.0, 5.0),
+    ];
+    plan.site.supports[2].foot.y_m = 9.0;
+    plan.site.supports[3].foot.y_m = -8.0;
+    let apex = |x_m: f64| PathPoint::Free(Point::new(x_m, 0.0, 12.0));
+    plan.wires[0].path = vec![on("dam tower", 12.0), apex(22.9), apex(23.1), on("weir mast", 12.0)];
+    plan.wires[0].start_m = 3.0;
+    plan.wires[0].cut_length_m = 40.0;
+    plan.feedpoint.fraction = 0.5;
+    let arm = |name: &str, x_m: f64, end: PathPoint| Wire {
+        name: name.to_owned(),
+        path: vec![apex(x_m), end],
+        start_m: 0.0,
+        cut_length_m: 10.2,
+        conductor: plan.wires[0].conductor.clone(),
+    };
+    let arms = [arm("left arm", 22.9, on("alder", 5.5)), arm("right arm", 23.1, on("willow", 4.5))];
+    plan.wires.extend(arms);
+    let coil = Circuit::Coil { inductance_h: 8.44e-6, q: Some(210.0) };
+    let capacitor = Circuit::Capacitor { capacitance_f: 6.0e-11, q: None };
+    plan.loads = vec![
+        load(
+            "7 MHz trap, measured",
+            0.2,
+            Circuit::MeasuredTrap { resonance_hz: 7.06e6, capacitance_f: 6.1e-11, q: 190.0 },
+        ),
+        load("7 MHz blocker", 0.8, Circuit::Parallel(vec![coil, capacitor])),
+    ];
+    plan
+}
+
+fn load(name: &str, fraction: f64, circuit: Circuit) -> Load {
+    Load { name: name.to_owned(), wire: 0, fraction, circuit }
 }
 
 fn smallest() -> Plan {
