@@ -134,3 +134,60 @@ pub(super) fn distance_to(q: &Axis, point_m: Vec3) -> f64 {
     let along = dot(sub(point_m, q.middle_m), q.direction).clamp(-half, half);
     distance(point_m, advance(q.middle_m, q.direction, along))
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn axis(middle_m: Vec3, direction: Vec3, length_m: f64) -> Axis {
+        let size = dot(direction, direction).sqrt();
+        Axis { middle_m, direction: direction.map(|x| x / size), length_m, radius_m: 1e-3 }
+    }
+
+    fn near(a: &Moments, b: &Moments, tolerance: f64) {
+        let apart = [a.m00 - b.m00, a.m10 - b.m10, a.m01 - b.m01, a.m11 - b.m11];
+        assert!(apart.iter().all(|x| x.abs() < tolerance * b.m00), "{a:?}\n{b:?}");
+    }
+
+    /// What makes the matrix symmetric when both triangles are computed: whichever segment is taken in closed form, the
+    /// moments agree to the quadrature's own tolerance.
+    #[test]
+    fn either_segment_may_be_the_source() {
+        let p = axis([0.0; 3], [1.0, 0.0, 0.0], 0.6);
+        let cases = [
+            // Meeting at an angle, one much shorter.
+            axis([0.3 + 0.05, 0.05, 0.0], [1.0, 1.0, 0.0], 0.02_f64.sqrt()),
+            axis([0.3, 0.35, 0.0], [0.0, 1.0, 0.0], 0.7),
+            axis([0.3 + 1e-3, 1e-3, 0.0], [1.0, 1.0, 0.0], 8e-6_f64.sqrt()),
+            // Side by side, crossing, askew.
+            axis([0.1, 0.02, 0.0], [1.0, 0.0, 0.0], 0.5),
+            axis([0.1, 0.0, 0.03], [0.2, 1.0, 0.1], 0.9),
+            axis([0.9, 0.2, 0.4], [-1.0, 1.0, 1.0], 0.8),
+        ];
+        for q in &cases {
+            near(&skew(&p, q, 1.3e-3), &skew(q, &p, 1.3e-3).exchanged(), 1e-6);
+        }
+        let q = axis([0.35, 0.0, 0.0], [-1.0, 0.0, 0.0], 0.1);
+        near(&collinear(&p, &q), &collinear(&q, &p).exchanged(), 1e-12);
+    }
+
+    #[test]
+    fn tubes_far_apart_are_softened_filaments() {
+        // Mean of b² over both tubes: 2a².
+        let p = axis([0.0; 3], [0.0, 0.0, 1.0], 0.1);
+        for (middle_m, direction) in [(0.2, 1.0), (0.2, -1.0), (-0.4, 1.0)] {
+            let q = axis([0.0, 0.0, middle_m], [0.0, 0.0, direction], 0.2);
+            near(&collinear(&p, &q), &skew(&p, &q, 2_f64.sqrt() * 1e-3), 1e-6);
+        }
+    }
+
+    #[test]
+    fn a_tube_s_own_moment_is_that_of_theory() {
+        // 2L·[ln(2L/a) − 1] + 8a/π − …: the first terms of the series for a thin tube
+        let p = axis([0.0; 3], [0.0, 0.0, 1.0], 1.0);
+        let own = collinear(&p, &p);
+        let expected = 2.0 * (2000_f64.ln() - 1.0) + 8e-3 / std::f64::consts::PI;
+        assert!((own.m00 / expected - 1.0).abs() < 1e-6, "{} for {expected}", own.m00);
+        assert!(own.m10.abs() < 1e-12 && own.m01.abs() < 1e-12);
+    }
+}
