@@ -75,11 +75,11 @@ impl Currents {
     }
 
     fn far(&self, boundary: Boundary) -> FarFieldSource {
-        FarFieldSource::new(&self.segments, &self.ends, boundary, FREQUENCY_HZ).unwrap()
+        FarFieldSource::new(&self.segments, &self.ends, boundary, FREQUENCY_HZ).expect("no soil here")
     }
 
     fn near(&self, boundary: Boundary) -> NearFieldSource {
-        NearFieldSource::new(&self.segments, &self.ends, boundary, FREQUENCY_HZ).unwrap()
+        NearFieldSource::new(&self.segments, &self.ends, boundary, FREQUENCY_HZ).expect("no soil here")
     }
 
     /// Distance of a point from the nearest end or middle of a segment; segments are short.

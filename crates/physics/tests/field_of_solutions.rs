@@ -21,8 +21,8 @@ struct Solved {
 
 fn solve(structure: Structure, frequency_hz: f64) -> Solved {
     let ports = structure.ports.len();
-    let model = WireModel::new(structure, frequency_hz).unwrap();
-    let solution = model.solve(frequency_hz).unwrap();
+    let model = WireModel::new(structure, frequency_hz).expect("a sound structure");
+    let solution = model.solve(frequency_hz).expect("within the mesh");
     // ½·|V|²·Re Y = 1 W
     let volt = (2.0 / solution.port_admittance_s[(0, 0)].re).sqrt();
     let mut volts = vec![Complex64::ZERO; ports];
@@ -40,7 +40,7 @@ fn copper(vertices_m: Vec<[f64; 3]>, radius_m: f64) -> WireShape {
 }
 
 fn number(value: &Value) -> f64 {
-    value.as_f64().unwrap()
+    value.as_f64().expect("the layout of the case file")
 }
 
 fn vector(value: &Value) -> [f64; 3] {
@@ -53,25 +53,31 @@ fn complex_vector(value: &Value) -> [Complex64; 3] {
 
 /// The structure of a case; `None` over soil.
 fn structure(case: &Value) -> Option<Structure> {
-    let boundary = match case["earth"]["kind"].as_str().unwrap() {
+    let boundary = match case["earth"]["kind"].as_str().expect("the layout of the case file") {
         "none" => Boundary::FreeSpace,
         "mirror" => Boundary::Mirror,
         _ => return None,
     };
     let wires: Vec<WireShape> = case["wires"]
         .as_array()
-        .unwrap()
+        .expect("the layout of the case file")
         .iter()
         .map(|wire| {
             copper(
-                wire["vertices_m"].as_array().unwrap().iter().map(vector).collect(),
+                wire["vertices_m"]
+                    .as_array()
+                    .expect("the layout of the case file")
+                    .iter()
+                    .map(vector)
+                    .collect(),
                 number(&wire["radius_m"]),
             )
         })
         .collect();
-    assert!(case["loads"].as_array().unwrap().is_empty());
+    assert!(case["loads"].as_array().expect("the layout of the case file").is_empty());
     let feed = &case["feed"];
-    let wire = usize::try_from(feed["wire"].as_u64().unwrap()).unwrap();
+    let wire = usize::try_from(feed["wire"].as_u64().expect("the layout of the case file"))
+        .expect("the layout of the case file");
     let length_m: f64 = wires[wire].vertices_m.windows(2).map(|pair| distance(pair[0], pair[1])).sum();
     let arc_m = number(&feed["arc_fraction"]) * length_m;
     let ports = vec![PortPlace { wire, arc_m, gap_m: number(&feed["gap_m"]) }];

@@ -12,10 +12,10 @@ use proptest::test_runner::TestRunner;
 
 /// Runs a sweep to its end.
 fn sweep(range: &SweepRange, solve: impl Fn(f64) -> Sample) -> Fit {
-    let mut sweep = Sweep::new(range).unwrap();
+    let mut sweep = Sweep::new(range).expect("a sound range");
     while !sweep.wanted_hz().is_empty() {
         let samples: Vec<Sample> = sweep.wanted_hz().into_iter().map(&solve).collect();
-        sweep.give(samples).unwrap();
+        sweep.give(samples).expect("wanted samples");
     }
     sweep.into_fit()
 }
@@ -27,12 +27,12 @@ fn dense(range: &SweepRange, count: usize) -> impl Iterator<Item = f64> {
 
 /// Largest errors of admittances and currents at the given frequencies, as the fit defines them.
 fn true_error(fit: &Fit, solve: impl Fn(f64) -> Sample, frequencies_hz: &[f64]) -> f64 {
-    let table = fit.admittances(frequencies_hz).unwrap();
+    let table = fit.admittances(frequencies_hz).expect("within the range");
     let mut worst = 0.0_f64;
     for (index, &frequency_hz) in frequencies_hz.iter().enumerate() {
         let truth = solve(frequency_hz);
         let y = table.matrix_s(index);
-        let found = fit.sample(frequency_hz).unwrap();
+        let found = fit.sample(frequency_hz).expect("within the range");
         // Where numerator and denominator nearly vanish together the two orders of summation differ in more digits.
         let apart = (&found.admittance_s - &y).norm() / y.norm();
         assert!(apart < 1e-6, "the two ways to ask differ by {apart:e}");

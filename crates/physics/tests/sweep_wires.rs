@@ -40,22 +40,23 @@ fn largest(matrix: &DMatrix<Complex64>) -> f64 {
 /// error of any admittance, worst error of any current against the largest of its drive).
 fn compare(structure: Structure, highest_hz: f64, tolerance: f64, count: usize) -> (usize, f64, f64, f64) {
     let half_waves = 2.0 * length_m(&structure) * highest_hz / SPEED_OF_LIGHT_M_PER_S;
-    let model = WireModel::new(structure, highest_hz).unwrap();
+    let model = WireModel::new(structure, highest_hz).expect("a sound structure");
     let range = SweepRange { lowest_hz: 1.8e6, highest_hz, half_waves, tolerance };
-    let mut sweep = Sweep::new(&range).unwrap();
+    let mut sweep = Sweep::new(&range).expect("a sound range");
     while !sweep.wanted_hz().is_empty() {
         let samples: Vec<Sample> =
-            sweep.wanted_hz().into_iter().map(|f| model.solve(f).unwrap().into()).collect();
-        sweep.give(samples).unwrap();
+            sweep.wanted_hz().into_iter().map(|f| model.solve(f).expect("within the mesh").into()).collect();
+        sweep.give(samples).expect("wanted samples");
     }
     let fit = sweep.into_fit();
     let step_hz = (highest_hz - range.lowest_hz) / (count as f64 - 1.0);
     let frequencies_hz: Vec<f64> =
         (0..count).map(|index| (range.lowest_hz + step_hz * index as f64).min(highest_hz)).collect();
-    let table = fit.admittances(&frequencies_hz).unwrap();
+    let table = fit.admittances(&frequencies_hz).expect("within the range");
     let (mut worst_y, mut worst_i) = (0.0_f64, 0.0_f64);
     for (index, &frequency_hz) in frequencies_hz.iter().enumerate() {
-        let Solution { port_admittance_s, coefficients_a_per_v, .. } = model.solve(frequency_hz).unwrap();
+        let Solution { port_admittance_s, coefficients_a_per_v, .. } =
+            model.solve(frequency_hz).expect("within the mesh");
         let apart = table.matrix_s(index) - &port_admittance_s;
         for row in 0..apart.nrows() {
             for column in 0..apart.ncols() {
@@ -63,7 +64,8 @@ fn compare(structure: Structure, highest_hz: f64, tolerance: f64, count: usize) 
                 worst_y = worst_y.max(apart[(row, column)].norm() / (own(row) * own(column)).sqrt());
             }
         }
-        let apart = fit.sample(frequency_hz).unwrap().currents_a_per_v - &coefficients_a_per_v;
+        let apart =
+            fit.sample(frequency_hz).expect("within the range").currents_a_per_v - &coefficients_a_per_v;
         worst_i = worst_i.max(largest(&apart) / largest(&coefficients_a_per_v));
     }
     (fit.solutions().iter().sum(), fit.error(), worst_y, worst_i)

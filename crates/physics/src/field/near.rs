@@ -36,6 +36,8 @@ struct Filament {
     length_m: f64,
     radius_m: f64,
     current: Bowed,
+    /// As if it were not bowed: seen from a distance.
+    whole: Sinusoid,
     /// −1 for an image, whose current runs against the mirrored direction.
     sign: f64,
 }
@@ -53,7 +55,8 @@ impl NearFieldSource {
     ) -> Option<Self> {
         let k = wave_number_rad_per_m(frequency_hz);
         let currents = bowed(segments, currents, boundary, k);
-        let wires = segments.iter().zip(currents).map(|(segment, current)| Filament::new(segment, current));
+        let wires =
+            segments.iter().zip(currents).map(|(segment, current)| Filament::new(segment, current, k));
         let filaments = match boundary {
             Boundary::Soil { .. } => return None,
             Boundary::FreeSpace => wires.collect(),
@@ -85,13 +88,15 @@ impl NearFieldSource {
 const NEAR: f64 = 1.25;
 
 impl Filament {
-    fn new(segment: &Segment, current: Bowed) -> Self {
+    fn new(segment: &Segment, current: Bowed, k: f64) -> Self {
+        let length_m = segment.length_m();
         Self {
             from_m: segment.from_m,
             direction: segment.direction(),
-            length_m: segment.length_m(),
+            length_m,
             radius_m: segment.radius_m,
             current,
+            whole: Sinusoid::part(&current, [0.0, length_m], k),
             sign: 1.0,
         }
     }
@@ -107,19 +112,20 @@ impl Filament {
         let along_m = dot(from_start, self.direction);
         let across: Vec3 = std::array::from_fn(|axis| from_start[axis] - along_m * self.direction[axis]);
         let point = Cylindrical { along_m, across, off_axis_m: length(across) };
-        self.add_part(k, &point, [0.0, self.length_m], field);
+        if self.length_m > NEAR * point.distance_m([0.0, self.length_m], self.radius_m) {
+            self.add_part(k, &point, [0.0, self.length_m], field);
+        } else {
+            self.add_sinusoid(k, &point, &self.whole, field);
+        }
     }
 
     fn add_part(&self, k: f64, point: &Cylindrical, [from_m, to_m]: [f64; 2], field: &mut NearField) {
-        let length_m = to_m - from_m;
-        let beyond_m = (from_m - point.along_m).max(point.along_m - to_m).max(0.0);
-        let distance_m = beyond_m.hypot(point.off_axis_m).max(self.radius_m);
-        if length_m > NEAR * distance_m {
+        if to_m - from_m > NEAR * point.distance_m([from_m, to_m], self.radius_m) {
             let middle_m = 0.5 * (from_m + to_m);
             self.add_part(k, point, [from_m, middle_m], field);
             self.add_part(k, point, [middle_m, to_m], field);
         } else {
-            self.add_sinusoid(k, point, [from_m, to_m], field);
+            self.add_sinusoid(k, point, &Sinusoid::part(&self.current, [from_m, to_m], k), field);
         }
     }
 
@@ -132,17 +138,16 @@ impl Filament {
     ///
     /// From the vector potential of the sinusoid by partial integration, and Maxwell's equations for the rest
     /// (Schelkunoff & Friis, "Antennas", 1952, have the same for a standing wave, from memory).
-    fn add_sinusoid(&self, k: f64, point: &Cylindrical, [from_m, to_m]: [f64; 2], field: &mut NearField) {
-        let ends = self.current.part(from_m, to_m);
-        let slope_a_per_m = slopes(&ends, k, to_m - from_m);
-        let beside = (from_m - self.radius_m..=to_m + self.radius_m).contains(&point.along_m);
+    fn add_sinusoid(&self, k: f64, point: &Cylindrical, part: &Sinusoid, field: &mut NearField) {
+        let [start, end] = &part.ends;
+        let beside = (start.along_m - self.radius_m..=end.along_m + self.radius_m).contains(&point.along_m);
         let rho = if beside { point.off_axis_m.max(self.radius_m) } else { point.off_axis_m };
         let (mut axial, mut radial, mut round) = (Complex64::ZERO, Complex64::ZERO, Complex64::ZERO);
         let j = Complex64::i();
-        let starts = (from_m, ends.from_a, slope_a_per_m[0], -self.sign);
-        for (end_m, current, slope, sign) in [starts, (to_m, ends.to_a, slope_a_per_m[1], self.sign)] {
-            let zeta = point.along_m - end_m;
-            let r = rho.hypot(zeta);
+        for (at, sign) in [(start, -self.sign), (end, self.sign)] {
+            let End { along_m, current_a: current, slope_a_per_m: slope } = *at;
+            let zeta = point.along_m - along_m;
+            let r = (rho * rho + zeta * zeta).sqrt();
             let wave = Complex64::cis(-k * r) * sign;
             let (over_r, cosine) = (r.recip(), zeta / r);
             axial += (current * cosine * over_r * Complex64::new(over_r, k) - slope * over_r) * wave;
@@ -169,4 +174,39 @@ struct Cylindrical {
     across: Vec3,
     /// Its length, m.
     off_axis_m: f64,
+}
+
+impl Cylindrical {
+    /// Distance from a part of the axis, at least the radius, m.
+    fn distance_m(&self, [from_m, to_m]: [f64; 2], radius_m: f64) -> f64 {
+        let beyond_m = (from_m - self.along_m).max(self.along_m - to_m).max(0.0);
+        (beyond_m * beyond_m + self.off_axis_m * self.off_axis_m).sqrt().max(radius_m)
+    }
+}
+
+/// A part of a filament with a plain sinusoid on it.
+#[derive(Clone, Copy, Debug)]
+struct Sinusoid {
+    ends: [End; 2],
+}
+
+#[derive(Clone, Copy, Debug)]
+struct End {
+    /// From the beginning of the filament, m.
+    along_m: f64,
+    current_a: Complex64,
+    slope_a_per_m: Complex64,
+}
+
+impl Sinusoid {
+    fn part(current: &Bowed, [from_m, to_m]: [f64; 2], k: f64) -> Self {
+        let ends = current.part(from_m, to_m);
+        let [from_slope, to_slope] = slopes(&ends, k, to_m - from_m);
+        Self {
+            ends: [
+                End { along_m: from_m, current_a: ends.from_a, slope_a_per_m: from_slope },
+                End { along_m: to_m, current_a: ends.to_a, slope_a_per_m: to_slope },
+            ],
+        }
+    }
 }

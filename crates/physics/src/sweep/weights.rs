@@ -17,7 +17,7 @@ pub(super) struct Samples<'a> {
 pub(super) enum Witnesses {
     /// The interpolant that answers.
     First,
-    /// Another one with one sample less, to compare with.
+    /// Another one, to compare with.
     Second,
 }
 
