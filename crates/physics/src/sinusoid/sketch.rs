@@ -39,8 +39,8 @@ const SHORTEST_ARM_WAVELENGTHS: f64 = 0.002;
 /// The impedance is Schelkunoff's for a cylindrical wire; a wire fed off its centre is the mean of two centre-fed
 /// wires whose half lengths are its arms (each arm works against a copy of itself, so the pull of the arms on each
 /// other is that of equal arms). Loss and image enter as resistances at the current loop. On an insulated wire the
-/// current's phase follows the velocity factor, K rises by it, and radiation falls with its square (the moment of a
-/// wire of the same phase).
+/// current's phase follows the velocity factor, K falls with it (the cover raises the capacitance), and radiation falls
+/// with its square (the moment of a wire of the same phase).
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Sketch {
     wire: SketchWire,
@@ -89,9 +89,9 @@ impl Sketch {
         if wire.radius_m > largest_radius_m {
             return Err(SketchError::TooThick { radius_m: wire.radius_m, arm_m, largest_radius_m });
         }
-        // √(L/C) with L raised by 1/VF².
+        // √(L/C) with C raised by 1/VF².
         let characteristic_ohm = [wire.arm_a_m, wire.arm_b_m]
-            .map(|arm_m| mean_characteristic_impedance_ohm(arm_m, wire.radius_m) / wire.velocity_factor);
+            .map(|arm_m| wire.velocity_factor * mean_characteristic_impedance_ohm(arm_m, wire.radius_m));
         Ok(Self { wire, characteristic_ohm })
     }
 
