@@ -53,14 +53,23 @@ fn dimension(
     number(from, to, words, labels)
 }
 
-/// Height of the rows of names, mm: two where three or more supports may stand close.
+/// Rows of names: two where three or more supports may stand close.
+fn name_rows(elevation: &Elevation) -> u32 {
+    if elevation.supports.len() > 2 { 2 } else { 1 }
+}
+
+/// Height of the rows of names, mm.
 pub(super) fn names_mm(elevation: &Elevation) -> f64 {
-    let rows = if elevation.supports.len() > 2 { 2.0 } else { 1.0 };
-    rows * TextStyle::Body.leading_mm()
+    TextStyle::Body.leading_mm() + f64::from(name_rows(elevation) - 1) * name_pitch_mm()
+}
+
+/// From one row of names to the next, mm: far enough that labels count as clear of each other.
+fn name_pitch_mm() -> f64 {
+    TextStyle::Body.leading_mm() + 1.0
 }
 
 /// Height of the row of spans, mm.
-pub(super) const SPANS_MM: f64 = 5.4 + TICK_MM + 0.3;
+pub(super) const SPANS_MM: f64 = 5.8 + TICK_MM + 0.3;
 
 /// Places along the plane where the path is made fast, from left to right.
 fn stations(elevation: &Elevation) -> Vec<f64> {
@@ -255,7 +264,7 @@ pub(super) fn entrance(
 ) {
     let at = sight.spot(elevation.entrance);
     let text = Text::new(0.0, 0.0, TextStyle::Body, entrance_words(elevation, units));
-    if let Err(text) = labels.put(below(at.x_mm, &text, (frame, top_mm), 1)) {
+    if let Err(text) = labels.put(below(at.x_mm, &text, (frame, top_mm), name_rows(elevation))) {
         labels.put_near(at, &text, &AROUND);
     }
 }
@@ -269,7 +278,7 @@ fn below(x_mm: f64, text: &Text, (frame, top_mm): (Frame, f64), rows: u32) -> Ve
     (0..rows)
         .flat_map(|row| shifts.map(|shift_mm| (row, shift_mm)))
         .map(|(row, shift_mm)| {
-            let y_mm = top_mm + TextStyle::Body.leading_mm() * (f64::from(row) + 0.85);
+            let y_mm = top_mm + TextStyle::Body.leading_mm() * 0.85 + f64::from(row) * name_pitch_mm();
             Text { at: Spot::new(middle_mm + shift_mm, y_mm), anchor: Anchor::Middle, ..text.clone() }
         })
         .collect()
