@@ -59,6 +59,8 @@ pub(crate) fn section(plan: &Plan, hung: &Hung, units: Units, size: Size) -> Sec
         // A lower drawing leaves room to say it below.
         let lines_mm = 2.0 * TextStyle::Note.leading_mm();
         view = side_view(plan, hung, units, Size { height_mm: size.height_mm - lines_mm, ..size });
+    }
+    if !view.unplaced.is_empty() {
         let words = format!("No room in the drawing for: {}.", view.unplaced.join("; "));
         note.height_mm = note.paragraph(0.0, 0.0, size.width_mm, Span::new(TextStyle::Note, words));
     }
