@@ -4,7 +4,9 @@ use std::hint::black_box;
 
 use criterion::{Criterion, criterion_group, criterion_main};
 use num_complex::Complex64;
-use physics::field::{Direction, FarFieldSource, NearFieldSource, radiated_power_w, strongest_direction};
+use physics::field::{
+    Direction, FarFieldSource, NearFieldSource, radiated_power_w, smoothed, strongest_direction,
+};
 use physics::wire::{
     Boundary, Conductor, EndCurrents, Material, Metal, PortPlace, Structure, WireModel, WireShape,
 };
@@ -50,7 +52,9 @@ fn fields(criterion: &mut Criterion) {
     criterion.bench_function("strongest direction", |bencher| {
         bencher.iter(|| strongest_direction(black_box(&source)));
     });
-    let near = NearFieldSource::new(model.segments(), &currents, BOUNDARY, FREQUENCY_HZ).expect("a mirror");
+    let finer = smoothed(model.segments(), &currents, BOUNDARY, FREQUENCY_HZ, 0.25);
+    let near =
+        NearFieldSource::new(&finer.segments, &finer.currents, BOUNDARY, FREQUENCY_HZ).expect("a mirror");
     criterion.bench_function("near field, map of 100 by 60 points", |bencher| {
         bencher.iter(|| {
             let points = (0..100)

@@ -3,7 +3,7 @@
 //! Everything follows from the currents at the ends of segments ([`crate::wire::EndCurrents`]); the sinusoid between
 //! them has closed fields, so nothing near a wire is numerical quadrature.
 //!
-//! * [`NearFieldSource`]: E and H at any point.
+//! * [`NearFieldSource`]: E and H at any point; [`smoothed`] currents for points close to a wire.
 //! * [`FarFieldSource`]: far field in any direction, thousands of them at once.
 //! * [`radiated_power_w`]: the power toward the sky by integration over the sphere, which is found without asking the
 //!   feedpoint; [`strongest_direction`]: where most of it goes.
@@ -27,6 +27,7 @@ pub use near::{NearField, NearFieldSource};
 pub use peak::strongest_direction;
 pub use polarisation::{Polarisation, Sense};
 pub use potential::{PotentialSource, SurfacePoint};
+pub use smooth::{SmoothCurrents, smoothed};
 pub use source::FarFieldSource;
 pub use sphere::radiated_power_w;
 pub use surface::surface_field_v_per_m;

@@ -5,7 +5,6 @@ use std::f64::consts::PI;
 use num_complex::Complex64;
 
 use super::run::slopes;
-use super::smooth::{Bowed, bowed};
 use super::space::{Vec3, add, cross, dot, length, mirrored, sub};
 use crate::constants::{VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
 use crate::wire::{Boundary, EndCurrents, Segment};
@@ -24,22 +23,20 @@ pub struct NearField {
 pub struct NearFieldSource {
     k: f64,
     boundary: Boundary,
-    /// Segments and their images.
+    /// Of all segments and their images.
     filaments: Vec<Filament>,
 }
 
-/// A segment or its image.
+/// A segment or its image: a sinusoid of current on an axis.
 #[derive(Clone, Copy, Debug)]
 struct Filament {
     from_m: Vec3,
     direction: Vec3,
     length_m: f64,
     radius_m: f64,
-    current: Bowed,
-    /// As if it were not bowed: seen from a distance.
-    whole: Sinusoid,
-    /// −1 for an image, whose current runs against the mirrored direction.
-    sign: f64,
+    /// At its beginning and its end.
+    current_a: [Complex64; 2],
+    slope_a_per_m: [Complex64; 2],
 }
 
 impl NearFieldSource {
@@ -54,9 +51,7 @@ impl NearFieldSource {
         frequency_hz: f64,
     ) -> Option<Self> {
         let k = wave_number_rad_per_m(frequency_hz);
-        let currents = bowed(segments, currents, boundary, k);
-        let wires =
-            segments.iter().zip(currents).map(|(segment, current)| Filament::new(segment, current, k));
+        let wires = segments.iter().zip(currents).map(|(segment, ends)| Filament::new(segment, ends, k));
         let filaments = match boundary {
             Boundary::Soil { .. } => return None,
             Boundary::FreeSpace => wires.collect(),
@@ -67,10 +62,12 @@ impl NearFieldSource {
 
     /// The field at a point, m; none below a mirror.
     ///
-    /// In closed form from the currents on the axes and their charges, which go smoothly from segment to segment close
-    /// by. Where the currents of the segments that meet at a point do not sum to zero, their difference is taken as a
-    /// point charge there. Right outside the wires; nearer than a few radii the true current's crowding toward other
-    /// conductors matters. A point inside a wire gets the field at its surface, so that the answer is always finite.
+    /// In closed form from the currents on the axes and their charges; where the currents of the segments that meet at
+    /// a point do not sum to zero, their difference is taken as a point charge there. Right outside the wires; nearer
+    /// than a few radii the true current's crowding toward other conductors matters. A point inside a wire gets the
+    /// field at its surface, so that the answer is always finite.
+    ///
+    /// Closer to a wire than its segments are long, make the source of [`super::smoothed`] currents.
     #[must_use]
     pub fn field(&self, at_m: [f64; 3]) -> NearField {
         let mut field = NearField::default();
@@ -84,52 +81,32 @@ impl NearFieldSource {
     }
 }
 
-/// A part longer than this many times its distance is divided: seen from closer, the bow of its current matters.
-const NEAR: f64 = 1.25;
-
 impl Filament {
-    fn new(segment: &Segment, current: Bowed, k: f64) -> Self {
+    fn new(segment: &Segment, ends: &EndCurrents, k: f64) -> Self {
         let length_m = segment.length_m();
         Self {
             from_m: segment.from_m,
             direction: segment.direction(),
             length_m,
             radius_m: segment.radius_m,
-            current,
-            whole: Sinusoid::part(&current, [0.0, length_m], k),
-            sign: 1.0,
+            current_a: [ends.from_a, ends.to_a],
+            slope_a_per_m: slopes(ends, k, length_m),
         }
     }
 
     /// In a mirror the current's level component is turned round, its vertical one is not: the mirrored place with the
     /// current against the mirrored direction.
     fn image(&self) -> Self {
-        Self { from_m: mirrored(self.from_m), direction: mirrored(self.direction), sign: -1.0, ..*self }
-    }
-
-    fn add_field(&self, k: f64, at_m: Vec3, field: &mut NearField) {
-        let from_start = sub(at_m, self.from_m);
-        let along_m = dot(from_start, self.direction);
-        let across: Vec3 = std::array::from_fn(|axis| from_start[axis] - along_m * self.direction[axis]);
-        let point = Cylindrical { along_m, across, off_axis_m: length(across) };
-        if self.length_m > NEAR * point.distance_m([0.0, self.length_m], self.radius_m) {
-            self.add_part(k, &point, [0.0, self.length_m], field);
-        } else {
-            self.add_sinusoid(k, &point, &self.whole, field);
+        Self {
+            from_m: mirrored(self.from_m),
+            direction: mirrored(self.direction),
+            current_a: self.current_a.map(|current| -current),
+            slope_a_per_m: self.slope_a_per_m.map(|slope| -slope),
+            ..*self
         }
     }
 
-    fn add_part(&self, k: f64, point: &Cylindrical, [from_m, to_m]: [f64; 2], field: &mut NearField) {
-        if to_m - from_m > NEAR * point.distance_m([from_m, to_m], self.radius_m) {
-            let middle_m = 0.5 * (from_m + to_m);
-            self.add_part(k, point, [from_m, middle_m], field);
-            self.add_part(k, point, [middle_m, to_m], field);
-        } else {
-            self.add_sinusoid(k, point, &Sinusoid::part(&self.current, [from_m, to_m], k), field);
-        }
-    }
-
-    /// A part of the filament is the z axis of cylindrical coordinates; per end, with ζ = z − z', R = √(ρ² + ζ²), beginning
+    /// The filament is the z axis of cylindrical coordinates; per end, with ζ = z − z', R = √(ρ² + ζ²), beginning
     /// subtracted from end:
     ///
     /// 4π·E_z = η/jk·[I·ζ·(1 + jkR)/R³ − I'/R]·e^(−jkR)
@@ -138,17 +115,19 @@ impl Filament {
     ///
     /// From the vector potential of the sinusoid by partial integration, and Maxwell's equations for the rest
     /// (Schelkunoff & Friis, "Antennas", 1952, have the same for a standing wave, from memory).
-    fn add_sinusoid(&self, k: f64, point: &Cylindrical, part: &Sinusoid, field: &mut NearField) {
-        let [start, end] = &part.ends;
-        let beside = (start.along_m - self.radius_m..=end.along_m + self.radius_m).contains(&point.along_m);
-        let rho = if beside { point.off_axis_m.max(self.radius_m) } else { point.off_axis_m };
+    fn add_field(&self, k: f64, at_m: Vec3, field: &mut NearField) {
+        let from_start = sub(at_m, self.from_m);
+        let along_m = dot(from_start, self.direction);
+        let across: Vec3 = std::array::from_fn(|axis| from_start[axis] - along_m * self.direction[axis]);
+        let off_axis_m = length(across);
+        let beside = (-self.radius_m..=self.length_m + self.radius_m).contains(&along_m);
+        let rho = if beside { off_axis_m.max(self.radius_m) } else { off_axis_m };
         let (mut axial, mut radial, mut round) = (Complex64::ZERO, Complex64::ZERO, Complex64::ZERO);
         let j = Complex64::i();
-        for (at, sign) in [(start, -self.sign), (end, self.sign)] {
-            let End { along_m, current_a: current, slope_a_per_m: slope } = *at;
-            let zeta = point.along_m - along_m;
+        for (end, zeta) in [along_m, along_m - self.length_m].into_iter().enumerate() {
+            let (current, slope) = (self.current_a[end], self.slope_a_per_m[end]);
             let r = (rho * rho + zeta * zeta).sqrt();
-            let wave = Complex64::cis(-k * r) * sign;
+            let wave = Complex64::cis(-k * r) * if end == 0 { -1.0 } else { 1.0 };
             let (over_r, cosine) = (r.recip(), zeta / r);
             axial += (current * cosine * over_r * Complex64::new(over_r, k) - slope * over_r) * wave;
             let spread = Complex64::new(-rho * rho * over_r.powi(3), k * cosine * cosine);
@@ -158,55 +137,10 @@ impl Filament {
         let scale = VACUUM_IMPEDANCE_OHM / (4.0 * PI * k);
         add(&mut field.e_v_per_m, -j * scale * axial, self.direction);
         // On the axis itself there is no direction across it, and no field there.
-        if point.off_axis_m > 0.0 {
-            let outward = point.across.map(|component| component / point.off_axis_m);
+        if off_axis_m > 0.0 {
+            let outward = across.map(|component| component / off_axis_m);
             add(&mut field.e_v_per_m, j * scale * radial / rho, outward);
             add(&mut field.h_a_per_m, round / (4.0 * PI * rho), cross(self.direction, outward));
-        }
-    }
-}
-
-/// A point as a filament sees it.
-struct Cylindrical {
-    /// Along the axis from the filament's beginning, m.
-    along_m: f64,
-    /// From the axis to the point.
-    across: Vec3,
-    /// Its length, m.
-    off_axis_m: f64,
-}
-
-impl Cylindrical {
-    /// Distance from a part of the axis, at least the radius, m.
-    fn distance_m(&self, [from_m, to_m]: [f64; 2], radius_m: f64) -> f64 {
-        let beyond_m = (from_m - self.along_m).max(self.along_m - to_m).max(0.0);
-        (beyond_m * beyond_m + self.off_axis_m * self.off_axis_m).sqrt().max(radius_m)
-    }
-}
-
-/// A part of a filament with a plain sinusoid on it.
-#[derive(Clone, Copy, Debug)]
-struct Sinusoid {
-    ends: [End; 2],
-}
-
-#[derive(Clone, Copy, Debug)]
-struct End {
-    /// From the beginning of the filament, m.
-    along_m: f64,
-    current_a: Complex64,
-    slope_a_per_m: Complex64,
-}
-
-impl Sinusoid {
-    fn part(current: &Bowed, [from_m, to_m]: [f64; 2], k: f64) -> Self {
-        let ends = current.part(from_m, to_m);
-        let [from_slope, to_slope] = slopes(&ends, k, to_m - from_m);
-        Self {
-            ends: [
-                End { along_m: from_m, current_a: ends.from_a, slope_a_per_m: from_slope },
-                End { along_m: to_m, current_a: ends.to_a, slope_a_per_m: to_slope },
-            ],
         }
     }
 }
