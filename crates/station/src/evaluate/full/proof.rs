@@ -1,6 +1,6 @@
 //! What stands behind an answer of the full model: where the watts go, how far a finer mesh would move it, and the gain.
 
-use physics::field::{Direction, FarFieldSource, radiated_power_w};
+use physics::field::{Direction, FarFieldSource, radiated_power_w, strongest_direction};
 use physics::wire::mesh_error;
 
 use super::Solved;
@@ -68,7 +68,7 @@ impl Solved {
         let fed = self.fed(&self.answers.sample(frequency_hz)?, &structure::loads(plan))?;
         Ok(self.far_field(&fed).map(|source| {
             let gain = |direction: Direction| source.field(direction).gain_dbi(1.0);
-            let peak = peak(&gain);
+            let (peak, _) = strongest_direction(&source);
             Gains {
                 samples_dbi: directions.iter().map(|&direction| gain(direction)).collect(),
                 peak_dbi: gain(peak),
@@ -81,38 +81,4 @@ impl Solved {
         let boundary = self.model.structure().boundary;
         FarFieldSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz)
     }
-}
-
-/// Coarse grid of the search for the peak, degrees: lobes of a wire ten wavelengths long are wider.
-const GRID_DEG: i32 = 3;
-/// The search ends at this step, degrees.
-const FINEST_DEG: f64 = 0.02;
-
-/// The direction of the highest gain: the best of a grid, then climbed in ever smaller steps.
-fn peak(gain: &impl Fn(Direction) -> f64) -> Direction {
-    let grid = (-90 / GRID_DEG..=90 / GRID_DEG).flat_map(|elevation| {
-        (0..360 / GRID_DEG).map(move |azimuth| Direction {
-            elevation_deg: f64::from(elevation * GRID_DEG),
-            azimuth_deg: f64::from(azimuth * GRID_DEG),
-        })
-    });
-    let scored = grid.map(|direction| (gain(direction), direction));
-    let start = Direction { elevation_deg: 90.0, azimuth_deg: 0.0 };
-    let (mut best, mut at) = scored.fold((gain(start), start), |a, b| if b.0 > a.0 { b } else { a });
-    let mut step = 0.5 * f64::from(GRID_DEG);
-    while step > FINEST_DEG {
-        let around = [(step, 0.0), (-step, 0.0), (0.0, step), (0.0, -step)].map(|(up, round)| Direction {
-            elevation_deg: (at.elevation_deg + up).clamp(-90.0, 90.0),
-            azimuth_deg: at.azimuth_deg + round,
-        });
-        match around
-            .into_iter()
-            .map(|direction| (gain(direction), direction))
-            .find(|(value, _)| *value > best)
-        {
-            Some((value, direction)) => (best, at) = (value, direction),
-            None => step *= 0.5,
-        }
-    }
-    at
 }
