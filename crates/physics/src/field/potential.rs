@@ -84,8 +84,8 @@ impl<'a> PotentialSource<'a> {
     /// Mean of the potential over the surface of a segment, V peak, by a Gauss-Legendre rule of `places`.
     ///
     /// The solver's equations hold such means, so that they follow the wire smoothly where the potential at single
-    /// places ripples with the mesh by a few percent. The charge steps from segment to segment: three places are good to
-    /// two percent of the feedpoint voltage beside a gap, twenty to half a percent.
+    /// places ripples with the mesh by a few percent. Beside a gap three places are good to a tenth of a percent of the
+    /// feedpoint voltage; one place, the middle, to a percent or two.
     #[must_use]
     pub fn mean_potential_v(&self, segment: &Segment, places: usize) -> Complex64 {
         let (direction, length_m) = (segment.direction(), segment.length_m());
