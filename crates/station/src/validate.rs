@@ -18,11 +18,11 @@ use crate::plan::{
 #[derive(Clone, Debug, PartialEq, Error)]
 pub enum PlanError {
     /// A number outside its range, or none at all.
-    #[error("{field}: {value}{unit} is not possible; accepted: {low} to {high}{unit}", unit = spaced(unit))]
+    #[error("{field}: {value} is not possible; accepted: {low} to {high}{unit}", unit = spaced(unit))]
     OutOfRange {
         /// Path of the field, for instance `wires[0].cut_length_m`.
         field: String,
-        /// The value, as text ("not a number" for NaN).
+        /// The value with its unit, as text ("not a number" for NaN).
         value: String,
         /// Lowest accepted.
         low: f64,
@@ -279,7 +279,7 @@ fn number(field: &str, value: f64, accepted: RangeInclusive<f64>, unit: &'static
     if accepted.contains(&value) {
         return Ok(());
     }
-    let value = if value.is_nan() { "not a number".to_owned() } else { value.to_string() };
+    let value = if value.is_nan() { "not a number".to_owned() } else { format!("{value}{}", spaced(unit)) };
     let (low, high) = (*accepted.start(), *accepted.end());
     Err(PlanError::OutOfRange { field: field.to_owned(), value, low, high, unit })
 }

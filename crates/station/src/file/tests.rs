@@ -41,7 +41,7 @@ fn bad_files_say_what_where_and_what_instead() {
         ),
         (
             good.replace("cut_length_m: 40.0", "cut_length_m: NaN"),
-            &["wires[0].cut_length_m", "not a number", "accepted"],
+            &["wires[0].cut_length_m: not a number is", "accepted"],
         ),
         (
             good.replace("cut_length_m: 40.0", "cut_length_m: inf"),
