@@ -62,7 +62,9 @@ impl PrintWays for DesktopWays {
     }
 
     fn view(&self, pdf: &Path) -> io::Result<()> {
+        // What the launchers report is a list of exit codes.
         open::that_detached(pdf)
+            .map_err(|error| io::Error::new(error.kind(), "this desktop has none for PDF files"))
     }
 }
 
