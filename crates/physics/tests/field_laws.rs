@@ -384,7 +384,9 @@ proptest! {
             let near = source.near(boundary(mirror));
             let mut sum = (Complex64::ZERO, 0.0);
             for (segment, ends) in on.segments.iter().zip(&on.ends) {
-                for (share, weight) in GAUSS {
+                // In quarters: the wires may come as near to each other as they are long, where five points on the whole
+                // are good to 1e-6 only.
+                for (share, weight) in (0..4).flat_map(quarter) {
                     let along_m = share * segment.length_m();
                     let place = advance(segment.from_m, segment.direction(), along_m);
                     let e = near.field(place).e_v_per_m;
@@ -398,8 +400,13 @@ proptest! {
             sum
         };
         let ((ab, scale), (ba, _)) = (work(&a, &b), work(&b, &a));
-        prop_assert!((ab - ba).norm() < 1e-7 * scale, "{ab} and {ba}");
+        prop_assert!((ab - ba).norm() <= 1e-7 * scale, "{ab} and {ba}, apart by {:e} of {scale}", (ab - ba).norm() / scale);
     }
+}
+
+/// The rule on one quarter of 0…1.
+fn quarter(index: u8) -> impl Iterator<Item = (f64, f64)> {
+    GAUSS.into_iter().map(move |(share, weight)| (0.25 * (f64::from(index) + share), 0.25 * weight))
 }
 
 /// Gauss-Legendre points and weights on 0…1, five points (Abramowitz & Stegun, table 25.4, from memory).
