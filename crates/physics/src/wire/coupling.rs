@@ -60,6 +60,18 @@ pub(super) enum Sources {
 impl Coupling {
     /// Pairs of the segments with themselves or their images; `line_of` as in the mesh.
     pub fn new(segments: &[Segment], line_of: &[usize], sources: Sources) -> Self {
+        Self::with(segments, line_of, sources, |p, q, c_m| {
+            if p.length_m <= q.length_m { skew(p, q, c_m) } else { skew(q, p, c_m).exchanged() }
+        })
+    }
+
+    /// The same with the moments of two segments at an angle or side by side as told, for the kernel 1/√(R² + c²).
+    pub fn with(
+        segments: &[Segment],
+        line_of: &[usize],
+        sources: Sources,
+        moments: impl Fn(&Axis, &Axis, f64) -> Moments,
+    ) -> Self {
         let axes: Vec<Axis> = segments.iter().map(Axis::of).collect();
         let source_axes: Vec<Axis> = match sources {
             Sources::Themselves => axes.clone(),
@@ -89,7 +101,7 @@ impl Coupling {
                 };
                 let at = FIELDS * PAD * (column / PAD) + column % PAD;
                 let distances = std::array::from_fn(|index| table[at + PAD * index]);
-                let moments = if one_line { collinear(p, q) } else { any(p, q) };
+                let moments = if one_line { collinear(p, q) } else { moments(p, q, softening_m(p, q)) };
                 coupling.near.push(Near { column, sums: moments.correction(p, q, distances) });
             }
             coupling.rows.push(Row { table: [begin, end], near: [first_near, coupling.near.len()] });
@@ -111,20 +123,19 @@ impl Coupling {
     }
 }
 
-/// Moments of two segments at an angle or side by side.
-fn any(p: &Axis, q: &Axis) -> Moments {
-    let d = sub(q.middle_m, p.middle_m);
-    let c_m = if p.touches(q) {
+/// c of the kernel 1/√(R² + c²) that stands for the mean over the surfaces of two segments not in one line.
+fn softening_m(p: &Axis, q: &Axis) -> f64 {
+    if p.touches(q) {
         // The value that two collinear segments that meet have in the mean: b = 4a/π.
-        4.0 / std::f64::consts::PI * (0.5 * (p.radius_m * p.radius_m + q.radius_m * q.radius_m)).sqrt()
-    } else {
-        let share = |axis: &Axis| {
-            let along = dot(d, axis.direction);
-            (1.5 * along * along / dot(d, d) - 0.5).max(0.0) * axis.radius_m * axis.radius_m
-        };
-        (share(p) + share(q)).sqrt()
+        return 4.0 / std::f64::consts::PI
+            * (0.5 * (p.radius_m * p.radius_m + q.radius_m * q.radius_m)).sqrt();
+    }
+    let d = sub(q.middle_m, p.middle_m);
+    let share = |axis: &Axis| {
+        let along = dot(d, axis.direction);
+        (1.5 * along * along / dot(d, d) - 0.5).max(0.0) * axis.radius_m * axis.radius_m
     };
-    if p.length_m <= q.length_m { skew(p, q, c_m) } else { skew(q, p, c_m).exchanged() }
+    (share(p) + share(q)).sqrt()
 }
 
 /// Fields of a source: middle, direction, square of the radius, half the distance of its Gauss points.

@@ -100,39 +100,52 @@ impl WithSimd for Fill<'_> {
 
     #[inline(always)]
     fn with_simd<S: Simd>(self, simd: S) {
-        let Terms { mesh, shares, couplings, own, k, reflected, reflection } = self.terms;
+        let Terms { mesh, shares, .. } = self.terms;
         let segments = mesh.segments.len();
         let mut sums = vec![0.0; SUMS * padded(segments)];
         let mut blocks = Blocks::zero(segments);
         for row in 0..segments {
-            for part in &mut blocks.parts {
-                part[..padded(row + 1)].fill(0.0);
-            }
-            for coupling in *couplings {
-                let sums = &mut sums[..SUMS * padded(row + 1)];
-                wave_sums(simd, coupling.table(row), *k, sums);
-                for near in coupling.near(row) {
-                    add_sums(sums, near.column, near.sums);
-                }
-                if coupling.sign > 0.0 {
-                    add_sums(sums, row, kink(*k, mesh.segments[row].length_m()));
-                } else if *reflected != Complex64::ONE {
-                    weigh(sums, *reflected);
-                }
-                let scale = RowScale::new(simd, &self.columns.shapes[row], coupling.sign);
-                add_blocks(simd, &scale, [sums, &self.columns.table, coupling.table(row)], &mut blocks);
-            }
-            if let Some(reflection) = reflection {
-                reflection.add_row(row, &self.columns.shapes, &mut blocks);
-            }
-            let [same, cross] = own[row];
-            blocks.add(row, [same, cross, cross, same]);
+            fill_row(simd, self.terms, self.columns, row, (&mut sums, &mut blocks));
             for run in &mesh.runs {
                 add_run(self.matrix, shares, row, run, &blocks);
             }
             shares.add_joints(self.matrix, mesh, row, &blocks);
         }
     }
+}
+
+/// Fills in the couplings of a row's segment with all up to it; the sums are scratch.
+#[inline(always)]
+fn fill_row<S: Simd>(
+    simd: S,
+    terms: &Terms,
+    columns: &Columns,
+    row: usize,
+    (sums, blocks): (&mut [f64], &mut Blocks),
+) {
+    let Terms { mesh, couplings, own, k, reflected, reflection, .. } = terms;
+    for part in &mut blocks.parts {
+        part[..padded(row + 1)].fill(0.0);
+    }
+    for coupling in *couplings {
+        let sums = &mut sums[..SUMS * padded(row + 1)];
+        wave_sums(simd, coupling.table(row), *k, sums);
+        for near in coupling.near(row) {
+            add_sums(sums, near.column, near.sums);
+        }
+        if coupling.sign > 0.0 {
+            add_sums(sums, row, kink(*k, mesh.segments[row].length_m()));
+        } else if *reflected != Complex64::ONE {
+            weigh(sums, *reflected);
+        }
+        let scale = RowScale::new(simd, &columns.shapes[row], coupling.sign);
+        add_blocks(simd, &scale, [sums, &columns.table, coupling.table(row)], blocks);
+    }
+    if let Some(reflection) = reflection {
+        reflection.add_row(row, &columns.shapes, blocks);
+    }
+    let [same, cross] = own[row];
+    blocks.add(row, [same, cross, cross, same]);
 }
 
 /// Sums of a pair: Σ e^(−jkR)/R plain, with the row's sign, with the column's, with both; real parts, then imaginary.
@@ -311,6 +324,42 @@ fn add_run(matrix: &mut Symmetric, shares: &Shares, row: usize, run: &Run, block
         if row_end == BEGINNING && whole > 0 && unknown == run.first_unknown + whole - 1 {
             // The unknown's own two arms act on each other both ways.
             matrix.add(unknown, unknown, blocks.at(BEGINNING, END, row - 1));
+        }
+    }
+}
+
+#[cfg(test)]
+pub(super) mod tests {
+    use super::*;
+
+    /// Couplings of every segment's ends with those of all up to it: `[row][column]` gives beginning–beginning,
+    /// beginning–end, end–beginning, end–end.
+    pub fn end_couplings_of_all(terms: &Terms) -> Vec<Vec<[Complex64; 4]>> {
+        Arch::new().dispatch(AllRows { terms, columns: &Columns::new(terms.mesh, terms.k) })
+    }
+
+    struct AllRows<'a> {
+        terms: &'a Terms<'a>,
+        columns: &'a Columns,
+    }
+
+    impl WithSimd for AllRows<'_> {
+        type Output = Vec<Vec<[Complex64; 4]>>;
+
+        #[inline(always)]
+        fn with_simd<S: Simd>(self, simd: S) -> Self::Output {
+            let segments = self.terms.mesh.segments.len();
+            let mut sums = vec![0.0; SUMS * padded(segments)];
+            let mut blocks = Blocks::zero(segments);
+            let mut row = |row: usize| {
+                fill_row(simd, self.terms, self.columns, row, (&mut sums, &mut blocks));
+                let at = |column| {
+                    [(BEGINNING, BEGINNING), (BEGINNING, END), (END, BEGINNING), (END, END)]
+                        .map(|(row_end, column_end)| blocks.at(row_end, column_end, column))
+                };
+                (0..=row).map(at).collect()
+            };
+            (0..segments).map(&mut row).collect()
         }
     }
 }

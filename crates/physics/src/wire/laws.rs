@@ -1,8 +1,14 @@
 //! The matrix against closed forms: one imposed sinusoid per wire.
 
+use nalgebra::DMatrix;
 use num_complex::Complex64;
 
-use super::fill::Terms;
+use super::coupling::{Coupling, Sources};
+use super::fill::tests::end_couplings_of_all;
+use super::fill::{BEGINNING, END, Terms};
+use super::mesh::{Arm, Mesh};
+use super::moments::{Axis, skew};
+use super::skeleton::End;
 use super::structure::{Boundary, PortPlace, Structure, WireShape};
 use super::{Material, Segment, WireModel};
 use crate::constants::{SPEED_OF_LIGHT_M_PER_S, VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
@@ -110,5 +116,101 @@ fn two_sinusoids_have_the_mutual_impedance_of_theory() {
                 "{half_1} and {half_2} λ, {spacing} λ apart, {offset} λ on: {got} for {expected}"
             );
         }
+    }
+}
+
+/// The matrix with nothing taken from symmetry: below the diagonal every pair of segments with the later one as the test,
+/// above it with the roles exchanged, by turning round the order of the segments; of near pairs, the other segment is
+/// then the one whose integral is a quadrature.
+fn both_triangles(model: &WireModel, frequency_hz: f64) -> DMatrix<Complex64> {
+    let k = wave_number_rad_per_m(frequency_hz);
+    let count = model.segments().len();
+    let mut turned = Mesh { segments: model.mesh.segments.clone(), ..Mesh::default() };
+    turned.segments.reverse();
+    let line_of: Vec<usize> = model.mesh.line_of.iter().rev().copied().collect();
+    let all = [Sources::Themselves, Sources::Images];
+    let sources = &all[..model.couplings.len()];
+    let longer_outside = |p: &Axis, q: &Axis, c_m: f64| {
+        if p.length_m > q.length_m { skew(p, q, c_m) } else { skew(q, p, c_m).exchanged() }
+    };
+    let turned_couplings: Vec<Coupling> = sources
+        .iter()
+        .map(|&sources| Coupling::with(&turned.segments, &line_of, sources, longer_outside))
+        .collect();
+    let own = vec![[Complex64::ZERO; 2]; count];
+    let terms = |mesh, couplings| Terms {
+        mesh,
+        shares: &model.shares,
+        couplings,
+        own: &own,
+        k,
+        reflected: Complex64::ONE,
+        reflection: None,
+    };
+    let later_tests = end_couplings_of_all(&terms(&model.mesh, &model.couplings[..]));
+    let earlier_tests = end_couplings_of_all(&terms(&turned, &turned_couplings[..]));
+    let coupling = |test: &Arm, source: &Arm| {
+        let [test_end, source_end] =
+            [test, source].map(|arm| if arm.end == End::From { BEGINNING } else { END });
+        let (a, b) = (test.segment, source.segment);
+        let pair = if a >= b { later_tests[a][b] } else { earlier_tests[count - 1 - a][count - 1 - b] };
+        pair[2 * test_end + source_end] * (test.sign * source.sign)
+    };
+    let unknowns = &model.mesh.unknowns;
+    DMatrix::from_fn(unknowns.len(), unknowns.len(), |row, column| {
+        let arms = |unknown: usize| unknowns[unknown].arms.iter().flatten();
+        arms(row).map(|test| arms(column).map(|source| coupling(test, source)).sum::<Complex64>()).sum()
+    })
+}
+
+/// A fork, a bend and a wire beside it, with two ports.
+fn forked(boundary: Boundary) -> WireModel {
+    let wire = |vertices_m: &[[f64; 3]], radius_m: f64| WireShape {
+        vertices_m: vertices_m.to_vec(),
+        radius_m,
+        material: Material::PERFECT,
+    };
+    let wires = vec![
+        wire(&[[-7.0, 0.0, 4.0], [0.0, 0.0, 9.0], [6.0, 1.0, 6.0]], 1e-3),
+        wire(&[[0.0, 0.0, 9.0], [1.0, 5.0, 3.0]], 2e-3),
+        wire(&[[-5.0, 0.3, 4.5], [5.0, 0.4, 8.0]], 0.7e-3),
+    ];
+    let ports = [(0, 5.0), (2, 4.0)].map(|(wire, arc_m)| PortPlace { wire, arc_m, gap_m: 0.02 });
+    WireModel::new(Structure { wires, ports: ports.to_vec(), boundary }, 15e6).unwrap()
+}
+
+#[test]
+fn matrix_is_symmetric_when_both_triangles_are_computed() {
+    for boundary in [Boundary::FreeSpace, Boundary::Mirror] {
+        let matrix = both_triangles(&forked(boundary), 14e6);
+        let largest = matrix.map(Complex64::norm).max();
+        let mut worst = 0.0_f64;
+        for row in 0..matrix.nrows() {
+            for column in 0..row {
+                let [below, above] = [matrix[(row, column)], matrix[(column, row)]];
+                // Against the geometric mean of the pair's own impedances.
+                let size = (matrix[(row, row)] * matrix[(column, column)]).norm().sqrt();
+                worst = worst.max((below - above).norm() / size);
+            }
+        }
+        println!("{boundary:?}: asymmetry {worst:.1e}, largest {largest:.1e}");
+        // Tolerance of the quadrature of near pairs.
+        assert!(worst > 0.0 && worst < 1e-6, "{boundary:?}: {worst}");
+    }
+}
+
+#[test]
+fn ports_are_reciprocal_without_symmetrising() {
+    for boundary in [Boundary::FreeSpace, Boundary::Mirror] {
+        let model = forked(boundary);
+        let drive = model.drive(wave_number_rad_per_m(14e6)).map(Complex64::from);
+        let admittance = drive.tr_mul(&both_triangles(&model, 14e6).lu().solve(&drive).unwrap());
+        let (one, other) = (admittance[(0, 1)], admittance[(1, 0)]);
+        println!("{boundary:?}: {one} and {other}, {:.1e}", (one - other).norm() / one.norm());
+        assert!(one != other && (one - other).norm() < 1e-6 * one.norm(), "{one} and {other}");
+        // It is the matrix of the solver but for the metal, which is perfect here.
+        let solved = model.solve(14e6).unwrap().port_admittance_s;
+        let own = admittance[(0, 0)] / admittance[(0, 1)] * solved[(0, 1)] / solved[(0, 0)];
+        assert!((own - 1.0).norm() < 1e-6, "{own}");
     }
 }

@@ -174,7 +174,7 @@ impl WireModel {
     }
 
     /// Volts along the wire that each unknown sees per volt of each port.
-    fn drive(&self, k: f64) -> DMatrix<f64> {
+    pub(super) fn drive(&self, k: f64) -> DMatrix<f64> {
         let mut drive = DMatrix::zeros(self.mesh.unknowns.len(), self.structure.ports.len());
         for (index, unknown) in self.mesh.unknowns.iter().enumerate() {
             for &Arm { segment, sign, .. } in unknown.arms.iter().flatten() {
