@@ -5,7 +5,8 @@ use std::f64::consts::PI;
 use num_complex::Complex64;
 
 use super::quadrature::{THREE, gauss_legendre};
-use crate::constants::{VACUUM_PERMITTIVITY_F_PER_M, wave_number_rad_per_m};
+use super::space::{Vec3, dot, mirrored};
+use crate::constants::{VACUUM_PERMEABILITY_H_PER_M, VACUUM_PERMITTIVITY_F_PER_M, wave_number_rad_per_m};
 use crate::wire::{Boundary, EndCurrents, Segment};
 
 /// A place on the surface of a wire.
@@ -65,7 +66,7 @@ impl<'a> PotentialSource<'a> {
     /// Scalar potential (Lorenz gauge), V peak, against far away.
     ///
     /// Of the charge on all wires, taken on their axes and seen from the surface. Indicative: only its jump across a
-    /// gap can be measured, and equals the voltage there but for the inductance of the gap.
+    /// gap can be measured; [`PotentialSource::induced_v_per_m`] carries it across.
     #[must_use]
     pub fn potential_v(&self, at: SurfacePoint) -> Complex64 {
         let [x, y, z] = at.axis_m;
@@ -102,6 +103,29 @@ impl<'a> PotentialSource<'a> {
             .sum()
     }
 
+    /// jωA along a direction at a wire's surface, V/m peak: what the changing currents drive against a current there.
+    ///
+    /// Along metal E = −∇Φ − jωA vanishes but for the metal's own resistance, so the potential falls by this much per
+    /// metre: continued so from both sides to the middle of a gap, it jumps there by exactly the gap's voltage, however
+    /// long the gap is.
+    #[must_use]
+    pub fn induced_v_per_m(&self, at: SurfacePoint, direction: Vec3) -> Complex64 {
+        let [x, y, z] = at.axis_m;
+        let below = SurfacePoint { axis_m: [x, y, -z], ..at };
+        let mut sum = Complex64::ZERO;
+        for charged in &self.charged {
+            let current = |along_m: f64| charged.ends.current_a(charged.segment, self.frequency_hz, along_m);
+            let whole = (0.0, charged.length_m);
+            sum += dot(direction, charged.direction) * self.divided(charged, at, whole, &current);
+            if self.boundary.has_images() {
+                let image = dot(direction, mirrored(charged.direction));
+                sum -= image * self.reflected * self.divided(charged, below, whole, &current);
+            }
+        }
+        // jωµ₀/4π
+        Complex64::new(0.0, 0.5 * self.frequency_hz * VACUUM_PERMEABILITY_H_PER_M) * sum
+    }
+
     /// ∫ q·e^(−jkR)/R over a segment.
     fn of(&self, charged: &Charged, at: SurfacePoint) -> Complex64 {
         let (middle, _) = charged.points[1];
@@ -110,31 +134,39 @@ impl<'a> PotentialSource<'a> {
             return charged.whole_c * Complex64::cis(-self.k * r) / r;
         }
         if charged.length_m > NEAR * r {
-            return self.divided(charged, at, (0.0, charged.length_m));
+            let charge =
+                |along_m: f64| charged.ends.charge_c_per_m(charged.segment, self.frequency_hz, along_m);
+            return self.divided(charged, at, (0.0, charged.length_m), &charge);
         }
         charged.points.iter().map(|&(place, charge)| self.seen(charge, distance(place, at))).sum()
     }
 
-    /// The same over a part of a segment, divided until it is shorter than its distance.
-    fn divided(&self, charged: &Charged, at: SurfacePoint, (from_m, to_m): (f64, f64)) -> Complex64 {
+    /// ∫ density·e^(−jkR)/R over a part of a segment, divided until it is shorter than its distance.
+    fn divided(
+        &self,
+        charged: &Charged,
+        at: SurfacePoint,
+        (from_m, to_m): (f64, f64),
+        density: &impl Fn(f64) -> Complex64,
+    ) -> Complex64 {
         let length_m = to_m - from_m;
         let middle_m = 0.5 * (from_m + to_m);
         if length_m > NEAR * distance(charged.place(middle_m), at) {
-            return self.divided(charged, at, (from_m, middle_m))
-                + self.divided(charged, at, (middle_m, to_m));
+            return self.divided(charged, at, (from_m, middle_m), density)
+                + self.divided(charged, at, (middle_m, to_m), density);
         }
         THREE
             .iter()
             .map(|&(share, weight)| {
                 let along_m = from_m + share * length_m;
-                let density = charged.ends.charge_c_per_m(charged.segment, self.frequency_hz, along_m);
-                self.seen(density * (weight * length_m), distance(charged.place(along_m), at))
+                let here = density(along_m) * (weight * length_m);
+                self.seen(here, distance(charged.place(along_m), at))
             })
             .sum()
     }
 
-    fn seen(&self, charge_c: Complex64, r: f64) -> Complex64 {
-        charge_c * Complex64::cis(-self.k * r) / r
+    fn seen(&self, amount: Complex64, r: f64) -> Complex64 {
+        amount * Complex64::cis(-self.k * r) / r
     }
 }
 

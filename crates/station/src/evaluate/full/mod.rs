@@ -142,6 +142,7 @@ impl Solved {
     ///
     /// At a single place it ripples with the mesh; its mean over a segment does not, for that is what the solver's
     /// equations hold. So the means stand at the segments' middles, and straight lines between them; none crosses a gap.
+    /// The two places at a gap carry the potential continued to its middle as along metal: there it jumps by the voltage.
     fn potentials(&self, index: usize, arc_m: &[f64], cuts: &[Cut], fed: &Fed) -> Vec<Complex64> {
         let (segments, boundary) = (self.model.segments(), self.model.structure().boundary);
         let source = PotentialSource::new(segments, &fed.currents, boundary, fed.frequency_hz);
@@ -157,9 +158,18 @@ impl Solved {
                 continue;
             }
             let places = if beside_gap { PLACES_BESIDE_GAP } else { PLACES_ELSEWHERE };
-            means.push((middle_m, source.mean_potential_v(&segments[segment], places)));
+            let mean_v = source.mean_potential_v(&segments[segment], places);
+            let across = cuts.iter().find(|cut| (middle_m - cut.arc_m).abs() < cut.half_width_m + half_m);
+            let across = across.map(|cut| {
+                let induced_v_per_m = self.traces[index].induced_v_per_m(middle_m, segments, &source);
+                let edge_m = cut.arc_m + cut.half_width_m.copysign(middle_m - cut.arc_m);
+                (edge_m, mean_v + induced_v_per_m * (middle_m - cut.arc_m))
+            });
+            means.push((middle_m, mean_v));
+            means.extend(across);
             last_m = middle_m;
         }
+        means.sort_by(|a, b| a.0.total_cmp(&b.0));
         arc_m.iter().map(|&arc| between_cuts(&means, cuts, arc)).collect()
     }
 

@@ -1,6 +1,7 @@
 //! From the mesh back to the wire: which segments lie where along a hung wire, and the current at any place.
 
 use num_complex::Complex64;
+use physics::field::{PotentialSource, SurfacePoint};
 use physics::wire::{EndCurrents, Segment};
 
 use crate::hang::HungWire;
@@ -63,9 +64,22 @@ impl Trace {
         frequency_hz: f64,
     ) -> Complex64 {
         let (segment, along_m) = self.at(arc_m);
+        self.sign(arc_m) * currents[segment].current_a(&segments[segment], frequency_hz, along_m)
+    }
+
+    /// jωA toward the wire's end at a place, V/m peak.
+    pub fn induced_v_per_m(&self, arc_m: f64, segments: &[Segment], source: &PotentialSource) -> Complex64 {
+        let (index, along_m) = self.at(arc_m);
+        let (segment, direction) = (&segments[index], segments[index].direction());
+        let axis_m = std::array::from_fn(|axis| segment.from_m[axis] + along_m * direction[axis]);
+        let at = SurfacePoint { axis_m, radius_m: segment.radius_m };
+        self.sign(arc_m) * source.induced_v_per_m(at, direction)
+    }
+
+    /// −1 where the segment at a place points toward the wire's beginning.
+    fn sign(&self, arc_m: f64) -> f64 {
         let next = self.pieces.partition_point(|piece| piece.start_arc_m <= arc_m);
-        let sign = if self.pieces[next.saturating_sub(1)].reversed { -1.0 } else { 1.0 };
-        sign * currents[segment].current_a(&segments[segment], frequency_hz, along_m)
+        if self.pieces[next.saturating_sub(1)].reversed { -1.0 } else { 1.0 }
     }
 }
 
