@@ -372,10 +372,8 @@ proptest! {
             (model.unknowns(), model.solve(14e6 / scale).unwrap().port_admittance_s)
         };
         let ((unknowns, y), (others, other)) = (perfect(structure.clone(), 1.0), perfect(structure, scale));
-        // Where the number of segments of a stretch stands on the edge, rounding may give one more after scaling: then
-        // two meshes are compared, which agree to their accuracy.
-        let same_to = if others == unknowns { 1e-6 } else { 2e-3 };
-        prop_assert!(distance(&other, &y) < same_to, "{} with {unknowns} and {others}", distance(&other, &y));
+        prop_assert_eq!(unknowns, others);
+        prop_assert!(distance(&other, &y) < 1e-6, "{}", distance(&other, &y));
     }
 
     #[test]
