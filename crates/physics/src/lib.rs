@@ -13,6 +13,7 @@
 
 pub mod conductor;
 pub mod constants;
+pub mod earth;
 pub mod field;
 pub mod line;
 pub mod network;

@@ -14,7 +14,7 @@ mod near;
 mod peak;
 mod polarisation;
 mod potential;
-mod quadrature;
+pub(crate) mod quadrature;
 mod run;
 mod smooth;
 mod source;

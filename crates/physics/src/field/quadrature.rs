@@ -5,7 +5,7 @@ pub(super) const THREE: [(f64, f64); 3] =
     [(0.112_701_665_379_258_31, 5.0 / 18.0), (0.5, 8.0 / 18.0), (0.887_298_334_620_741_7, 5.0 / 18.0)];
 
 /// Points and weights of the n-point rule on −1…1, by Newton's method on Legendre's polynomial.
-pub(super) fn gauss_legendre(count: usize) -> Vec<(f64, f64)> {
+pub(crate) fn gauss_legendre(count: usize) -> Vec<(f64, f64)> {
     let n = count as f64;
     (0..count)
         .map(|index| {
