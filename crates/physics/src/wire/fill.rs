@@ -8,7 +8,6 @@ use pulp::{Arch, Simd, WithSimd};
 use super::coupling::{Coupling, FIELDS, GAUSS};
 use super::lanes::{Lanes, PAD, padded};
 use super::mesh::{Mesh, Run};
-use super::reflection::Reflected;
 use super::shapes::Shapes;
 use super::shares::Shares;
 use super::symmetric::Symmetric;
@@ -22,10 +21,6 @@ pub(super) struct Terms<'a> {
     pub own: &'a [[Complex64; 2]],
     /// Wave number, rad/m.
     pub k: f64,
-    /// What the earth gives back of an image's part: 1 for the mirror.
-    pub reflected: Complex64,
-    /// Kernels of another boundary.
-    pub reflection: Option<Reflected<'a>>,
 }
 
 impl Terms<'_> {
@@ -123,7 +118,7 @@ fn fill_row<S: Simd>(
     row: usize,
     (sums, blocks): (&mut [f64], &mut Blocks),
 ) {
-    let Terms { mesh, couplings, own, k, reflected, reflection, .. } = terms;
+    let Terms { mesh, couplings, own, k, .. } = terms;
     for part in &mut blocks.parts {
         part[..padded(row + 1)].fill(0.0);
     }
@@ -135,14 +130,9 @@ fn fill_row<S: Simd>(
         }
         if coupling.sign > 0.0 {
             add_sums(sums, row, kink(*k, mesh.segments[row].length_m()));
-        } else if *reflected != Complex64::ONE {
-            weigh(sums, *reflected);
         }
         let scale = RowScale::new(simd, &columns.shapes[row], coupling.sign);
         add_blocks(simd, &scale, [sums, &columns.table, coupling.table(row)], blocks);
-    }
-    if let Some(reflection) = reflection {
-        reflection.add_row(row, &columns.shapes, blocks);
     }
     let [same, cross] = own[row];
     blocks.add(row, [same, cross, cross, same]);
@@ -156,17 +146,6 @@ fn add_sums(sums: &mut [f64], column: usize, terms: [f64; 4]) {
     let at = SUMS * PAD * (column / PAD) + column % PAD;
     for (index, term) in terms.into_iter().enumerate() {
         sums[at + PAD * index] += term;
-    }
-}
-
-/// Multiplies the sums of a row by a complex number.
-#[inline(always)]
-fn weigh(sums: &mut [f64], weight: Complex64) {
-    for block in sums.chunks_exact_mut(SUMS * PAD) {
-        let (re, im) = block.split_at_mut(4 * PAD);
-        for (re, im) in re.iter_mut().zip(im) {
-            (*re, *im) = (*re * weight.re - *im * weight.im, *re * weight.im + *im * weight.re);
-        }
     }
 }
 

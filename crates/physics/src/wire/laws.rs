@@ -35,7 +35,7 @@ fn impedance(model: &WireModel, wires: &[(f64, [f64; 3])], a: usize, b: usize) -
     let k = wave_number_rad_per_m(FREQUENCY_HZ);
     let own = vec![[Complex64::ZERO; 2]; model.segments().len()];
     let (mesh, shares, couplings) = (&model.mesh, &model.shares, &model.couplings[..]);
-    let terms = Terms { mesh, shares, couplings, own: &own, k, reflected: Complex64::ONE, reflection: None };
+    let terms = Terms { mesh, shares, couplings, own: &own, k };
     let matrix = terms.matrix();
     let current = |wire: usize| -> Vec<f64> {
         let (half_m, [_, y, _]) = wires[wire];
@@ -138,15 +138,7 @@ fn both_triangles(model: &WireModel, frequency_hz: f64) -> DMatrix<Complex64> {
         .map(|&sources| Coupling::with(&turned.segments, &line_of, sources, longer_outside))
         .collect();
     let own = vec![[Complex64::ZERO; 2]; count];
-    let terms = |mesh, couplings| Terms {
-        mesh,
-        shares: &model.shares,
-        couplings,
-        own: &own,
-        k,
-        reflected: Complex64::ONE,
-        reflection: None,
-    };
+    let terms = |mesh, couplings| Terms { mesh, shares: &model.shares, couplings, own: &own, k };
     let later_tests = end_couplings_of_all(&terms(&model.mesh, &model.couplings[..]));
     let earlier_tests = end_couplings_of_all(&terms(&turned, &turned_couplings[..]));
     let coupling = |test: &Arm, source: &Arm| {

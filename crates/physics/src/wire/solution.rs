@@ -11,14 +11,15 @@ use super::error::WireError;
 use super::fill::Terms;
 use super::grading::Fineness;
 use super::mesh::{Arm, Mesh};
+use super::panels::Panels;
 use super::power::{port_power_w, segment_loss_w};
-use super::reflection::{Reflected, Reflection};
+use super::reflection::{Reflection, add_reflection};
 use super::segment::{EndCurrents, Segment};
 use super::shapes::Overlaps;
 use super::shares::Shares;
 use super::skeleton::{End, Skeleton};
-use super::structure::{Structure, WireShape};
-use crate::constants::{VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
+use super::structure::{Boundary, Structure, WireShape};
+use crate::constants::{SPEED_OF_LIGHT_M_PER_S, VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
 
 /// A structure with its mesh and everything about it that does not depend on frequency.
 #[derive(Clone, Debug)]
@@ -29,6 +30,8 @@ pub struct WireModel {
     pub(super) mesh: Mesh,
     pub(super) shares: Shares,
     pub(super) couplings: Vec<Coupling>,
+    /// Over soil.
+    panels: Option<Panels>,
 }
 
 impl WireModel {
@@ -59,10 +62,13 @@ impl WireModel {
         let mesh = Mesh::new(&structure, &skeleton, fineness, highest_hz)?;
         let shares = Shares::new(&mesh);
         let mut couplings = vec![Coupling::new(&mesh.segments, &mesh.line_of, Sources::Themselves)];
-        if structure.boundary.has_images() {
+        if structure.boundary == Boundary::Mirror {
             couplings.push(Coupling::new(&mesh.segments, &mesh.line_of, Sources::Images));
         }
-        Ok(Self { structure, skeleton, highest_hz, mesh, shares, couplings })
+        let wavelength_m = SPEED_OF_LIGHT_M_PER_S / highest_hz;
+        let panels = matches!(structure.boundary, Boundary::Soil { .. })
+            .then(|| Panels::new(&mesh.segments, wavelength_m, LOWEST_NODE_M));
+        Ok(Self { structure, skeleton, highest_hz, mesh, shares, couplings, panels })
     }
 
     /// The structure.
@@ -101,6 +107,11 @@ impl WireModel {
         &self.mesh.port_of
     }
 
+    /// Where kernels of the earth below are told.
+    pub(super) fn panels(&self) -> Option<&Panels> {
+        self.panels.as_ref()
+    }
+
     /// Solution at one frequency.
     ///
     /// # Errors
@@ -115,10 +126,14 @@ impl WireModel {
     /// # Errors
     /// As [`WireModel::solve`].
     pub fn solve_over(&self, frequency_hz: f64, reflection: &dyn Reflection) -> Result<Solution, WireError> {
-        self.solve_with(frequency_hz, Some(Reflected::new(reflection, &self.mesh.segments)))
+        self.solve_with(frequency_hz, Some(reflection))
     }
 
-    fn solve_with(&self, frequency_hz: f64, reflection: Option<Reflected>) -> Result<Solution, WireError> {
+    fn solve_with(
+        &self,
+        frequency_hz: f64,
+        reflection: Option<&dyn Reflection>,
+    ) -> Result<Solution, WireError> {
         if !(LOWEST_HZ..=self.highest_hz * (1.0 + 1e-9)).contains(&frequency_hz) {
             let (lowest_hz, highest_hz) = (LOWEST_HZ, self.highest_hz);
             return Err(WireError::FrequencyOutOfRange { frequency_hz, lowest_hz, highest_hz });
@@ -127,16 +142,12 @@ impl WireModel {
         // Everything over jkη/4π
         let scale_s = Complex64::new(0.0, -2.0 * TAU / (k * VACUUM_IMPEDANCE_OHM));
         let own = self.own_impedances(scale_s, frequency_hz);
-        let terms = Terms {
-            mesh: &self.mesh,
-            shares: &self.shares,
-            couplings: &self.couplings,
-            own: &own,
-            k,
-            reflected: self.structure.boundary.reflected(frequency_hz),
-            reflection,
-        };
-        let matrix = terms.matrix();
+        let terms =
+            Terms { mesh: &self.mesh, shares: &self.shares, couplings: &self.couplings, own: &own, k };
+        let mut matrix = terms.matrix();
+        if let (Some(panels), Some(reflection)) = (&self.panels, reflection) {
+            add_reflection(&mut matrix, &self.mesh, panels, k, reflection);
+        }
         let drive = self.drive(k);
         let (solution, residual) =
             matrix.solve(&drive).ok_or(WireError::Singular { frequency_hz, residual: f64::INFINITY })?;
@@ -231,6 +242,9 @@ impl WireModel {
             .collect()
     }
 }
+
+/// Heights below this count as this when the earth's kernels are told, m.
+const LOWEST_NODE_M: f64 = 0.02;
 
 /// Largest part of a port's voltage that a solution may leave unexplained.
 const LARGEST_RESIDUAL: f64 = 1e-6;
