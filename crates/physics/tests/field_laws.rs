@@ -7,6 +7,7 @@ use physics::constants::{
     SPEED_OF_LIGHT_M_PER_S, VACUUM_IMPEDANCE_OHM, VACUUM_PERMEABILITY_H_PER_M, VACUUM_PERMITTIVITY_F_PER_M,
     wave_number_rad_per_m,
 };
+use physics::earth::Soil;
 use physics::field::{
     Direction, FarFieldSource, NearField, NearFieldSource, radiated_power_w, strongest_direction,
 };
@@ -429,7 +430,7 @@ fn no_place_is_infinite() {
             assert!(e_v_per_m.iter().chain(&h_a_per_m).all(|component| component.is_finite()), "{x}");
         }
     }
-    let soil = Boundary::Soil { relative_permittivity: 13.0, conductivity_s_per_m: 5e-3 };
+    let soil = Boundary::Soil(Soil { relative_permittivity: 13.0, conductivity_s_per_m: 5e-3 });
     assert!(NearFieldSource::new(&wire.segments, &wire.ends, soil, FREQUENCY_HZ).is_none());
     assert!(FarFieldSource::new(&wire.segments, &wire.ends, soil, FREQUENCY_HZ).is_none());
 }

@@ -53,7 +53,7 @@ impl NearFieldSource {
         let k = wave_number_rad_per_m(frequency_hz);
         let wires = segments.iter().zip(currents).map(|(segment, ends)| Filament::new(segment, ends, k));
         let filaments = match boundary {
-            Boundary::Soil { .. } => return None,
+            Boundary::Soil(_) => return None,
             Boundary::FreeSpace => wires.collect(),
             Boundary::Mirror => wires.flat_map(|filament| [filament, filament.image()]).collect(),
         };

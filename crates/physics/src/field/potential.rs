@@ -23,7 +23,6 @@ pub struct SurfacePoint {
 pub struct PotentialSource<'a> {
     charged: Vec<Charged<'a>>,
     boundary: Boundary,
-    reflected: Complex64,
     frequency_hz: f64,
     k: f64,
 }
@@ -48,7 +47,8 @@ const NEAR: f64 = 1.5;
 const FAR: f64 = 12.0;
 
 impl<'a> PotentialSource<'a> {
-    /// The source for currents at the ends of segments (A peak).
+    /// The source for currents at the ends of segments (A peak). Over soil what the earth gives back is not in it:
+    /// [`crate::wire::Returned`] has that.
     #[must_use]
     pub fn new(
         segments: &'a [Segment],
@@ -59,8 +59,7 @@ impl<'a> PotentialSource<'a> {
         let charged =
             segments.iter().zip(currents).map(|(segment, ends)| Charged::new(segment, ends, frequency_hz));
         let k = wave_number_rad_per_m(frequency_hz);
-        let reflected = boundary.reflected(frequency_hz);
-        Self { charged: charged.collect(), boundary, reflected, frequency_hz, k }
+        Self { charged: charged.collect(), boundary, frequency_hz, k }
     }
 
     /// Scalar potential (Lorenz gauge), V peak, against far away.
@@ -74,9 +73,9 @@ impl<'a> PotentialSource<'a> {
         let mut sum = Complex64::ZERO;
         for charged in &self.charged {
             sum += self.of(charged, at);
-            if self.boundary.has_images() {
+            if self.boundary == Boundary::Mirror {
                 // The image carries the opposite charge.
-                sum -= self.reflected * self.of(charged, mirrored);
+                sum -= self.of(charged, mirrored);
             }
         }
         sum / (4.0 * PI * VACUUM_PERMITTIVITY_F_PER_M)
@@ -117,9 +116,9 @@ impl<'a> PotentialSource<'a> {
             let current = |along_m: f64| charged.ends.current_a(charged.segment, self.frequency_hz, along_m);
             let whole = (0.0, charged.length_m);
             sum += dot(direction, charged.direction) * self.divided(charged, at, whole, &current);
-            if self.boundary.has_images() {
+            if self.boundary == Boundary::Mirror {
                 let image = dot(direction, mirrored(charged.direction));
-                sum -= image * self.reflected * self.divided(charged, below, whole, &current);
+                sum -= image * self.divided(charged, below, whole, &current);
             }
         }
         // jωµ₀/4π

@@ -33,7 +33,7 @@ impl FarFieldSource {
     ) -> Option<Self> {
         let k = wave_number_rad_per_m(frequency_hz);
         match boundary {
-            Boundary::Soil { .. } => None,
+            Boundary::Soil(_) => None,
             Boundary::FreeSpace | Boundary::Mirror => {
                 Some(Self { k, boundary, runs: runs(segments, currents, k) })
             }
@@ -53,7 +53,7 @@ impl FarFieldSource {
         let outward = [cosine * cos_phi, cosine * sin_phi, sine];
         let mut sum = self.moment_a_m(outward);
         match self.boundary {
-            Boundary::FreeSpace | Boundary::Soil { .. } => {}
+            Boundary::FreeSpace | Boundary::Soil(_) => {}
             Boundary::Mirror if sine < 0.0 => return FarField::default(),
             Boundary::Mirror => {
                 // The image of a wire is seen as the wire is from below, and its level current runs the other way.

@@ -43,7 +43,7 @@ pub(super) fn check(structure: &Structure, highest_hz: f64) -> Result<(), WireEr
         for other in &sides[..index] {
             check_pair(other, side)?;
         }
-        if structure.boundary.has_images() {
+        if structure.boundary.connects() {
             check_height(side)?;
         }
     }

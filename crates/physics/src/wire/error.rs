@@ -1,5 +1,7 @@
 //! What the solver refuses, and why.
 
+use crate::earth::EarthError;
+
 /// A structure that the solver cannot take, or a frequency outside its range.
 ///
 /// Wires and ports are numbered from 1 in the sentences, from 0 in the fields.
@@ -15,6 +17,9 @@ pub enum WireError {
         /// What would be accepted.
         accepted: &'static str,
     },
+    /// A soil, frequency or distance that the earth's kernels are not made for.
+    #[error("the earth: {0}")]
+    Earth(#[from] EarthError),
     /// A wire of fewer than two vertices.
     #[error("wire {} has {vertices} vertices; a wire needs at least two", wire + 1)]
     TooFewVertices {

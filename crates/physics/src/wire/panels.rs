@@ -9,6 +9,7 @@ use super::reflection::Element;
 use super::segment::Segment;
 use super::shapes::Shapes;
 use super::vector::{advance, distance, dot};
+use crate::earth::Reach;
 use crate::field::quadrature::gauss_legendre;
 
 /// Most nodes of a panel.
@@ -19,6 +20,9 @@ const FEWEST_NODES: usize = 3;
 const LONGEST_WAVELENGTHS: f64 = 0.6;
 /// Longest panel, in heights of its lowest point. An image is two heights away: the polynomial errs by about 3⁻⁸ of it.
 const LONGEST_HEIGHTS: f64 = 3.0;
+
+/// Heights below this count as this, m: only the last hand's breadth of a wire that goes down to the earth.
+const LOWEST_M: f64 = 0.05;
 
 /// Nodes of all wires, and how the segments see them.
 #[derive(Clone, Debug)]
@@ -53,17 +57,31 @@ pub(super) struct Weights {
 }
 
 impl Panels {
-    /// `wavelength_m` is the shortest one of interest; heights below `lowest_m` count as that.
-    pub fn new(segments: &[Segment], wavelength_m: f64, lowest_m: f64) -> Self {
+    /// `wavelength_m` is the shortest one of interest.
+    pub fn new(segments: &[Segment], wavelength_m: f64) -> Self {
         let mut panels = Self { nodes: Vec::new(), spans: Vec::new(), of_segment: Vec::new() };
         let mut first = 0;
         for next in 1..=segments.len() {
             if next == segments.len() || !goes_straight_on(&segments[next - 1], &segments[next]) {
-                panels.add_run(&segments[first..next], wavelength_m, lowest_m);
+                panels.add_run(&segments[first..next], wavelength_m);
                 first = next;
             }
         }
         panels
+    }
+
+    /// Distances between nodes, from the heights' box and the ground plan's.
+    pub fn reach(&self) -> Reach {
+        let ends = |axis: usize| {
+            let places = self.nodes.iter().map(|node| node.position_m[axis]);
+            places.fold([f64::INFINITY, f64::NEG_INFINITY], |[low, high], x| [low.min(x), high.max(x)])
+        };
+        let [[west, east], [south, north], [low, high]] = [0, 1, 2].map(ends);
+        Reach {
+            rho_max_m: (east - west).hypot(north - south),
+            zeta_min_m: 2.0 * low.max(LOWEST_M),
+            zeta_max_m: 2.0 * high.max(LOWEST_M),
+        }
     }
 
     /// Parts of a segment on panels.
@@ -73,11 +91,11 @@ impl Panels {
     }
 
     /// Adds the panels of consecutive segments in one straight line.
-    fn add_run(&mut self, run: &[Segment], wavelength_m: f64, lowest_m: f64) {
+    fn add_run(&mut self, run: &[Segment], wavelength_m: f64) {
         let (Some(first), Some(last)) = (run.first(), run.last()) else { return };
         let (from_m, direction) = (first.from_m, first.direction());
         let length_m = distance(from_m, last.to_m);
-        let height_m = |arc_m: f64| (from_m[2] + arc_m * direction[2]).max(lowest_m);
+        let height_m = |arc_m: f64| (from_m[2] + arc_m * direction[2]).max(LOWEST_M);
         let longest_m = |[a, b]: [f64; 2]| {
             (LONGEST_WAVELENGTHS * wavelength_m).min(LONGEST_HEIGHTS * height_m(a).min(height_m(b)))
         };
@@ -222,7 +240,7 @@ mod tests {
             vec![[2.0, 0.0, 1.4], [2.0, 0.0, 6.0]],
         ] {
             let segments = segments(&vertices_m, 40);
-            let panels = Panels::new(&segments, wavelength_m, 0.05);
+            let panels = Panels::new(&segments, wavelength_m);
             assert!(panels.nodes.len() < 90, "{} nodes", panels.nodes.len());
             for (index, segment) in segments.iter().enumerate() {
                 let [mut even, mut odd] = [0.0; 2];
@@ -252,7 +270,7 @@ mod tests {
     #[test]
     fn spans_fill_their_segment() {
         let segments = segments(&[[0.0, 0.0, 0.1], [3.0, 0.0, 0.1], [3.0, 0.0, 20.0]], 7);
-        let panels = Panels::new(&segments, 50.0, 0.05);
+        let panels = Panels::new(&segments, 50.0);
         for index in 0..segments.len() {
             let sums = panels.spans(index).iter().fold([0.0; 2], |[even, odd], span| {
                 [even + span.even.iter().sum::<f64>(), odd + span.odd.iter().sum::<f64>()]

@@ -253,6 +253,7 @@ const _: () = assert!(MOST_NODES <= PAD);
 mod tests {
     use super::*;
     use crate::constants::wave_number_rad_per_m;
+    use crate::earth::Soil;
     use crate::wire::{Boundary, Material, PortPlace, Structure, WireModel, WireShape};
 
     /// The mirror, told as a reflection.
@@ -275,7 +276,7 @@ mod tests {
     /// Admittance of a shape over the mirror told as a reflection, over the mirror, and in free space.
     fn admittances(vertices_m: &[[f64; 3]], frequency_hz: f64) -> [Complex64; 3] {
         let image = Image { k: wave_number_rad_per_m(frequency_hz) };
-        let soil = Boundary::Soil { relative_permittivity: 1.0, conductivity_s_per_m: 0.0 };
+        let soil = Boundary::Soil(Soil { relative_permittivity: 1.0, conductivity_s_per_m: 0.0 });
         let model = |boundary| {
             let structure = Structure {
                 wires: vec![WireShape {

@@ -1,7 +1,7 @@
 //! From polylines to joints and the straight stretches between them, ports included.
 
 use super::error::WireError;
-use super::structure::{Boundary, Structure};
+use super::structure::Structure;
 use super::vector::{Vec3, along, distance, lerp};
 
 /// Vertices of different wires that are this near are joined, m.
@@ -69,7 +69,7 @@ impl Skeleton {
                 arc_m += distance(pair[0], pair[1]);
             }
         }
-        if structure.boundary == Boundary::Mirror {
+        if structure.boundary.connects() {
             for joint in &mut skeleton.joints {
                 joint.grounded = joint.position_m[2].abs() <= JOINT_TOLERANCE_M;
             }
@@ -89,7 +89,7 @@ impl Skeleton {
         }
         let mut end = |vertex_m: Option<&Vec3>| {
             let Some(&vertex_m) = vertex_m else { return Degree::Open };
-            let grounded = structure.boundary == Boundary::Mirror && vertex_m[2].abs() <= JOINT_TOLERANCE_M;
+            let grounded = structure.boundary.connects() && vertex_m[2].abs() <= JOINT_TOLERANCE_M;
             if grounded || degrees[self.joint_at(vertex_m)] > 1 { Degree::Joined } else { Degree::Open }
         };
         let ends = |vertices_m: &Vec<Vec3>| [end(vertices_m.first()), end(vertices_m.last())];

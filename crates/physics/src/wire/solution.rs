@@ -20,6 +20,7 @@ use super::shares::Shares;
 use super::skeleton::{End, Skeleton};
 use super::structure::{Boundary, Structure, WireShape};
 use crate::constants::{SPEED_OF_LIGHT_M_PER_S, VACUUM_IMPEDANCE_OHM, wave_number_rad_per_m};
+use crate::earth::{HalfSpace, Reach};
 
 /// A structure with its mesh and everything about it that does not depend on frequency.
 #[derive(Clone, Debug)]
@@ -66,8 +67,8 @@ impl WireModel {
             couplings.push(Coupling::new(&mesh.segments, &mesh.line_of, Sources::Images));
         }
         let wavelength_m = SPEED_OF_LIGHT_M_PER_S / highest_hz;
-        let panels = matches!(structure.boundary, Boundary::Soil { .. })
-            .then(|| Panels::new(&mesh.segments, wavelength_m, LOWEST_NODE_M));
+        let panels = matches!(structure.boundary, Boundary::Soil(_))
+            .then(|| Panels::new(&mesh.segments, wavelength_m));
         Ok(Self { structure, skeleton, highest_hz, mesh, shares, couplings, panels })
     }
 
@@ -117,11 +118,21 @@ impl WireModel {
     /// # Errors
     /// A frequency outside the mesh's range; equations without a usable solution.
     pub fn solve(&self, frequency_hz: f64) -> Result<Solution, WireError> {
-        self.solve_with(frequency_hz, None)
+        match (self.structure.boundary, self.reach()) {
+            (Boundary::Soil(soil), Some(reach)) => {
+                self.solve_with(frequency_hz, Some(&HalfSpace::for_wires(&soil, frequency_hz, &reach)?))
+            }
+            _ => self.solve_with(frequency_hz, None),
+        }
     }
 
-    /// Solution at one frequency with what another boundary gives back added to the structure's own, which is free
-    /// space for a reflection that stands for all there is.
+    /// Distances that kernels of the soil below are needed for; `None` over no soil.
+    #[must_use]
+    pub fn reach(&self) -> Option<Reach> {
+        self.panels.as_ref().map(Panels::reach)
+    }
+
+    /// Solution at one frequency over soil whose kernels have been made ready, within [`WireModel::reach`].
     ///
     /// # Errors
     /// As [`WireModel::solve`].
@@ -242,9 +253,6 @@ impl WireModel {
             .collect()
     }
 }
-
-/// Heights below this count as this when the earth's kernels are told, m.
-const LOWEST_NODE_M: f64 = 0.02;
 
 /// Largest part of a port's voltage that a solution may leave unexplained.
 const LARGEST_RESIDUAL: f64 = 1e-6;

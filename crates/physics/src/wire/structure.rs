@@ -1,9 +1,7 @@
 //! What the solver is given: wires in space, their metal, and where they are fed.
 
-use num_complex::Complex64;
-
 use super::material::Material;
-use crate::sinusoid::Mirror;
+use crate::earth::Soil;
 
 /// Wires, ports and what lies below them.
 #[derive(Clone, Debug, PartialEq)]
@@ -49,30 +47,14 @@ pub enum Boundary {
     FreeSpace,
     /// A perfectly conducting plane at z = 0. A wire that ends on it is connected to it.
     Mirror,
-    /// Soil below z = 0, roughly: the mirror's images, weighted with the reflection coefficient of a wave from straight
-    /// above. Of a horizontal half wave over average soil, Z is off by 1 % at 0.3 λ height, by a tenth at 0.1 λ; upright
-    /// and low wires are rougher. Far fields are not offered.
-    Soil {
-        /// Relative permittivity, ≥ 1.
-        relative_permittivity: f64,
-        /// Conductivity, S/m, ≥ 0.
-        conductivity_s_per_m: f64,
-    },
+    /// Soil below z = 0, exact for wires above it. A wire that ends on it is connected to it as to a mirror: what the
+    /// earth under its end opposes to the current is for a load at that end to say.
+    Soil(Soil),
 }
 
 impl Boundary {
-    /// Whether something below reflects.
-    pub(crate) fn has_images(self) -> bool {
+    /// Whether a wire that ends on z = 0 is connected to what lies below.
+    pub(crate) fn connects(self) -> bool {
         self != Self::FreeSpace
-    }
-
-    /// What is given back of an image's part: 1 by the mirror.
-    pub(crate) fn reflected(self, frequency_hz: f64) -> Complex64 {
-        match self {
-            Self::FreeSpace | Self::Mirror => Complex64::ONE,
-            Self::Soil { relative_permittivity, conductivity_s_per_m } => {
-                -Mirror::Soil { relative_permittivity, conductivity_s_per_m }.reflection(frequency_hz)
-            }
-        }
     }
 }
