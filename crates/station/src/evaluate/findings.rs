@@ -1,14 +1,12 @@
 //! Findings: what the user should know before building, in one sentence each, most important first.
 
 use crate::hang::Hung;
-use crate::plan::{Earth, Link, Plan};
+use crate::plan::{Link, Plan};
 use crate::report::{BandReport, Finding, Model, Place, Weight};
 use crate::units;
 
 /// Below this height someone standing can reach the wire (common practice: 2.5 m).
 const REACH_M: f64 = 2.5;
-/// Below this share of a wavelength a reflection coefficient is off by more than a tenth.
-const LOW_WIRE_WAVELENGTHS: f64 = 0.12;
 
 pub(super) fn findings(plan: &Plan, hung: &Hung, bands: &[BandReport], model: Model) -> Vec<Finding> {
     let mut found = Vec::new();
@@ -19,7 +17,6 @@ pub(super) fn findings(plan: &Plan, hung: &Hung, bands: &[BandReport], model: Mo
     if model == Model::Sketch {
         limits_of_the_sketch(hung, &mut found);
     }
-    rough_earth(plan, hung, bands, &mut found);
     found.sort_by_key(|finding| finding.weight);
     found
 }
@@ -99,25 +96,5 @@ fn limits_of_the_sketch(hung: &Hung, found: &mut Vec<Finding>) {
     }
     if hung.wires.len() > 1 {
         note(Weight::Caution, Place::Plan, "The sketch sees only the fed wire; the others are left out.");
-    }
-}
-
-/// Both models know soil by its reflection coefficient straight down.
-fn rough_earth(plan: &Plan, hung: &Hung, bands: &[BandReport], found: &mut Vec<Finding>) {
-    if matches!(plan.site.earth, Earth::NoEarth | Earth::Mirror) {
-        return;
-    }
-    let fed = hung.feedpoint.wire;
-    let lowest_hz = bands.iter().map(|band| band.low_hz).fold(f64::INFINITY, f64::min);
-    let height_m = super::sketch::mean_height_m(&hung.wires[fed]);
-    let wavelengths = height_m * lowest_hz / physics::constants::SPEED_OF_LIGHT_M_PER_S;
-    if wavelengths < LOW_WIRE_WAVELENGTHS {
-        found.push(Finding {
-            weight: Weight::Caution,
-            place: Place::Wire(fed),
-            text: format!(
-                "At {height_m:.1} m the wire hangs only {wavelengths:.2} wavelengths high on the lowest band: the soil is only known by its reflection there, expect R to be off by a tenth or more."
-            ),
-        });
     }
 }

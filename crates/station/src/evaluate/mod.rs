@@ -3,6 +3,7 @@
 //! | stage | inputs | kept while |
 //! | --- | --- | --- |
 //! | geometry (`hang`) | supports, wires, feedpoint | cheap, never kept |
+//! | earth (`full::Earths`) | soil, frequencies, rough extent of the wires | none of them changes |
 //! | wire solution (`full`, `sketch`) | hung wires, places of ports, earth, frequencies | none of them changes |
 //! | loads | the wire solution and the loads' circuits | cheap, never kept |
 //! | feeds (`chain`) | one feed, frequencies | that feed stays the same |
@@ -23,6 +24,7 @@ pub use self::full::{Gains, Proof};
 
 use std::sync::Arc;
 
+use physics::earth::EarthError;
 use physics::line::LineError;
 use physics::sinusoid::SketchError;
 use physics::sweep::SweepError;
@@ -83,6 +85,23 @@ pub enum EvaluateError {
     /// The wires are nothing that the full model can take.
     #[error("wires: {0}")]
     Solver(#[from] WireError),
+    /// The soil, or the distances of the wires, are nothing that the earth can be computed for.
+    #[error("site.earth: {0}")]
+    Soil(#[from] EarthError),
+    /// A wire hangs lower than the earth's model holds.
+    #[error(
+        "wires[{wire}]: it comes down to {height_m:.2} m over the soil; accepted on {megahertz} MHz: at least {least_m:.2} m"
+    )]
+    TooLow {
+        /// Index of the wire.
+        wire: usize,
+        /// Its lowest height, m.
+        height_m: f64,
+        /// Least height accepted at the lowest frequency, m.
+        least_m: f64,
+        /// The lowest frequency, MHz.
+        megahertz: f64,
+    },
     /// The frequencies cannot be swept.
     #[error("bands: {0}")]
     Sweep(#[from] SweepError),
@@ -101,6 +120,7 @@ pub enum EvaluateError {
 #[derive(Debug, Default)]
 pub struct Evaluator {
     full: Option<Full>,
+    earths: Option<Arc<full::Earths>>,
     sketch: Option<(WireKey, Arc<WireSolution>)>,
     chains: Vec<(Feed, Chain)>,
     /// The frequencies that all of these were made for.
@@ -199,7 +219,7 @@ impl Evaluator {
         self.full.as_ref().map(|full| full.solved.prove(plan, frequency_hz)).transpose()
     }
 
-    /// Gains of the newest full answer at one of its frequencies; `None` before the first one and over soil.
+    /// Gains of the newest full answer at one of its frequencies; `None` before the first one.
     ///
     /// # Errors
     /// A frequency outside the answer's range.
@@ -210,7 +230,7 @@ impl Evaluator {
         directions: &[Direction],
     ) -> Result<Option<Gains>, EvaluateError> {
         let Some(full) = &self.full else { return Ok(None) };
-        full.solved.gains(plan, frequency_hz, directions)
+        full.solved.gains(plan, frequency_hz, directions).map(Some)
     }
 
     fn run(
@@ -221,7 +241,7 @@ impl Evaluator {
         solve: fn(&mut Self, &Plan, &Hung) -> Answered,
     ) -> Result<Report, EvaluateError> {
         if self.grids != grids {
-            *self = Self { grids, ..Self::default() };
+            *self = Self { grids, earths: self.earths.take(), ..Self::default() };
         }
         let hung = hang(plan)?;
         let (model, solution) = solve(self, plan, &hung)?;
@@ -257,7 +277,11 @@ impl Evaluator {
         }
         let solved = match kept {
             Some(full) if full.key == key => full.solved,
-            _ => full::Solved::new(plan, hung, full::boundary(&plan.site.earth)?, &self.grids)?,
+            _ => {
+                let solved = full::Solved::new(plan, hung, &self.grids, self.earths.as_ref())?;
+                self.earths = solved.earths().cloned();
+                solved
+            }
         };
         let solution = Arc::new(solved.answer(plan, hung, &self.grids)?);
         let full = Full { key, solved, loads: plan.loads.clone(), solution: Arc::clone(&solution) };
@@ -311,7 +335,7 @@ fn band_report(
         .map(|index| FrequencyReport {
             frequency_hz: grid.frequencies_hz[index],
             feedpoint_ohm: solved.points[index].impedance_ohm,
-            wire_efficiency: solved.points[index].wire_efficiency,
+            shares: solved.points[index].shares,
             feeds: (0..chains.len()).map(|feed| passage(feed, index).report()).collect(),
         })
         .collect();

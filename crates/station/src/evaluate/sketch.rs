@@ -12,7 +12,7 @@ use super::wire::{BandSolution, Cut, WirePoint, WireSolution, places};
 use crate::catalogue;
 use crate::hang::{Hung, HungWire};
 use crate::plan::{ConductorData, Earth};
-use crate::report::{Mark, MarkKind, StandingWave, WireWave};
+use crate::report::{Mark, MarkKind, Shares, StandingWave, WireWave};
 
 pub(super) fn solve(hung: &Hung, earth: &Earth, grids: &[Grid]) -> Result<WireSolution, EvaluateError> {
     let wire = hung.feedpoint.wire;
@@ -28,7 +28,7 @@ fn solve_band(hung: &Hung, sketch: &Sketch, grid: &Grid) -> Result<BandSolution,
     let wave = standing_wave(hung, sketch, &answers[grid.middle], grid.frequencies_hz[grid.middle]);
     let point = |answer: &FeedpointAnswer| WirePoint {
         impedance_ohm: answer.impedance_ohm,
-        wire_efficiency: answer.wire_efficiency,
+        shares: Shares::without_earth(1.0 - answer.wire_efficiency),
     };
     Ok(BandSolution { points: answers.iter().map(point).collect(), wave })
 }

@@ -2,7 +2,7 @@
 
 use num_complex::Complex64;
 
-use crate::report::{Mark, MarkKind, StandingWave};
+use crate::report::{Mark, MarkKind, Shares, StandingWave};
 
 /// The wire at all frequencies of all bands.
 #[derive(Clone, Debug)]
@@ -22,8 +22,7 @@ pub(super) struct BandSolution {
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(super) struct WirePoint {
     pub impedance_ohm: Complex64,
-    /// Share of the feedpoint's watts that neither metal nor loads burn.
-    pub wire_efficiency: f64,
+    pub shares: Shares,
 }
 
 /// Places along a wire at which the standing wave is given, for each half wave and at least.

@@ -57,7 +57,9 @@ struct Frequency<'a> {
     frequency_hz: f64,
     r_ohm: f64,
     x_ohm: f64,
-    wire_efficiency: f64,
+    sky_share: f64,
+    earth_share: f64,
+    burnt_share: f64,
     feeds: Vec<Feed<'a>>,
 }
 
@@ -138,7 +140,9 @@ impl<'a> Frequency<'a> {
             frequency_hz: point.frequency_hz,
             r_ohm: re,
             x_ohm: im,
-            wire_efficiency: point.wire_efficiency,
+            sky_share: point.shares.sky,
+            earth_share: point.shares.earth,
+            burnt_share: point.shares.burnt,
             feeds: point
                 .feeds
                 .iter()

@@ -110,10 +110,30 @@ pub struct FrequencyReport {
     pub frequency_hz: f64,
     /// Impedance at the feedpoint, Ω.
     pub feedpoint_ohm: Complex64,
-    /// Share of the watts at the feedpoint that the wire's own resistance does not burn, 0 to 1.
-    pub wire_efficiency: f64,
+    /// Where the watts at the feedpoint go.
+    pub shares: Shares,
     /// One entry per feed.
     pub feeds: Vec<FeedReport>,
+}
+
+/// Where the watts at the feedpoint go, as shares of them; they sum to one.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Shares {
+    /// Leave toward the sky.
+    pub sky: f64,
+    /// Heat the earth: what is left of all others ([`crate::evaluate::Proof`] has it computed on its own). The sketch
+    /// does not know it and counts it as sky.
+    pub earth: f64,
+    /// Heat metal and loads.
+    pub burnt: f64,
+}
+
+impl Shares {
+    /// Shares without an earth that takes any.
+    #[must_use]
+    pub fn without_earth(burnt: f64) -> Self {
+        Self { sky: 1.0 - burnt, earth: 0.0, burnt }
+    }
 }
 
 /// An impedance and its standing-wave ratio on a real reference.

@@ -4,9 +4,10 @@ use nalgebra::DMatrix;
 use num_complex::Complex64;
 use physics::sweep::{Fit, Sample, Sweep, SweepRange};
 use physics::wire::ports::attach;
-use physics::wire::{Load, WireModel};
+use physics::wire::{Load, Solution, WireModel};
 use rayon::prelude::*;
 
+use super::earths::Earths;
 use crate::evaluate::EvaluateError;
 
 /// Largest relative error of the sweep's fit.
@@ -25,9 +26,9 @@ pub(super) enum Answers {
 impl Answers {
     /// Always begins afresh, so that a plan's numbers do not depend on what was evaluated before it: window, terminal and
     /// paper agree to the last digit.
-    pub fn new(model: &WireModel, frequencies_hz: &[f64]) -> Result<Self, EvaluateError> {
+    pub fn new(model: &WireModel, earths: Option<&Earths>, frequencies_hz: &[f64]) -> Result<Self, EvaluateError> {
         if frequencies_hz.len() <= FEW {
-            return solve(model, frequencies_hz).map(Self::Direct);
+            return solve(model, earths, frequencies_hz).map(Self::Direct);
         }
         let mut sweep = Sweep::new(&range(model, frequencies_hz))?;
         loop {
@@ -35,7 +36,7 @@ impl Answers {
             if wanted_hz.is_empty() {
                 return Ok(Self::Swept(sweep.into_fit()));
             }
-            sweep.give(solve(model, &wanted_hz)?)?;
+            sweep.give(solve(model, earths, &wanted_hz)?)?;
         }
     }
 
@@ -76,9 +77,27 @@ impl Answers {
 }
 
 /// Threads live here: the sweep names the frequencies, all of them are solved at once.
-fn solve(model: &WireModel, frequencies_hz: &[f64]) -> Result<Vec<Sample>, EvaluateError> {
-    let solve = |&frequency_hz: &f64| Ok(Sample::from(model.solve(frequency_hz)?));
+fn solve(
+    model: &WireModel,
+    earths: Option<&Earths>,
+    frequencies_hz: &[f64],
+) -> Result<Vec<Sample>, EvaluateError> {
+    let solve = |&frequency_hz: &f64| {
+        solve_at(model, earths, frequency_hz).map(Sample::from)
+    };
     frequencies_hz.par_iter().map(solve).collect()
+}
+
+/// One solution, over the earth where there is one.
+pub(super) fn solve_at(
+    model: &WireModel,
+    earths: Option<&Earths>,
+    frequency_hz: f64,
+) -> Result<Solution, EvaluateError> {
+    Ok(match earths {
+        Some(earths) => model.solve_over(frequency_hz, &*earths.at(frequency_hz)?)?,
+        None => model.solve(frequency_hz)?,
+    })
 }
 
 fn range(model: &WireModel, frequencies_hz: &[f64]) -> SweepRange {

@@ -1,17 +1,23 @@
 //! The wire solution stage with the full model: every wire of the plan, fed and loaded where the plan says.
 
 mod answers;
+mod earths;
 mod proof;
 mod structure;
 mod trace;
 
+use std::sync::Arc;
+
 use num_complex::Complex64;
-use physics::field::PotentialSource;
+use physics::constants::SPEED_OF_LIGHT_M_PER_S;
+use physics::earth::Soil;
+use physics::field::{FarFieldSource, PotentialSource, radiated_power_w};
 use physics::sweep::Sample;
 use physics::wire::ports::{PortUse, attach};
-use physics::wire::{Boundary, EndCurrents, Load, WireModel, port_power_w};
+use physics::wire::{Boundary, EndCurrents, Load, Returned, WireModel, port_power_w};
 use rayon::prelude::*;
 
+pub(super) use self::earths::Earths;
 pub use self::proof::{Gains, Proof};
 
 use self::answers::Answers;
@@ -22,12 +28,14 @@ use super::wire::{BandSolution, Cut, WirePoint, WireSolution, marks, places};
 use crate::catalogue;
 use crate::hang::Hung;
 use crate::plan::{Earth, Plan};
-use crate::report::{StandingWave, WireWave};
+use crate::report::{Shares, StandingWave, WireWave};
 
 /// A solved structure: kept as long as wires, earth and frequencies stay the same, whatever the loads do.
 #[derive(Clone, Debug)]
 pub(super) struct Solved {
     model: WireModel,
+    /// Over soil.
+    earths: Option<Arc<Earths>>,
     answers: Answers,
     traces: Vec<Trace>,
 }
@@ -40,8 +48,11 @@ struct Fed {
     burnt_w: f64,
 }
 
-/// Frequencies of a band at which the burnt share is computed; between them it is interpolated.
-const EFFICIENCY_PLACES: usize = 9;
+/// Frequencies of a band at which shares of the watts are computed, burnt and sky; between them they are interpolated.
+const BURNT_PLACES: usize = 9;
+const SKY_PLACES: usize = 3;
+/// Lowest height over soil, in wavelengths, for which the earth's kernels are made.
+const LOWEST_WAVELENGTHS: f64 = 0.0005;
 /// Places on a segment at which its mean potential is taken: beside a gap the charge varies most.
 const PLACES_BESIDE_GAP: usize = 4;
 const PLACES_ELSEWHERE: usize = 1;
@@ -50,25 +61,45 @@ const FINEST_STEP: f64 = 0.008;
 
 impl Solved {
     /// Solves the wires.
-    pub fn new(plan: &Plan, hung: &Hung, boundary: Boundary, grids: &[Grid]) -> Result<Self, EvaluateError> {
+    ///
+    /// `kept` is an earth of an earlier solution.
+    pub fn new(
+        plan: &Plan,
+        hung: &Hung,
+        grids: &[Grid],
+        kept: Option<&Arc<Earths>>,
+    ) -> Result<Self, EvaluateError> {
+        let boundary = boundary(&plan.site.earth)?;
         let mut frequencies_hz: Vec<f64> =
             grids.iter().flat_map(|grid| grid.frequencies_hz.clone()).collect();
         frequencies_hz.sort_by(f64::total_cmp);
         frequencies_hz.dedup();
         let highest_hz = frequencies_hz.last().copied().ok_or(EvaluateError::NoFrequency)?;
         let model = WireModel::new(structure::structure(plan, hung, boundary), highest_hz)?;
-        let answers = Answers::new(&model, &frequencies_hz)?;
+        let earths = match (boundary, model.reach()) {
+            (Boundary::Soil(soil), Some(reach)) => {
+                high_enough(hung, frequencies_hz[0])?;
+                Some(Earths::fitting(kept, soil, &reach))
+            }
+            _ => None,
+        };
+        let answers = Answers::new(&model, earths.as_deref(), &frequencies_hz)?;
         let traces = hung.wires.iter().enumerate();
         let traces =
             traces.map(|(index, wire)| Trace::new(wire, index, model.segments(), model.wire_of_segment()));
         let traces = traces.collect();
-        Ok(Self { model, answers, traces })
+        Ok(Self { model, earths, answers, traces })
     }
 
     /// Tells one solution from another: where its mesh lies in memory.
     #[cfg(test)]
     pub fn identity(&self) -> *const physics::wire::Segment {
         self.model.segments().as_ptr()
+    }
+
+    /// The earth that it hangs over.
+    pub fn earths(&self) -> Option<&Arc<Earths>> {
+        self.earths.as_ref()
     }
 
     /// Number of unknown currents.
@@ -91,30 +122,43 @@ impl Solved {
         loads: &[Load],
     ) -> Result<BandSolution, EvaluateError> {
         let impedances = self.answers.feedpoint(&grid.frequencies_hz, loads)?;
-        let efficiency = self.efficiency(grid, loads)?;
+        let burnt = at_places(grid, BURNT_PLACES, |frequency_hz| {
+            Ok(self.fed(&self.answers.sample(frequency_hz)?, loads)?.burnt_w.clamp(0.0, 1.0))
+        })?;
+        let sky = match self.earths {
+            // Without soil what is not burnt leaves.
+            None => Vec::new(),
+            Some(_) => at_places(grid, SKY_PLACES, |frequency_hz| {
+                let fed = self.fed(&self.answers.sample(frequency_hz)?, loads)?;
+                Ok(radiated_power_w(&self.far_field(&fed)).clamp(0.0, 1.0))
+            })?,
+        };
+        let shares = |index: usize| {
+            let burnt = between(&burnt, index);
+            if sky.is_empty() {
+                return Shares::without_earth(burnt);
+            }
+            let sky = between(&sky, index).min(1.0 - burnt);
+            Shares { sky, earth: 1.0 - burnt - sky, burnt }
+        };
         let points = impedances
             .into_iter()
             .enumerate()
-            .map(|(index, impedance_ohm)| WirePoint {
-                impedance_ohm,
-                wire_efficiency: between(&efficiency, index),
-            })
+            .map(|(index, impedance_ohm)| WirePoint { impedance_ohm, shares: shares(index) })
             .collect();
         let fed = self.fed(&self.answers.sample(grid.frequencies_hz[grid.middle])?, loads)?;
-        Ok(BandSolution { points, wave: self.wave(plan, hung, &fed) })
+        Ok(BandSolution { points, wave: self.wave(plan, hung, &fed)? })
     }
 
-    /// Share of the watts that metal and loads leave, at a few indices of the grid.
-    fn efficiency(&self, grid: &Grid, loads: &[Load]) -> Result<Vec<(usize, f64)>, EvaluateError> {
-        let last = grid.frequencies_hz.len() - 1;
-        let places = last.min(EFFICIENCY_PLACES - 1);
-        (0..=places)
-            .map(|place| {
-                let index = (place * last).checked_div(places).unwrap_or(0);
-                let fed = self.fed(&self.answers.sample(grid.frequencies_hz[index])?, loads)?;
-                Ok((index, (1.0 - fed.burnt_w).clamp(0.0, 1.0)))
-            })
-            .collect()
+    fn far_field(&self, fed: &Fed) -> FarFieldSource {
+        let boundary = self.model.structure().boundary;
+        FarFieldSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz)
+    }
+
+    /// What the soil adds to the potentials on the wires.
+    fn returned(&self, fed: &Fed) -> Result<Option<Returned<'_>>, EvaluateError> {
+        let Some(earths) = &self.earths else { return Ok(None) };
+        Ok(self.model.returned(&fed.currents, fed.frequency_hz, &*earths.at(fed.frequency_hz)?))
     }
 
     fn fed(&self, sample: &Sample, loads: &[Load]) -> Result<Fed, EvaluateError> {
@@ -143,9 +187,9 @@ impl Solved {
     /// At a single place it ripples with the mesh; its mean over a segment does not, for that is what the solver's
     /// equations hold. So the means stand at the segments' middles, and straight lines between them; none crosses a gap.
     /// The two places at a gap carry the potential continued to its middle as along metal: there it jumps by the voltage.
-    fn potentials(&self, index: usize, arc_m: &[f64], cuts: &[Cut], fed: &Fed) -> Vec<Complex64> {
-        let (segments, boundary) = (self.model.segments(), self.model.structure().boundary);
-        let source = PotentialSource::new(segments, &fed.currents, boundary, fed.frequency_hz);
+    fn potentials(&self, index: usize, arc_m: &[f64], cuts: &[Cut], sources: &Potentials) -> Vec<Complex64> {
+        let segments = self.model.segments();
+        let Potentials { own, returned } = sources;
         let in_gap = self.model.port_of_segment();
         // The mesh is far finer at ends and gaps than a picture needs.
         let apart_m = arc_m.last().copied().unwrap_or(0.0) * FINEST_STEP;
@@ -158,10 +202,11 @@ impl Solved {
                 continue;
             }
             let places = if beside_gap { PLACES_BESIDE_GAP } else { PLACES_ELSEWHERE };
-            let mean_v = source.mean_potential_v(&segments[segment], places);
+            let returned_v = returned.as_ref().map_or(Complex64::ZERO, |r| r.mean_potential_v(segment));
+            let mean_v = own.mean_potential_v(&segments[segment], places) + returned_v;
             let across = cuts.iter().find(|cut| (middle_m - cut.arc_m).abs() < cut.half_width_m + half_m);
             let across = across.map(|cut| {
-                let induced_v_per_m = self.traces[index].induced_v_per_m(middle_m, segments, &source);
+                let induced_v_per_m = self.traces[index].induced_v_per_m(middle_m, segments, sources);
                 let edge_m = cut.arc_m + cut.half_width_m.copysign(middle_m - cut.arc_m);
                 (edge_m, mean_v + induced_v_per_m * (middle_m - cut.arc_m))
             });
@@ -173,7 +218,11 @@ impl Solved {
         arc_m.iter().map(|&arc| between_cuts(&means, cuts, arc)).collect()
     }
 
-    fn wave(&self, plan: &Plan, hung: &Hung, fed: &Fed) -> StandingWave {
+    fn wave(&self, plan: &Plan, hung: &Hung, fed: &Fed) -> Result<StandingWave, EvaluateError> {
+        let boundary = self.model.structure().boundary;
+        let own =
+            PotentialSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz);
+        let sources = Potentials { own, returned: self.returned(fed)? };
         let wires = hung.wires.iter().enumerate().map(|(index, wire)| {
             let cuts = cuts(plan, hung, index);
             let arc_m = places(wire.length_m(), fed.frequency_hz, &cuts);
@@ -182,12 +231,34 @@ impl Solved {
                 .iter()
                 .map(|&arc| self.traces[index].current_a(arc, segments, &fed.currents, fed.frequency_hz))
                 .collect();
-            let potential_v = self.potentials(index, &arc_m, &cuts, fed);
+            let potential_v = self.potentials(index, &arc_m, &cuts, &sources);
             let marks = marks(&arc_m, &current_a);
             WireWave { arc_m, current_a, potential_v, marks }
         });
-        StandingWave { frequency_hz: fed.frequency_hz, wires: wires.collect() }
+        Ok(StandingWave { frequency_hz: fed.frequency_hz, wires: wires.collect() })
     }
+}
+
+/// Potentials along the wires: of their own charges, and what soil gives back.
+struct Potentials<'a> {
+    own: PotentialSource<'a>,
+    returned: Option<Returned<'a>>,
+}
+
+/// A value at a few frequencies of a grid, with their indices.
+fn at_places(
+    grid: &Grid,
+    most: usize,
+    value: impl Fn(f64) -> Result<f64, EvaluateError>,
+) -> Result<Vec<(usize, f64)>, EvaluateError> {
+    let last = grid.frequencies_hz.len() - 1;
+    let places = last.min(most - 1);
+    (0..=places)
+        .map(|place| {
+            let index = (place * last).checked_div(places).unwrap_or(0);
+            Ok((index, value(grid.frequencies_hz[index])?))
+        })
+        .collect()
 }
 
 /// Straight lines through the known places on one side of every cut; beyond the outermost the nearest counts.
@@ -204,15 +275,29 @@ fn between_cuts(known: &[(f64, Complex64)], cuts: &[Cut], arc_m: f64) -> Complex
 }
 
 /// What the plan's earth is to the solver.
-pub(super) fn boundary(earth: &Earth) -> Result<Boundary, EvaluateError> {
+fn boundary(earth: &Earth) -> Result<Boundary, EvaluateError> {
     if matches!(earth, Earth::Mirror) {
         return Ok(Boundary::Mirror);
     }
     let soil = catalogue::earth(earth).map_err(EvaluateError::Earth)?;
-    Ok(soil.map_or(Boundary::FreeSpace, |soil| Boundary::Soil {
-        relative_permittivity: soil.relative_permittivity,
-        conductivity_s_per_m: soil.conductivity_s_per_m,
+    Ok(soil.map_or(Boundary::FreeSpace, |soil| {
+        Boundary::Soil(Soil {
+            relative_permittivity: soil.relative_permittivity,
+            conductivity_s_per_m: soil.conductivity_s_per_m,
+        })
     }))
+}
+
+/// Refuses wires that hang lower over soil than its kernels are made for.
+fn high_enough(hung: &Hung, lowest_hz: f64) -> Result<(), EvaluateError> {
+    let least_m = LOWEST_WAVELENGTHS * SPEED_OF_LIGHT_M_PER_S / lowest_hz;
+    for (wire, hung) in hung.wires.iter().enumerate() {
+        let height_m = hung.vertices.iter().map(|vertex| vertex.at.z_m).fold(f64::INFINITY, f64::min);
+        if height_m < least_m {
+            return Err(EvaluateError::TooLow { wire, height_m, least_m, megahertz: lowest_hz / 1e6 });
+        }
+    }
+    Ok(())
 }
 
 /// The feedpoint is fed, every other port closed with its load.

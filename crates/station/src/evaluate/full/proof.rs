@@ -1,9 +1,10 @@
 //! What stands behind an answer of the full model: where the watts go, how far a finer mesh would move it, and the gain.
 
-use physics::field::{Direction, FarFieldSource, radiated_power_w, strongest_direction};
-use physics::wire::mesh_error;
+use physics::field::{Direction, earth_power_w, radiated_power_w, strongest_direction};
+use physics::wire::{Boundary, mesh_error};
 
 use super::Solved;
+use super::answers::solve_at;
 use super::structure;
 use crate::evaluate::EvaluateError;
 use crate::plan::Plan;
@@ -13,9 +14,10 @@ use crate::plan::Plan;
 pub struct Proof {
     /// Hz.
     pub frequency_hz: f64,
-    /// Watts of one at the feedpoint that reach the sky, by integration over the sphere; `None` over soil, where the
-    /// earth's share is not known on its own.
-    pub sky_w: Option<f64>,
+    /// Watts of one at the feedpoint that reach the sky, by integration over the sphere.
+    pub sky_w: f64,
+    /// Watts of one that heat the earth, by integration over its surface; 0 where there is no soil.
+    pub earth_w: f64,
     /// Watts of one that metal and loads burn.
     pub burnt_w: f64,
     /// Largest relative difference of the admittances from those of a finer mesh.
@@ -27,8 +29,8 @@ pub struct Proof {
 impl Proof {
     /// Watts accounted for, of one at the feedpoint: 1 for a perfect balance.
     #[must_use]
-    pub fn energy_balance(&self) -> Option<f64> {
-        self.sky_w.map(|sky_w| sky_w + self.burnt_w)
+    pub fn energy_balance(&self) -> f64 {
+        self.sky_w + self.earth_w + self.burnt_w
     }
 }
 
@@ -47,38 +49,39 @@ impl Solved {
     pub fn prove(&self, plan: &Plan, frequency_hz: f64) -> Result<Proof, EvaluateError> {
         let loads = structure::loads(plan);
         let fed = self.fed(&self.answers.sample(frequency_hz)?, &loads)?;
-        let working = self.model.solve(frequency_hz)?;
-        let refined = self.model.refined()?.solve(frequency_hz)?;
+        let earths = self.earths.as_deref();
+        let working = solve_at(&self.model, earths, frequency_hz)?;
+        let refined = solve_at(&self.model.refined()?, earths, frequency_hz)?;
         Ok(Proof {
             frequency_hz,
-            sky_w: self.far_field(&fed).map(|source| radiated_power_w(&source)),
+            sky_w: radiated_power_w(&self.far_field(&fed)),
+            earth_w: self.earth_w(&fed)?,
             burnt_w: fed.burnt_w,
             mesh_error: mesh_error(&working, &refined),
             unknowns: self.unknowns(),
         })
     }
 
-    /// `None` over soil.
+    /// Gains in directions, and the strongest direction.
     pub fn gains(
         &self,
         plan: &Plan,
         frequency_hz: f64,
         directions: &[Direction],
-    ) -> Result<Option<Gains>, EvaluateError> {
+    ) -> Result<Gains, EvaluateError> {
         let fed = self.fed(&self.answers.sample(frequency_hz)?, &structure::loads(plan))?;
-        Ok(self.far_field(&fed).map(|source| {
-            let gain = |direction: Direction| source.field(direction).gain_dbi(1.0);
-            let (peak, _) = strongest_direction(&source);
-            Gains {
-                samples_dbi: directions.iter().map(|&direction| gain(direction)).collect(),
-                peak_dbi: gain(peak),
-                peak,
-            }
-        }))
+        let source = self.far_field(&fed);
+        let gain = |direction: Direction| source.field(direction).gain_dbi(1.0);
+        let (peak, _) = strongest_direction(&source);
+        Ok(Gains {
+            samples_dbi: directions.iter().map(|&direction| gain(direction)).collect(),
+            peak_dbi: gain(peak),
+            peak,
+        })
     }
 
-    fn far_field(&self, fed: &super::Fed) -> Option<FarFieldSource> {
-        let boundary = self.model.structure().boundary;
-        FarFieldSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz)
+    fn earth_w(&self, fed: &super::Fed) -> Result<f64, EvaluateError> {
+        let Boundary::Soil(soil) = self.model.structure().boundary else { return Ok(0.0) };
+        Ok(earth_power_w(self.model.segments(), &fed.currents, &soil, fed.frequency_hz)?)
     }
 }

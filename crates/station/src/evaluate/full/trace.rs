@@ -1,9 +1,10 @@
 //! From the mesh back to the wire: which segments lie where along a hung wire, and the current at any place.
 
 use num_complex::Complex64;
-use physics::field::{PotentialSource, SurfacePoint};
+use physics::field::SurfacePoint;
 use physics::wire::{EndCurrents, Segment};
 
+use super::Potentials;
 use crate::hang::HungWire;
 use crate::plan::Point;
 
@@ -68,12 +69,14 @@ impl Trace {
     }
 
     /// jωA toward the wire's end at a place, V/m peak.
-    pub fn induced_v_per_m(&self, arc_m: f64, segments: &[Segment], source: &PotentialSource) -> Complex64 {
+    pub fn induced_v_per_m(&self, arc_m: f64, segments: &[Segment], sources: &Potentials) -> Complex64 {
         let (index, along_m) = self.at(arc_m);
         let (segment, direction) = (&segments[index], segments[index].direction());
         let axis_m = std::array::from_fn(|axis| segment.from_m[axis] + along_m * direction[axis]);
         let at = SurfacePoint { axis_m, radius_m: segment.radius_m };
-        self.sign(arc_m) * source.induced_v_per_m(at, direction)
+        let own = sources.own.induced_v_per_m(at, direction);
+        let returned = sources.returned.as_ref().map(|returned| returned.mean_induced_v_per_m(index));
+        self.sign(arc_m) * (own + returned.unwrap_or_default())
     }
 
     /// −1 where the segment at a place points toward the wire's beginning.
