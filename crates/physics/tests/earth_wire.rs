@@ -36,76 +36,67 @@ impl Reflection for Exact {
     }
 }
 
+/// A case's structure over what is told to lie below.
+fn structure(case: &Value, boundary: Boundary) -> Structure {
+    let wires: Vec<WireShape> = case["wires"]
+        .as_array()
+        .expect(LAYOUT)
+        .iter()
+        .map(|wire| WireShape {
+            vertices_m: wire["vertices_m"]
+                .as_array()
+                .expect(LAYOUT)
+                .iter()
+                .map(|vertex| std::array::from_fn(|axis| number(&vertex[axis])))
+                .collect(),
+            radius_m: number(&wire["radius_m"]),
+            material: Material::PERFECT,
+        })
+        .collect();
+    let pairs = wires[0].vertices_m.windows(2);
+    let length_m: f64 =
+        pairs.map(|p| (0..3).map(|axis| (p[1][axis] - p[0][axis]).powi(2)).sum::<f64>().sqrt()).sum();
+    let feed = &case["feed"];
+    let ports = vec![PortPlace {
+        wire: 0,
+        arc_m: number(&feed["arc_fraction"]) * length_m,
+        gap_m: number(&feed["gap_m"]),
+    }];
+    Structure { wires, ports, boundary }
+}
+
+/// Source: reference cases of this project's own by an independent method with exact Sommerfeld functions; numerical
+/// references, not published values. Level, sloping, bent and upright wires over soils from dry to sea.
 #[test]
-fn reference_cases_with_exact_kernels() {
+fn tables_and_integrals_give_the_same_wires_and_both_the_reference() {
     let path = concat!(env!("CARGO_MANIFEST_DIR"), "/../../tests/data/reference/earth.json");
     let file: Value = serde_json::from_str(&std::fs::read_to_string(path).unwrap()).unwrap();
-    for case in file["cases"].as_array().unwrap() {
-        let begin = std::time::Instant::now();
-        let id = case["id"].as_str().unwrap();
+    // Those whose integrals take a moment only.
+    for id in ["g04", "g12", "g20", "g24", "g30", "g34", "g40", "g44", "g46", "g48"] {
+        let case =
+            file["cases"].as_array().expect(LAYOUT).iter().find(|case| case["id"] == id).expect(LAYOUT);
         let frequency_hz = number(&case["frequency_hz"]);
-        let wires: Vec<WireShape> = case["wires"]
-            .as_array()
-            .unwrap()
-            .iter()
-            .map(|wire| WireShape {
-                vertices_m: wire["vertices_m"]
-                    .as_array()
-                    .unwrap()
-                    .iter()
-                    .map(|v| std::array::from_fn(|axis| number(&v[axis])))
-                    .collect(),
-                radius_m: number(&wire["radius_m"]),
-                material: Material::PERFECT,
-            })
-            .collect();
-        let length: f64 = wires[0]
-            .vertices_m
-            .windows(2)
-            .map(|p| (0..3).map(|i| (p[1][i] - p[0][i]).powi(2)).sum::<f64>().sqrt())
-            .sum();
-        let ports = vec![PortPlace {
-            wire: 0,
-            arc_m: number(&case["feed"]["arc_fraction"]) * length,
-            gap_m: number(&case["feed"]["gap_m"]),
-        }];
         let soil = Soil {
             relative_permittivity: number(&case["earth"]["relative_permittivity"]),
             conductivity_s_per_m: number(&case["earth"]["conductivity_s_per_m"]),
         };
-        let structure = |boundary| Structure { wires: wires.clone(), ports: ports.clone(), boundary };
-        let below = Boundary::Soil(soil);
-        let exact = Exact {
-            epsilon: soil.complex_permittivity(frequency_hz).unwrap(),
-            k: wave_number_rad_per_m(frequency_hz),
-        };
-        let model = WireModel::new(structure(below), frequency_hz).unwrap();
-        let y_exact = model.solve_over(frequency_hz, &exact).unwrap().port_admittance_s[(0, 0)];
-        let y = model.solve(frequency_hz).unwrap().port_admittance_s[(0, 0)];
-        let fast = (y - y_exact).norm() / y_exact.norm();
-        let z_free = WireModel::new(structure(Boundary::FreeSpace), frequency_hz)
-            .unwrap()
-            .solve(frequency_hz)
-            .unwrap()
-            .port_admittance_s[(0, 0)]
-            .inv();
-        let reference = &case["reference"];
-        let z_ref = Complex64::new(number(&reference["r_ohm"]), number(&reference["x_ohm"]));
-        let free_ref =
-            Complex64::new(number(&reference["free_space_r_ohm"]), number(&reference["free_space_x_ohm"]));
-        let y_ref = z_ref.inv();
-        let farad = ((y - y_ref).im / (TAU * frequency_hz)).clamp(-0.25e-12, 0.25e-12);
-        let core = (y - y_ref - Complex64::new(0.0, TAU * frequency_hz * farad)).norm() / y_ref.norm();
-        let change = ((y.inv() - z_free) - (z_ref - free_ref)).norm() / z_ref.norm();
+        let epsilon = soil.complex_permittivity(frequency_hz).unwrap();
+        let exact = Exact { epsilon, k: wave_number_rad_per_m(frequency_hz) };
+        let model = WireModel::new(structure(case, Boundary::Soil(soil)), frequency_hz).unwrap();
+        let by_integrals = model.solve_over(frequency_hz, &exact).unwrap().port_admittance_s[(0, 0)];
+        let by_tables = model.solve(frequency_hz).unwrap().port_admittance_s[(0, 0)];
+        let apart = (by_tables - by_integrals).norm() / by_integrals.norm();
+        let y_ref =
+            Complex64::new(number(&case["reference"]["r_ohm"]), number(&case["reference"]["x_ohm"])).inv();
+        // The capacitance of the feed gap, up to 0.25 pF, is taken out.
+        let off = by_integrals - y_ref;
+        let most_s = TAU * frequency_hz * 0.25e-12;
+        let core = Complex64::new(off.re, off.im - off.im.clamp(-most_s, most_s)).norm() / y_ref.norm();
         println!(
-            "{id}: core {:.3} %, dG {:.3} %, change {:.3} %, {:.2} of {:.2}, {} unknowns, {:.1} s",
-            100.0 * core,
-            100.0 * (y.re / y_ref.re - 1.0),
-            100.0 * change,
-            y.inv(),
-            z_ref,
-            model.unknowns(),
-            begin.elapsed().as_secs_f64()
+            "{id}: tables {apart:.1e} from the integrals, these {:.3} % from the reference",
+            100.0 * core
         );
+        assert!(apart < 2e-4, "{id}: {by_tables} for {by_integrals}");
+        assert!(core < 2e-3, "{id}: {by_integrals} for {y_ref}");
     }
 }

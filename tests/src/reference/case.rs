@@ -106,8 +106,12 @@ pub struct Reference {
     pub x_ohm: f64,
     /// Watts to the sky over watts at the feed.
     pub efficiency: f64,
-    /// dBi.
-    pub peak_gain_dbi: f64,
+    /// The same without an earth, Ω; of cases over soil.
+    pub free_space_r_ohm: Option<f64>,
+    /// Ω.
+    pub free_space_x_ohm: Option<f64>,
+    /// dBi; not of all cases.
+    pub peak_gain_dbi: Option<f64>,
     /// Gains in directions.
     pub gain_samples_dbi: Vec<Gain>,
 }

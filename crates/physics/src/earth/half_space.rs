@@ -237,7 +237,7 @@ fn ln(x: f64) -> f64 {
     /// 2⁵², with the exponent's own bits below.
     const SHIFT: u64 = 0x4330_0000_0000_0000;
     let bits = x.to_bits();
-    let exponent = f64::from_bits((bits >> 52) | SHIFT) - (4_503_599_627_370_496.0 + 1022.5);
+    let exponent = f64::from_bits((bits >> 52) | SHIFT) - 4_503_599_627_370_496.0 - 1022.5;
     let mantissa = f64::from_bits((bits & 0x000f_ffff_ffff_ffff) | 0x3ff0_0000_0000_0000);
     // ln(m/√2) = 2·artanh s, s = (m − √2)/(m + √2), |s| < 0.172
     let s = (mantissa - SQRT_2) / (mantissa + SQRT_2);

@@ -26,7 +26,11 @@ pub(super) enum Answers {
 impl Answers {
     /// Always begins afresh, so that a plan's numbers do not depend on what was evaluated before it: window, terminal and
     /// paper agree to the last digit.
-    pub fn new(model: &WireModel, earths: Option<&Earths>, frequencies_hz: &[f64]) -> Result<Self, EvaluateError> {
+    pub fn new(
+        model: &WireModel,
+        earths: Option<&Earths>,
+        frequencies_hz: &[f64],
+    ) -> Result<Self, EvaluateError> {
         if frequencies_hz.len() <= FEW {
             return solve(model, earths, frequencies_hz).map(Self::Direct);
         }
@@ -82,9 +86,7 @@ fn solve(
     earths: Option<&Earths>,
     frequencies_hz: &[f64],
 ) -> Result<Vec<Sample>, EvaluateError> {
-    let solve = |&frequency_hz: &f64| {
-        solve_at(model, earths, frequency_hz).map(Sample::from)
-    };
+    let solve = |&frequency_hz: &f64| solve_at(model, earths, frequency_hz).map(Sample::from);
     frequencies_hz.par_iter().map(solve).collect()
 }
 

@@ -1,12 +1,12 @@
 //! The earth stage: soils made ready for frequencies, kept while soil and the wires' rough extent stay.
 
 use std::collections::HashMap;
+use std::fmt;
 use std::sync::{Arc, Mutex, PoisonError};
 
 use physics::earth::{EarthError, HalfSpace, Reach, Soil};
 
 /// One soil at the frequencies that have been asked for.
-#[derive(Debug)]
 pub(in crate::evaluate) struct Earths {
     soil: Soil,
     reach: Reach,
@@ -46,6 +46,16 @@ impl Earths {
         let earth = Arc::new(HalfSpace::for_wires(&self.soil, frequency_hz, &self.reach)?);
         lock().insert(key, Arc::clone(&earth));
         Ok(earth)
+    }
+}
+
+impl fmt::Debug for Earths {
+    fn fmt(&self, formatter: &mut fmt::Formatter<'_>) -> fmt::Result {
+        formatter
+            .debug_struct("Earths")
+            .field("soil", &self.soil)
+            .field("reach", &self.reach)
+            .finish_non_exhaustive()
     }
 }
 

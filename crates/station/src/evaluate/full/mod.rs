@@ -220,8 +220,7 @@ impl Solved {
 
     fn wave(&self, plan: &Plan, hung: &Hung, fed: &Fed) -> Result<StandingWave, EvaluateError> {
         let boundary = self.model.structure().boundary;
-        let own =
-            PotentialSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz);
+        let own = PotentialSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz);
         let sources = Potentials { own, returned: self.returned(fed)? };
         let wires = hung.wires.iter().enumerate().map(|(index, wire)| {
             let cuts = cuts(plan, hung, index);

@@ -1,7 +1,7 @@
 //! What stands behind an answer of the full model: where the watts go, how far a finer mesh would move it, and the gain.
 
 use physics::field::{Direction, earth_power_w, radiated_power_w, strongest_direction};
-use physics::wire::{Boundary, mesh_error};
+use physics::wire::mesh_error;
 
 use super::Solved;
 use super::answers::solve_at;
@@ -16,8 +16,9 @@ pub struct Proof {
     pub frequency_hz: f64,
     /// Watts of one at the feedpoint that reach the sky, by integration over the sphere.
     pub sky_w: f64,
-    /// Watts of one that heat the earth, by integration over its surface; 0 where there is no soil.
-    pub earth_w: f64,
+    /// Watts of one that heat the earth, by integration over its surface: 0 where there is no soil, `None` where a wire
+    /// goes down to it.
+    pub earth_w: Option<f64>,
     /// Watts of one that metal and loads burn.
     pub burnt_w: f64,
     /// Largest relative difference of the admittances from those of a finer mesh.
@@ -29,8 +30,8 @@ pub struct Proof {
 impl Proof {
     /// Watts accounted for, of one at the feedpoint: 1 for a perfect balance.
     #[must_use]
-    pub fn energy_balance(&self) -> f64 {
-        self.sky_w + self.earth_w + self.burnt_w
+    pub fn energy_balance(&self) -> Option<f64> {
+        self.earth_w.map(|earth_w| self.sky_w + earth_w + self.burnt_w)
     }
 }
 
@@ -52,10 +53,11 @@ impl Solved {
         let earths = self.earths.as_deref();
         let working = solve_at(&self.model, earths, frequency_hz)?;
         let refined = solve_at(&self.model.refined()?, earths, frequency_hz)?;
+        let source = self.far_field(&fed);
         Ok(Proof {
             frequency_hz,
-            sky_w: radiated_power_w(&self.far_field(&fed)),
-            earth_w: self.earth_w(&fed)?,
+            sky_w: radiated_power_w(&source),
+            earth_w: earth_power_w(&source),
             burnt_w: fed.burnt_w,
             mesh_error: mesh_error(&working, &refined),
             unknowns: self.unknowns(),
@@ -78,10 +80,5 @@ impl Solved {
             peak_dbi: gain(peak),
             peak,
         })
-    }
-
-    fn earth_w(&self, fed: &super::Fed) -> Result<f64, EvaluateError> {
-        let Boundary::Soil(soil) = self.model.structure().boundary else { return Ok(0.0) };
-        Ok(earth_power_w(self.model.segments(), &fed.currents, &soil, fed.frequency_hz)?)
     }
 }
