@@ -11,6 +11,7 @@ pub mod lanes;
 mod loads;
 pub mod marks;
 pub mod sheet;
+mod soil;
 pub mod station;
 pub mod swr_scale;
 mod together;

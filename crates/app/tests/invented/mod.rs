@@ -11,7 +11,7 @@ use station::plan::{
 };
 use station::report::{
     BandFeed, BandReport, FeedReport, FrequencyReport, LinkReport, Mark, MarkKind, Model, ProfilePoint,
-    Report, Seen, Sense, Setting, StandingWave, Verdict, VerdictKind, WireWave,
+    Report, Seen, Sense, Setting, Shares, StandingWave, Verdict, VerdictKind, WireWave,
 };
 
 const WIRE_M: f64 = 40.0;
@@ -164,7 +164,12 @@ fn seen(z_ohm: Complex64, reference_ohm: f64) -> Seen {
 fn frequency_report(frequency_hz: f64, plan: &Plan) -> FrequencyReport {
     let z = feedpoint(frequency_hz);
     let feeds = plan.feeds.iter().map(|feed| feed_report(z, feed, frequency_hz)).collect();
-    FrequencyReport { frequency_hz, feedpoint_ohm: z, wire_efficiency: 0.97, feeds }
+    FrequencyReport {
+        frequency_hz,
+        feedpoint_ohm: z,
+        shares: Shares { sky: 0.8, earth: 0.17, burnt: 0.03 },
+        feeds,
+    }
 }
 
 fn feed_report(z: Complex64, feed: &Feed, frequency_hz: f64) -> FeedReport {

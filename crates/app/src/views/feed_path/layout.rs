@@ -23,7 +23,7 @@ const NARROW: f32 = 104.0;
 const BETWEEN: f32 = 10.0;
 const MOST_BETWEEN: f32 = 30.0;
 /// The wire and its watts.
-const WIRE: f32 = 62.0;
+const WIRE: f32 = 76.0;
 /// The path's own share of a column's width.
 const INSET: f32 = 4.0;
 /// What is left of a path without watts.

@@ -37,7 +37,11 @@ pub struct Column<'a> {
 pub struct WireEnd {
     /// Watts that reach the wire.
     pub watts: f64,
-    /// Of these, watts that the wire's own resistance turns into heat.
+    /// Of these, watts that leave toward the sky.
+    pub sky_w: f64,
+    /// Watts that the soil below takes.
+    pub earth_w: f64,
+    /// Watts that metal and loads turn into heat.
     pub heat_w: f64,
 }
 
@@ -95,9 +99,15 @@ fn column<'a>(snapshot: &Snapshot<'a>, index: usize, feed: &'a Feed) -> Column<'
         }
     });
     let blocks = blocks.collect();
-    let wire = found.zip(band).map(|(f, b)| WireEnd {
-        watts: f.watts_to_wire,
-        heat_w: f.watts_to_wire * (1.0 - b.middle_point().wire_efficiency),
+    let wire = found.zip(band).map(|(f, b)| {
+        let shares = b.middle_point().shares;
+        let watts = f.watts_to_wire;
+        WireEnd {
+            watts,
+            sky_w: watts * shares.sky,
+            earth_w: watts * shares.earth,
+            heat_w: watts * shares.burnt,
+        }
     });
     let verdict = found.and(band).and_then(|b| b.feeds.get(index)).map(|f| &f.verdict);
     let verdict_words = band.zip(verdict).map_or_else(String::new, |(b, v)| {
@@ -171,7 +181,7 @@ impl Column<'_> {
             return "being worked out".to_owned();
         };
         format!(
-            "{}{}; in the middle of the band {} of {} reach the wire, {} of them heat the wire itself",
+            "{}{}; in the middle of the band {} of {} reach the wire: {} leave for the sky, {} heat the earth, {} the wire itself",
             verdict.words(),
             if self.verdict_words == verdict.words() {
                 String::new()
@@ -180,6 +190,8 @@ impl Column<'_> {
             },
             units::watts(wire.watts),
             units::watts(self.power_w),
+            units::watts(wire.sky_w),
+            units::watts(wire.earth_w),
             units::watts(wire.heat_w)
         )
     }

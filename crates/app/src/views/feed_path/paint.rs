@@ -180,5 +180,9 @@ pub(super) fn wire(ui: &egui::Ui, view: &View<'_>) {
     };
     centred(5.0, units::watts(wire.watts), TextStyle::Heading, Ink::Text);
     centred(26.0, "to the wire".to_owned(), TextStyle::Small, Ink::Faint);
-    centred(41.0, format!("heat {}", units::watts(wire.heat_w)), TextStyle::Small, Ink::Faint);
+    let ends = [("sky", wire.sky_w), ("earth", wire.earth_w), ("heat", wire.heat_w)];
+    let ends: Vec<String> =
+        ends.iter().map(|(name, watts)| format!("{name} {}", units::watts(*watts))).collect();
+    centred(41.0, ends[..2].join("   "), TextStyle::Small, Ink::Text);
+    centred(56.0, ends[2].clone(), TextStyle::Small, Ink::Faint);
 }

@@ -17,7 +17,7 @@ pub enum Order {
     Planned,
     /// Lowest frequency first.
     Frequency,
-    /// Best verdict of the chosen feed first, then most watts to the wire.
+    /// Best verdict of the chosen feed first, then most watts to the sky.
     BestFirst,
 }
 
@@ -85,7 +85,7 @@ pub fn sort(lanes: &mut [Lane<'_>], order: Order, pinned: &BTreeSet<String>, fee
         Order::Frequency => lanes.sort_by(|a, b| a.edges_hz.0.total_cmp(&b.edges_hz.0)),
         Order::BestFirst => lanes.sort_by(|a, b| {
             let key = |lane: &Lane<'_>| lane.report.and_then(|r| r.feeds.get(feed)).map(|f| f.verdict.kind);
-            let watts = |lane: &Lane<'_>| lane.middle_feed(feed).map_or(0.0, |f| f.watts_to_wire);
+            let watts = |lane: &Lane<'_>| lane.ends(feed).map_or(0.0, |ends| ends.sky_w);
             key(a)
                 .is_none()
                 .cmp(&key(b).is_none())
@@ -96,7 +96,24 @@ pub fn sort(lanes: &mut [Lane<'_>], order: Order, pinned: &BTreeSet<String>, fee
     lanes.sort_by_key(|lane| !pinned.contains(lane.name));
 }
 
+/// Where the watts of a feed end in the middle of a band.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Ends {
+    /// Leave toward the sky, W.
+    pub sky_w: f64,
+    /// Heat the soil, W.
+    pub earth_w: f64,
+}
+
 impl<'a> Lane<'a> {
+    /// Where a feed's watts end, once there is a report.
+    #[must_use]
+    pub fn ends(&self, feed: usize) -> Option<Ends> {
+        let watts = self.middle_feed(feed)?.watts_to_wire;
+        let shares = self.report?.middle_point().shares;
+        Some(Ends { sky_w: watts * shares.sky, earth_w: watts * shares.earth })
+    }
+
     /// A band of a report.
     #[must_use]
     pub fn of(snapshot: &Snapshot<'_>, band: usize, report: &'a BandReport) -> Self {
@@ -193,7 +210,17 @@ impl<'a> Lane<'a> {
         if at.setting.is_some() {
             text += &format!(" before and {} after the matching unit", units::swr(at.at_transmitter.swr));
         }
-        text + &format!(" and {} to the wire", units::watts(at.watts_to_wire))
+        text += &format!(" and {} to the wire", units::watts(at.watts_to_wire));
+        match self.ends(feed) {
+            Some(ends) if ends.earth_w >= 0.5 => {
+                text + &format!(
+                    ", {} of them to the sky and {} into the earth",
+                    units::watts(ends.sky_w),
+                    units::watts(ends.earth_w)
+                )
+            }
+            _ => text,
+        }
     }
 
     /// The whole lane in words, for screen readers.

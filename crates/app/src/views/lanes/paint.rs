@@ -171,7 +171,12 @@ pub(super) fn gauge(ui: &egui::Ui, row: &Row<'_>, feed: usize) {
     let body = |ink: Ink| piece(TextStyle::Body.resolve(style), color(ink, ground));
     let small = |ink: Ink| piece(TextStyle::Small.resolve(style), color(ink, ground));
 
-    let watts = LayoutJob::single_section(units::watts(at.watts_to_wire), body(Ink::Text));
+    let Some(ends) = row.lane.ends(feed) else { return };
+    let mut watts = LayoutJob::default();
+    if ends.earth_w >= 0.5 {
+        watts.append(&format!("earth {}", units::watts(ends.earth_w)), 0.0, small(Ink::Faint));
+    }
+    watts.append(&units::watts(ends.sky_w), 6.0, body(Ink::Text));
     let watts = marks::one_line(painter, watts, text.width());
     let watts_left = text.right() - watts.size().x;
     painter.galley(
@@ -193,11 +198,18 @@ pub(super) fn gauge(ui: &egui::Ui, row: &Row<'_>, feed: usize) {
     let track = layout::gauge_track(rect);
     let least = layout::filled(track, row.snapshot.plan.least_share_to_wire, 1.0).right();
     painter.rect_filled(track, 1.0, color(Ink::Raised, ground));
-    painter.rect_filled(
-        layout::filled(track, at.watts_to_wire, power_w),
+    // To the wire; of it to the soil and the sky; of it to the sky.
+    let ink = color(marks::verdict_ink(kind), ground);
+    let arrived = layout::filled(track, at.watts_to_wire, power_w);
+    painter.rect_stroke(
+        arrived,
         1.0,
-        color(marks::verdict_ink(kind), ground),
+        marks::stroke(Pen::Hairline, marks::verdict_ink(kind), ground),
+        StrokeKind::Inside,
     );
+    let away = layout::filled(track, ends.sky_w + ends.earth_w, power_w);
+    painter.rect_filled(away, 1.0, color(Ink::Earth, ground));
+    painter.rect_filled(layout::filled(track, ends.sky_w, power_w), 1.0, ink);
     painter.vline(least, track.y_range(), marks::stroke(Pen::Curve, Ink::Text, ground));
 }
 

@@ -66,10 +66,11 @@ pub(super) fn header(
     }
     title(
         columns.gauge,
-        "verdict, and watts to the wire".into(),
+        "verdict, and watts to the sky".into(),
         Ink::Faint,
         "The verdict is for the worst frequency of the band. The bar is as long as the share of the watts that \
-         reaches the wire in the middle of the band; left of the notch a feed is too lossy.",
+         reaches the wire in the middle of the band: full for the sky, earth brown for what heats the soil, hollow for the \
+         wire's own heat; left of the notch a feed is too lossy.",
     );
     let rule = marks::stroke(Pen::Hairline, Ink::Rule, snapshot.ground);
     ui.painter().hline(rect.x_range(), rect.bottom(), rule);

@@ -49,52 +49,10 @@ pub(super) fn length<'a>(
 pub(super) fn earth_and_entrance(ui: &mut Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {
     grid(ui, "earth and entrance", |ui| {
         let label = ui.label("earth").id;
-        earth(ui, label, &snapshot.plan.site.earth, out);
+        soil::picker(ui, "earth", &snapshot.plan.site.earth, out).labelled_by(label);
         ui.end_row();
         entrance(ui, snapshot, out);
     });
-}
-
-fn earth(ui: &mut Ui, label: Id, chosen: &Earth, out: &mut Vec<Command>) {
-    let ideal = [
-        (Earth::NoEarth, "No earth", "Free space, for comparison"),
-        (Earth::Mirror, "Mirror", "Perfect ground, for comparison"),
-    ];
-    let (name, sentence) = match chosen {
-        Earth::NoEarth => ("No earth".to_owned(), "Free space, for comparison".to_owned()),
-        Earth::Mirror => ("Mirror".to_owned(), "Perfect ground, for comparison".to_owned()),
-        Earth::Own(soil) => ("own figures".to_owned(), soil_sentence(*soil)),
-        Earth::Catalogue(id) => match catalogue::soil_entry(id) {
-            Ok(entry) => (entry.name.clone(), format!("{}: {}", entry.hint, soil_sentence(entry.soil))),
-            Err(error) => (id.clone(), error.to_string()),
-        },
-    };
-    let picker = ComboBox::from_id_salt("earth").selected_text(name).height(PICK_LIST).show_ui(ui, |ui| {
-        for (earth, name, hint) in ideal {
-            if ui.selectable_label(*chosen == earth, name).explain(hint).clicked() && *chosen != earth {
-                out.push(Command::Edit(Edit::Earth(earth)));
-            }
-        }
-        ui.separator();
-        for entry in catalogue::soils() {
-            let earth = Earth::Catalogue(entry.id.clone());
-            let sentence = format!("{}: {}", entry.hint, soil_sentence(entry.soil));
-            if ui.selectable_label(*chosen == earth, &entry.name).explain(sentence).clicked()
-                && *chosen != earth
-            {
-                out.push(Command::Edit(Edit::Earth(earth)));
-            }
-        }
-    });
-    picker.response.labelled_by(label).explain(sentence);
-}
-
-fn soil_sentence(soil: station::plan::Soil) -> String {
-    let conductivity = station::units::short(soil.conductivity_s_per_m * 1e3);
-    format!(
-        "relative permittivity {}, {conductivity} mS/m",
-        station::units::short(soil.relative_permittivity)
-    )
 }
 
 fn entrance(ui: &mut Ui, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {

@@ -7,6 +7,7 @@
 mod aim;
 mod ask;
 mod grip;
+mod ground;
 mod hands;
 mod labels;
 mod layout;
@@ -63,12 +64,12 @@ pub struct YardState {
 /// Shows the Yard in all of the room there is.
 pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut YardState, out: &mut Vec<Command>) {
     let frame = ui.available_rect_before_wrap();
-    let ground = ui.allocate_rect(frame, Sense::click_and_drag());
-    ground.widget_info(|| WidgetInfo::labeled(Role::Canvas, ui.is_enabled(), "yard from the side"));
+    let backdrop = ui.allocate_rect(frame, Sense::click_and_drag());
+    backdrop.widget_info(|| WidgetInfo::labeled(Role::Canvas, ui.is_enabled(), "yard from the side"));
     let model = Model::of(snapshot.plan);
     let plot = layout::plot(frame);
     let Some(bounds) = model.bounds().filter(|_| plot.is_positive()) else { return };
-    let camera = steer(ui, &ground, state, bounds, plot, model.plane);
+    let camera = steer(ui, &backdrop, state, bounds, plot, model.plane);
     let view = SideView { plane: model.plane, camera, frame: plot };
 
     let band = snapshot.report.and_then(|report| report.bands.get(snapshot.band));
@@ -84,7 +85,7 @@ pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut YardState, out: &m
     let layout = Layout::of(&model, view, &asking, &measure);
     let bench = Bench { model: &model, layout: &layout, snapshot };
 
-    hands::take_late(ui, &bench, &ground, state);
+    hands::take_late(ui, &bench, &backdrop, state);
     hands::work(ui, &bench, state, out);
     let look = Look {
         ground: snapshot.ground,
@@ -100,15 +101,16 @@ pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut YardState, out: &m
         chosen: state.chosen,
     };
     paint::paint(ui, frame, &layout, &look);
-    speak(ui, &bench, &look, state, &ground);
+    speak(ui, &bench, &look, state, &backdrop);
     readout::show(ui, &bench, &look, state);
     tag::show(ui, &bench, &look, state, out);
     if motion::show(ui, layout.buttons, snapshot, out) {
         state.by_hand = false;
         state.camera = None;
     }
+    ground::show(ui, plot, snapshot, out);
     hints(ui, &bench, &look, state);
-    let_go(ui, &ground, state);
+    let_go(ui, &backdrop, state);
 }
 
 /// What the whole is, in one sentence; things that are pointed at say theirs afterwards.
