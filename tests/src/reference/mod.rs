@@ -29,7 +29,7 @@ pub struct Answer {
     pub mesh_error: f64,
     /// Number of unknown currents.
     pub unknowns: usize,
-    /// Gains in the case's directions, in their order; absent over soil.
+    /// Gains in the case's directions, in their order.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub gain_samples_dbi: Option<Vec<f64>>,
 }

@@ -4,12 +4,16 @@
 //! them has closed fields, so nothing near a wire is numerical quadrature.
 //!
 //! * [`NearFieldSource`]: E and H at any point; [`smoothed`] currents for points close to a wire.
-//! * [`FarFieldSource`]: far field in any direction, thousands of them at once.
+//! * [`FarFieldSource`]: far field in any direction, thousands of them at once, over soil too.
 //! * [`radiated_power_w`]: the power toward the sky by integration over the sphere, which is found without asking the
-//!   feedpoint; [`strongest_direction`]: where most of it goes.
+//!   feedpoint; [`earth_power_w`]: the power into the earth, likewise; [`strongest_direction`]: where most of it goes.
 //! * [`PotentialSource`], [`surface_field_v_per_m`]: what stands on the wire's surface.
 
+mod evanescent;
 mod far;
+mod ground;
+mod into_earth;
+mod kronrod;
 mod near;
 mod peak;
 mod polarisation;
@@ -23,11 +27,12 @@ mod sphere;
 mod surface;
 
 pub use far::{Direction, FarField};
+pub use into_earth::earth_power_w;
 pub use near::{NearField, NearFieldSource};
 pub use peak::strongest_direction;
 pub use polarisation::{Polarisation, Sense};
 pub use potential::{PotentialSource, SurfacePoint};
 pub use smooth::{SmoothCurrents, smoothed};
-pub use source::FarFieldSource;
+pub use source::{FarFieldSource, Ring};
 pub use sphere::radiated_power_w;
 pub use surface::surface_field_v_per_m;

@@ -2,7 +2,6 @@
 
 use super::far::Direction;
 use super::source::FarFieldSource;
-use crate::wire::Boundary;
 
 /// The direction in which most power per solid angle leaves, and that intensity, W/sr.
 ///
@@ -13,7 +12,7 @@ pub fn strongest_direction(source: &FarFieldSource) -> (Direction, f64) {
     let intensity = |direction: Direction| source.field(direction).intensity_w_per_sr();
     // The narrowest lobe of a source of electrical radius kR is about π/kR wide.
     let step_deg = 180.0 / (4.0 * source.electrical_size() + 36.0).ceil();
-    let lowest_deg = if source.boundary() == Boundary::FreeSpace { -90.0 } else { 0.0 };
+    let lowest_deg = source.ground().lowest_deg();
     let zenith = Direction { elevation_deg: 90.0, azimuth_deg: 0.0 };
     let mut best = (zenith, intensity(zenith));
     let mut elevation_deg = 90.0 - step_deg;

@@ -16,6 +16,7 @@ pub(super) struct Run {
     /// J over each step of the cosine of the angle with the run, from −1 to 1, A·m: powers of the place in the step.
     cells: Vec<[Complex64; POINTS]>,
     steps_per_unit: f64,
+    kinks: Vec<Kink>,
 }
 
 /// Points of the interpolation.
@@ -58,13 +59,14 @@ fn continues(first: &Segment, before: &Segment, next: &Segment) -> bool {
 }
 
 /// A point of a run where the current or its slope jumps.
-struct Kink {
+#[derive(Clone, Debug)]
+pub(super) struct Kink {
     /// From the middle of the run, m.
-    along_m: f64,
+    pub along_m: f64,
     /// Jump of the current downward, A.
-    current_a: Complex64,
+    pub current_a: Complex64,
     /// Jump of its slope upward, A/m.
-    slope_a_per_m: Complex64,
+    pub slope_a_per_m: Complex64,
 }
 
 impl Run {
@@ -78,7 +80,12 @@ impl Run {
         let kinks = kinks(segments, currents, k, half_length_m);
         let middle_m = advance(from_m, direction, half_length_m);
         let cells = cells(&table(&kinks, k, steps_per_unit));
-        Self { direction, middle_m, half_length_m, cells, steps_per_unit }
+        Self { direction, middle_m, half_length_m, cells, steps_per_unit, kinks }
+    }
+
+    /// Where the current or its slope jumps, ends included: the whole of the run's sinusoids.
+    pub fn kinks(&self) -> &[Kink] {
+        &self.kinks
     }
 
     /// J(c) = ∫ I(s)·e^(jk·c·s) ds with s from the middle of the run and c the cosine of the angle with it, A·m.

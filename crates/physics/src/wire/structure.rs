@@ -51,7 +51,7 @@ pub enum Boundary {
     Mirror,
     /// Soil below z = 0, roughly: the mirror's images, weighted with the reflection coefficient of a wave from straight
     /// above. Of a horizontal half wave over average soil, Z is off by 1 % at 0.3 λ height, by a tenth at 0.1 λ; upright
-    /// and low wires are rougher. Far fields are not offered.
+    /// and low wires are rougher.
     Soil {
         /// Relative permittivity, ≥ 1.
         relative_permittivity: f64,

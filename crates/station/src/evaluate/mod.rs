@@ -199,7 +199,8 @@ impl Evaluator {
         self.full.as_ref().map(|full| full.solved.prove(plan, frequency_hz)).transpose()
     }
 
-    /// Gains of the newest full answer at one of its frequencies; `None` before the first one and over soil.
+    /// Gains of the newest full answer at one of its frequencies; `None` before the first one. Over soil the reflection
+    /// is exact, the currents and the power at the feedpoint are as rough as the answer itself.
     ///
     /// # Errors
     /// A frequency outside the answer's range.
@@ -209,8 +210,7 @@ impl Evaluator {
         frequency_hz: f64,
         directions: &[Direction],
     ) -> Result<Option<Gains>, EvaluateError> {
-        let Some(full) = &self.full else { return Ok(None) };
-        full.solved.gains(plan, frequency_hz, directions)
+        self.full.as_ref().map(|full| full.solved.gains(plan, frequency_hz, directions)).transpose()
     }
 
     fn run(

@@ -1,7 +1,7 @@
 //! What stands behind an answer of the full model: where the watts go, how far a finer mesh would move it, and the gain.
 
 use physics::field::{Direction, FarFieldSource, radiated_power_w, strongest_direction};
-use physics::wire::mesh_error;
+use physics::wire::{Boundary, mesh_error};
 
 use super::Solved;
 use super::structure;
@@ -51,34 +51,36 @@ impl Solved {
         let refined = self.model.refined()?.solve(frequency_hz)?;
         Ok(Proof {
             frequency_hz,
-            sky_w: self.far_field(&fed).map(|source| radiated_power_w(&source)),
+            sky_w: (!self.over_soil()).then(|| radiated_power_w(&self.far_field(&fed))),
             burnt_w: fed.burnt_w,
             mesh_error: mesh_error(&working, &refined),
             unknowns: self.unknowns(),
         })
     }
 
-    /// `None` over soil.
     pub fn gains(
         &self,
         plan: &Plan,
         frequency_hz: f64,
         directions: &[Direction],
-    ) -> Result<Option<Gains>, EvaluateError> {
+    ) -> Result<Gains, EvaluateError> {
         let fed = self.fed(&self.answers.sample(frequency_hz)?, &structure::loads(plan))?;
-        Ok(self.far_field(&fed).map(|source| {
-            let gain = |direction: Direction| source.field(direction).gain_dbi(1.0);
-            let (peak, _) = strongest_direction(&source);
-            Gains {
-                samples_dbi: directions.iter().map(|&direction| gain(direction)).collect(),
-                peak_dbi: gain(peak),
-                peak,
-            }
-        }))
+        let source = self.far_field(&fed);
+        let gain = |direction: Direction| source.field(direction).gain_dbi(1.0);
+        let (peak, _) = strongest_direction(&source);
+        Ok(Gains {
+            samples_dbi: directions.iter().map(|&direction| gain(direction)).collect(),
+            peak_dbi: gain(peak),
+            peak,
+        })
     }
 
-    fn far_field(&self, fed: &super::Fed) -> Option<FarFieldSource> {
+    fn far_field(&self, fed: &super::Fed) -> FarFieldSource {
         let boundary = self.model.structure().boundary;
         FarFieldSource::new(self.model.segments(), &fed.currents, boundary, fed.frequency_hz)
+    }
+
+    fn over_soil(&self) -> bool {
+        matches!(self.model.structure().boundary, Boundary::Soil { .. })
     }
 }

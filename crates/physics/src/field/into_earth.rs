@@ -1,0 +1,157 @@
+//! Power into the earth.
+
+use std::f64::consts::{PI, TAU};
+
+use num_complex::Complex64;
+
+use super::evanescent::Decayed;
+use super::ground::Ground;
+use super::kronrod::{Panel, refined};
+use super::run::Run;
+use super::source::FarFieldSource;
+use super::space::{Vec3, sub};
+use crate::constants::VACUUM_IMPEDANCE_OHM;
+
+/// Power into the soil below the wires, W: found at the surface of the soil from the currents, without asking feedpoint
+/// or sky. 0 without soil.
+///
+/// The field of the currents is a spectrum of plane waves below them; each enters the half-space with Fresnel's
+/// coefficients. Those steeper than the horizon carry the wires' radiation downward; the others decay with the height
+/// and are what a low wire loses to the soil beside it. Error below 1e-4 (measured against the exact integrals).
+///
+/// `None` for wires nearer to the soil than 1/2000 of a wave or in it: the charge of an end that close to the soil, or
+/// the current of an electrode, would decide it.
+#[must_use]
+pub fn earth_power_w(source: &FarFieldSource) -> Option<f64> {
+    let Ground::Soil(epsilon) = source.ground() else { return Some(0.0) };
+    let ends_m: Vec<Vec3> = source.runs().iter().flat_map(Run::ends_m).collect();
+    let k = source.wave_number_rad_per_m();
+    let lowest = k * ends_m.iter().map(|end_m| end_m[2]).fold(f64::INFINITY, f64::min);
+    if ends_m.is_empty() || lowest.is_nan() || lowest < LOWEST {
+        return (ends_m.is_empty()).then_some(0.0);
+    }
+    let surface = Surface { source, epsilon, k, width: k * width_m(&ends_m), lowest };
+    surface.power_w()
+}
+
+/// Least height, in 1/k.
+const LOWEST: f64 = TAU / 2000.0;
+
+/// Share of the power by which the two rules of the quadrature may differ; the better one errs far less.
+const SHARE: f64 = 1e-4;
+
+/// Panels at most: fresh water without loss takes 40, others 15.
+const MOST: usize = 400;
+
+/// Relative amplitude e^(−this) of the power of a wave that is left out: the tail of t²·e^(−2t·h) is 1e-6 of the whole.
+const TAIL: f64 = 19.0;
+
+/// Largest horizontal distance of two ends.
+fn width_m(ends_m: &[Vec3]) -> f64 {
+    let apart = |a: &Vec3, b: &Vec3| {
+        let [x, y, _] = sub(*a, *b);
+        x.hypot(y)
+    };
+    let pairs =
+        ends_m.iter().enumerate().flat_map(|(index, a)| ends_m[..index].iter().map(move |b| apart(a, b)));
+    pairs.fold(0.0, f64::max)
+}
+
+/// The plane z = 0, lengths in 1/k.
+struct Surface<'a> {
+    source: &'a FarFieldSource,
+    epsilon: Complex64,
+    k: f64,
+    /// Of the wires, horizontally.
+    width: f64,
+    /// Height of the lowest end.
+    lowest: f64,
+}
+
+/// |N_φ|² and |q·N_z − j·u0·N_ρ|², summed over azimuth.
+#[derive(Clone, Copy, Default)]
+struct Sums {
+    level: f64,
+    rising: f64,
+}
+
+impl Surface<'_> {
+    /// With q = λ/k, u0 = √(q² − 1), u1 = √(q² − ε) and N of each wave at z = 0,
+    ///
+    /// P = η·k²/8π² · ∫∫ [ |N_φ|²·Im u1/|u0 + u1|² + |ε|²·Im(u1/ε)·|q·N_z − j·u0·N_ρ|²/|ε·u0 + u1|² ]·q dq dφ
+    ///
+    /// A current's spectrum below it is E = −jωμ·N/2u0 level and H = −jk×N/2u0 across the plane of incidence; of them
+    /// 2u0/(u0 + u1) and 2ε·u0/(ε·u0 + u1) enter, and ½·Re(E×H*) there is ½|E|²·Im u1/ωμ and ½|H|²·Im(u1/ε)/ωε0.
+    fn power_w(&self) -> Option<f64> {
+        // One way from −1 to ∞: the sine of the angle below the horizon, negative, and on to the decay. Both are smooth
+        // in themselves; at 0 is the grazing wave.
+        let integrand = |x: f64| if x < 0.0 { self.steep(-x) } else { self.flat(x) };
+        let mut panels = Vec::new();
+        let turn = (0.5 / self.epsilon.norm().sqrt()).min(0.5);
+        let mut at = -1.0;
+        while at < 0.0 {
+            let next = if at < -1.5 * turn { 0.3 * at } else { 0.0 };
+            panels.push(Panel::new(at, next, &integrand));
+            at = next;
+        }
+        // Beyond √(Re ε − 1) a soil without loss takes nothing.
+        let edge = (self.epsilon - 1.0).sqrt().re;
+        let longest = 2.0 / self.lowest;
+        let end = 0.5 * TAIL / self.lowest;
+        while at < end {
+            let mut next = (at + (2.0 * at).max(turn).min(longest)).min(end);
+            if at < 0.999 * edge && next > edge {
+                next = edge;
+            }
+            panels.push(Panel::new(at, next, &integrand));
+            at = next;
+        }
+        let integral = refined(panels, SHARE, MOST, &integrand)?;
+        Some(VACUUM_IMPEDANCE_OHM * self.k * self.k / (8.0 * PI * PI) * integral)
+    }
+
+    /// Waves that travel down: per sine of their angle below the horizon.
+    fn steep(&self, sine: f64) -> f64 {
+        let q = (1.0 - sine * sine).max(0.0).sqrt();
+        let u0 = Complex64::new(0.0, sine);
+        let sums = self
+            .around(q, u0, |[sin_phi, cos_phi]| self.source.moment_a_m([q * cos_phi, q * sin_phi, -sine]));
+        // q dq = sine d(sine)
+        sine * self.entering(q, u0, sums)
+    }
+
+    /// Waves that decay downward: per decay.
+    fn flat(&self, decay: f64) -> f64 {
+        let decayed = Decayed::new(self.source.runs(), self.k, decay);
+        let q = (1.0 + decay * decay).sqrt();
+        let u0 = Complex64::new(decay, 0.0);
+        let sums = self.around(q, u0, |azimuth| decayed.moment_a_m(azimuth));
+        // q dq = u0 du0
+        decay * self.entering(q, u0, sums)
+    }
+
+    /// Trapezoids over azimuth: harmonics of |N|² end a little above q·width.
+    fn around(&self, q: f64, u0: Complex64, moment_a_m: impl Fn([f64; 2]) -> [Complex64; 3]) -> Sums {
+        let highest = q * self.width;
+        let count = (highest + 4.0 * highest.cbrt() + 8.0).ceil() as usize;
+        let step = TAU / count as f64;
+        let mut sums = Sums::default();
+        for index in 0..count {
+            let (sin_phi, cos_phi) = (step * index as f64).sin_cos();
+            let [x, y, z] = moment_a_m([sin_phi, cos_phi]);
+            let (across, along) = (cos_phi * y - sin_phi * x, cos_phi * x + sin_phi * y);
+            sums.level += step * across.norm_sqr();
+            sums.rising += step * (q * z - Complex64::i() * u0 * along).norm_sqr();
+        }
+        sums
+    }
+
+    fn entering(&self, q: f64, u0: Complex64, sums: Sums) -> f64 {
+        let epsilon = self.epsilon;
+        // Decays and travels downward: Re ≥ 0, Im ≥ 0
+        let u1 = (q * q - epsilon).sqrt();
+        let level = u1.im / (u0 + u1).norm_sqr();
+        let rising = epsilon.norm_sqr() * (u1 / epsilon).im / (epsilon * u0 + u1).norm_sqr();
+        level * sums.level + rising * sums.rising
+    }
+}
