@@ -17,11 +17,17 @@ pub mod dyad;
 mod error;
 mod exact;
 mod fresnel;
+mod half_space;
+mod lateral;
+mod lattice;
 mod soil;
 mod spectrum;
+mod table;
 
+pub use dyad::WithoutImages;
 pub use error::EarthError;
 pub use exact::exact_kernels;
 pub use fresnel::{Fresnel, fresnel};
+pub use half_space::{HalfSpace, Reach};
 pub use soil::Soil;
 pub use spectrum::{GroundKernels, StaticWeights};

@@ -9,16 +9,16 @@ use std::ops::{Add, Div, Mul, Sub};
 use pulp::Simd;
 
 /// Tables are padded to this many values: a multiple of the lanes of every instruction set that is compiled in.
-pub(super) const PAD: usize = 8;
+pub(crate) const PAD: usize = 8;
 
 /// Length rounded up to whole vectors.
-pub(super) fn padded(length: usize) -> usize {
+pub(crate) fn padded(length: usize) -> usize {
     length.next_multiple_of(PAD)
 }
 
 /// One vector of numbers.
 #[derive(Clone, Copy)]
-pub(super) struct Lanes<S: Simd> {
+pub(crate) struct Lanes<S: Simd> {
     simd: S,
     pub value: S::f64s,
 }

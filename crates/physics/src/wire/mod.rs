@@ -29,7 +29,7 @@ mod error;
 mod factors;
 mod fill;
 mod grading;
-mod lanes;
+pub(crate) mod lanes;
 #[cfg(test)]
 mod laws;
 mod load;
