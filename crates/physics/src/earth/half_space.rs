@@ -33,9 +33,11 @@ pub struct HalfSpace {
 }
 
 /// Limits of the tables, in 1/k0.
-const RHO_MAX: f64 = 120.0;
+const RHO_MAX: f64 = 200.0;
 const ZETA_MIN: f64 = 0.006;
-const ZETA_MAX: f64 = 30.0;
+const ZETA_MAX: f64 = 120.0;
+/// What sums of heights near nothing count as.
+const LOWEST_ZETA: f64 = 1.05 * ZETA_MIN;
 
 impl HalfSpace {
     /// Prepares an earth.
@@ -43,21 +45,34 @@ impl HalfSpace {
     /// # Errors
     ///
     /// A soil or frequency outside its range, wires nearer to the earth than 0.0005 wavelengths (ζ below 0.006/k0), or
-    /// farther from each other than 19 or higher than 2.4.
+    /// farther from each other than 31 or higher than 9.5.
     pub fn new(soil: &Soil, frequency_hz: f64, reach: &Reach) -> Result<Self, EarthError> {
         let epsilon = soil.complex_permittivity(frequency_hz)?;
         let k0 = wave_number_rad_per_m(frequency_hz);
-        within("rho_max_m in 1/k0", k0 * reach.rho_max_m, 0.0..=RHO_MAX, "0 to 19 wavelengths")?;
+        within("rho_max_m in 1/k0", k0 * reach.rho_max_m, 0.0..=RHO_MAX, "0 to 31 wavelengths")?;
         let least = within(
             "zeta_min_m in 1/k0",
             k0 * reach.zeta_min_m,
             ZETA_MIN..=ZETA_MAX,
-            "0.001 to 4.7 wavelengths",
+            "0.001 to 19 wavelengths",
         )?;
         let greatest = k0 * reach.zeta_max_m;
-        within("zeta_max_m in 1/k0", greatest, least..=ZETA_MAX, "zeta_min_m to 4.7 wavelengths")?;
+        within("zeta_max_m in 1/k0", greatest, least..=ZETA_MAX, "zeta_min_m to 19 wavelengths")?;
         let table = Table::new(epsilon, k0 * reach.rho_max_m, [least, greatest]);
         Ok(Self { epsilon, k0, weights: StaticWeights::new(epsilon), table })
+    }
+
+    /// Prepares an earth for a rough reach of wires whose ends may come down to it: as much of it as there can be.
+    ///
+    /// # Errors
+    /// As [`HalfSpace::new`], but for the least height.
+    pub fn for_wires(soil: &Soil, frequency_hz: f64, reach: &Reach) -> Result<Self, EarthError> {
+        let lowest_m = LOWEST_ZETA / wave_number_rad_per_m(frequency_hz);
+        let per_m = wave_number_rad_per_m(frequency_hz).recip();
+        let zeta_min_m = reach.zeta_min_m.clamp(lowest_m, ZETA_MAX * per_m);
+        let zeta_max_m = reach.zeta_max_m.clamp(zeta_min_m, ZETA_MAX * per_m);
+        let rho_max_m = reach.rho_max_m.min(RHO_MAX * per_m);
+        Self::new(soil, frequency_hz, &Reach { rho_max_m, zeta_min_m, zeta_max_m })
     }
 
     /// Complex relative permittivity.
@@ -80,7 +95,8 @@ impl HalfSpace {
 
     /// S_h, S_f, S_z, S_w, 1/m, for horizontal distances ρ ≥ 0 and sums of heights ζ, m.
     ///
-    /// Points outside the reach are integrated one by one, which is right but slow.
+    /// Points outside the reach are integrated one by one, which is right but slow. Sums of heights below 0.001 wavelengths
+    /// count as that.
     pub fn kernels(&self, rho_m: &[f64], zeta_m: &[f64], kernels: &mut [GroundKernels]) {
         self.fill(rho_m, zeta_m, self.weights, kernels);
     }
@@ -103,7 +119,7 @@ impl HalfSpace {
     /// One point by quadrature, with the static images weighed as asked.
     #[cold]
     fn outside(&self, rho_m: f64, zeta_m: f64, weights: &StaticWeights) -> GroundKernels {
-        let (rho, zeta) = (self.k0 * rho_m, self.k0 * zeta_m);
+        let (rho, zeta) = (self.k0 * rho_m, (self.k0 * zeta_m).max(ZETA_MIN));
         let images = self.weights.images(rho, zeta) - weights.images(rho, zeta);
         (exact_kernels(self.epsilon, rho, zeta) - images) * self.k0
     }
@@ -131,7 +147,7 @@ impl WithSimd for Fill<'_> {
         for ((rho, zeta), (rho_m, zeta_m)) in
             points.rho.iter_mut().zip(&mut points.zeta).zip(self.rho_m.iter().zip(self.zeta_m))
         {
-            (*rho, *zeta) = (self.earth.k0 * rho_m, self.earth.k0 * zeta_m);
+            (*rho, *zeta) = (self.earth.k0 * rho_m, (self.earth.k0 * zeta_m).max(ZETA_MIN));
         }
         points.place(self.earth.table.scales());
         points.waves(simd);
@@ -147,14 +163,21 @@ impl WithSimd for Fill<'_> {
                 self.kernels[at] = self.earth.outside(self.rho_m[at], self.zeta_m[at], weights);
                 continue;
             }
-            let node = self.earth.table.read(&cell).map(f64::from);
-            let wave = Complex64::new(points.cos[at], points.minus_sin[at]) * self.earth.k0;
-            let ratio = points.ratio[at];
+            let parted = self.earth.table.read_parted(&cell, points.rho[at], points.zeta[at]);
+            let (node, lateral) = match parted {
+                Some((node, lateral)) => (node.map(f64::from), lateral),
+                None => (self.earth.table.read(&cell).map(f64::from), [0.0; 8]),
+            };
+            let wave = Complex64::new(points.cos[at], points.minus_sin[at]);
+            let value = |index: usize, image: Complex64| {
+                let smooth = Complex64::new(node[2 * index], node[2 * index + 1]) + image;
+                (smooth * wave + Complex64::new(lateral[2 * index], lateral[2 * index + 1])) * self.earth.k0
+            };
             self.kernels[at] = GroundKernels {
-                horizontal: Complex64::new(node[0], node[1]) * wave,
-                charge: (Complex64::new(node[2], node[3]) + weights.charge) * wave,
-                vertical: (Complex64::new(node[4], node[5]) + weights.vertical) * wave,
-                cross: (Complex64::new(node[6], node[7]) + weights.cross * ratio) * wave,
+                horizontal: value(0, Complex64::ZERO),
+                charge: value(1, weights.charge),
+                vertical: value(2, weights.vertical),
+                cross: value(3, weights.cross * points.ratio[at]),
             };
         }
     }
@@ -237,7 +260,7 @@ fn ln(x: f64) -> f64 {
     /// 2⁵², with the exponent's own bits below.
     const SHIFT: u64 = 0x4330_0000_0000_0000;
     let bits = x.to_bits();
-    let exponent = f64::from_bits((bits >> 52) | SHIFT) - 4_503_599_627_370_496.0 - 1022.5;
+    let exponent = f64::from_bits((bits >> 52) | SHIFT) - (4_503_599_627_370_496.0 + 1022.0) - 0.5;
     let mantissa = f64::from_bits((bits & 0x000f_ffff_ffff_ffff) | 0x3ff0_0000_0000_0000);
     // ln(m/√2) = 2·artanh s, s = (m − √2)/(m + √2), |s| < 0.172
     let s = (mantissa - SQRT_2) / (mantissa + SQRT_2);

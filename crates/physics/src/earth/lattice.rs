@@ -17,9 +17,9 @@ use crate::wire::lanes::padded;
 pub(super) const RHO_STEP: f64 = 0.125;
 pub(super) const ZETA_STEP: f64 = 0.2;
 /// Farthest node of ρ and least and greatest of ζ, in 1/k0.
-const RHO_END: f64 = 150.0;
+const RHO_END: f64 = 230.0;
 const ZETA_BEGIN: f64 = 0.004;
-const ZETA_END: f64 = 50.0;
+const ZETA_END: f64 = 150.0;
 /// Nodes of ρ that share a path.
 const SHARING: usize = 5;
 

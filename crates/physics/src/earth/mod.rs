@@ -18,12 +18,13 @@ mod error;
 mod exact;
 mod fresnel;
 mod half_space;
+mod lateral;
 mod lattice;
-mod reflect;
 mod soil;
 mod spectrum;
 mod table;
 
+pub use dyad::WithoutImages;
 pub use error::EarthError;
 pub use exact::exact_kernels;
 pub use fresnel::{Fresnel, fresnel};

@@ -3,8 +3,9 @@
 use num_complex::Complex64;
 use pulp::{Arch, Simd, WithSimd};
 
+use super::lateral::Lateral;
 use super::lattice::{Group, Lattice, RHO_STEP, Waves, ZETA_STEP, zeta};
-use super::spectrum::{StaticWeights, of_roots};
+use super::spectrum::{GroundKernels, StaticWeights, of_roots};
 use crate::wire::lanes::{Lanes, padded};
 
 /// Where a table is read: four nodes each way.
@@ -21,6 +22,16 @@ pub(super) struct Table {
     zetas: usize,
     /// Rows of one ρ, beginning with the mirror of the first beyond 0.
     nodes: Vec<Node>,
+    far: Option<Far>,
+}
+
+/// Nodes from some row on with the lateral wave parted from the rest.
+struct Far {
+    lateral: Lateral,
+    /// First row of cells, and of nodes (one before).
+    first: usize,
+    /// The rest, and the wave's amplitude.
+    nodes: Vec<[Node; 2]>,
 }
 
 /// Of a step.
@@ -36,7 +47,8 @@ impl Table {
         let first_zeta = (place(zeta_min) - EDGE).floor() as i32 - 1;
         let last_zeta = (place(zeta_max) + EDGE).floor() as i32 + 2;
         let zetas = (last_zeta - first_zeta + 1) as usize;
-        let mut table = Self { lattice, first_zeta, zetas, nodes: vec![[0.0; 8]; (last + 2) * zetas] };
+        let mut table =
+            Self { lattice, first_zeta, zetas, nodes: vec![[0.0; 8]; (last + 2) * zetas], far: None };
         let weights = StaticWeights::new(epsilon);
         for group in lattice.groups_to(last) {
             let (count, window) = group.window(epsilon);
@@ -68,8 +80,41 @@ impl Table {
             let [h0, h1, f0, f1, z0, z1, w0, w1] = table.nodes[2 * zetas + place];
             table.nodes[place] = [h0, h1, f0, f1, z0, z1, -w0, -w1];
         }
+        let needed = Lateral::if_needed(epsilon, RHO_STEP, rho_max, zeta_min);
+        table.far = needed.map(|lateral| table.parted(lateral, last));
         table
     }
+
+    /// Takes the lateral wave from the rows where it is one of its own.
+    fn parted(&self, lateral: Lateral, last: usize) -> Far {
+        let first = (self.lattice.place(lateral.begins).floor() as usize + 1).min(last - 2);
+        let mut nodes = Vec::with_capacity((last + 2 - first) * self.zetas);
+        for row in first - 1..=last {
+            let rho = self.lattice.rho(row);
+            let integrand = lateral.at(rho);
+            for place in 0..self.zetas {
+                let whole = self.nodes[(row + 1) * self.zetas + place];
+                let zeta = zeta(self.first_zeta + place as i32);
+                if lateral.fade(rho, zeta) < FADED {
+                    nodes.push([whole, [0.0; 8]]);
+                    continue;
+                }
+                let amplitude = integrand.amplitude(zeta);
+                let part = parts(amplitude * (lateral.wave(rho, zeta) * Complex64::cis(rho.hypot(zeta))));
+                let rest = std::array::from_fn(|index| (f64::from(whole[index]) - part[index]) as f32);
+                nodes.push([rest, parts(amplitude).map(|part| part as f32)]);
+            }
+        }
+        Far { lateral, first, nodes }
+    }
+}
+
+/// Below it the lateral wave is nothing.
+const FADED: f64 = 1e-7;
+
+fn parts(kernels: GroundKernels) -> [f64; 8] {
+    let values = kernels.values();
+    std::array::from_fn(|index| if index % 2 == 0 { values[index / 2].re } else { values[index / 2].im })
 }
 
 fn normalised(sums: &[f64; 8], rho: f64, zeta: f64, weights: &StaticWeights) -> Node {
@@ -141,8 +186,8 @@ impl WithSimd for Sum<'_> {
                 (S::as_simd_f64s(&waves.re[..self.waves]).0, S::as_simd_f64s(&waves.im[..self.waves]).0)
             });
             let mut totals = [Lanes::splat(simd, 0.0); 8];
-            for at in 0..vectors {
-                let zeroth = (Lanes::new(simd, bessel[0].0[at]), Lanes::new(simd, bessel[0].1[at]));
+            for (at, zeroth) in bessel[0].0.iter().enumerate() {
+                let zeroth = (Lanes::new(simd, *zeroth), Lanes::new(simd, bessel[0].1[at]));
                 let first = (Lanes::new(simd, bessel[1].0[at]), Lanes::new(simd, bessel[1].1[at]));
                 for index in 0..4 {
                     let (c, d) = if index == 3 { first } else { zeroth };
@@ -181,7 +226,7 @@ impl Table {
             && (cell.row as usize + STENCIL) * self.zetas <= self.nodes.len()
     }
 
-    /// Cubic interpolation each way.
+    /// Cubic interpolation each way: all, or all but a lateral wave.
     #[inline(always)]
     pub fn read(&self, cell: &Cell) -> Node {
         let (along, across) = (cubic(cell.along), cubic(cell.across));
@@ -198,6 +243,39 @@ impl Table {
             }
         }
         sum
+    }
+
+    /// Where a lateral wave is parted: the rest as [`read`](Self::read) gives it, and the wave's own S_h, S_f, S_z, S_w.
+    #[inline(always)]
+    pub fn read_parted(&self, cell: &Cell, rho: f64, zeta: f64) -> Option<(Node, [f64; 8])> {
+        let far = self.far.as_ref()?;
+        let first = (cell.row as usize).checked_sub(far.first)?;
+        let (along, across) = (cubic(cell.along), cubic(cell.across));
+        let mut sums = [[0.0_f32; 8]; 2];
+        for (row, weight) in along.into_iter().enumerate() {
+            let start = (first + row) * self.zetas + cell.column as usize;
+            let nodes: &[[Node; 2]; STENCIL] =
+                far.nodes[start..start + STENCIL].try_into().expect("four nodes");
+            for (which, sum) in sums.iter_mut().enumerate() {
+                for part in 0..8 {
+                    let line = nodes[0][which][part] * across[0]
+                        + nodes[1][which][part] * across[1]
+                        + nodes[2][which][part] * across[2]
+                        + nodes[3][which][part] * across[3];
+                    sum[part] += weight * line;
+                }
+            }
+        }
+        let mut lateral = [0.0; 8];
+        if far.lateral.fade(rho, zeta) > FADED {
+            let wave = far.lateral.wave(rho, zeta) / rho.hypot(zeta);
+            for index in 0..4 {
+                let value =
+                    wave * Complex64::new(f64::from(sums[1][2 * index]), f64::from(sums[1][2 * index + 1]));
+                (lateral[2 * index], lateral[2 * index + 1]) = (value.re, value.im);
+            }
+        }
+        Some((sums[0], lateral))
     }
 }
 
