@@ -4,8 +4,8 @@ use eframe::egui::{ComboBox, Response, Ui};
 use station::catalogue;
 use station::plan::{Earth, Soil};
 
-use crate::command::Command;
-use crate::edit::Edit;
+use crate::command::{Command, Edit};
+
 use crate::explain::Explain;
 
 /// Height of the pick list, px.

@@ -1,8 +1,7 @@
 //! What stands on the site and what lies under it.
 
-use eframe::egui::{ComboBox, Id, Ui};
-use station::catalogue;
-use station::plan::{Earth, Point, Support, SupportKind};
+use eframe::egui::{ComboBox, Ui};
+use station::plan::{Point, Support, SupportKind};
 
 use super::typed::{TextField, Typed};
 use super::{grid, group};
@@ -10,6 +9,7 @@ use crate::command::{Command, Edit};
 use crate::explain::Explain as _;
 use crate::snapshot::Snapshot;
 use crate::views::fields::{Quantity, button, quantity};
+use crate::views::soil;
 
 /// Reach of a site in any direction, m.
 const REACH_M: f64 = 5_000.0;
@@ -17,8 +17,6 @@ const REACH_M: f64 = 5_000.0;
 const HIGHEST_M: f64 = 300.0;
 /// A new support stands this far beyond the last one, m.
 const NEXT_SUPPORT_M: f64 = 10.0;
-/// Height of a pick list, points.
-const PICK_LIST: f32 = 420.0;
 
 /// A coordinate of a point: label, sentence, value in metres, and the point with another value.
 type Coordinate = (&'static str, &'static str, f64, fn(Point, f64) -> Point);

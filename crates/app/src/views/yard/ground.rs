@@ -2,8 +2,8 @@
 
 use eframe::egui::{Align, Layout, Rect, Ui, UiBuilder, pos2, vec2};
 
-use crate::command::Command;
-use crate::edit::Edit;
+use crate::command::{Command, Edit};
+
 use crate::explain::Explain;
 use crate::snapshot::Snapshot;
 use crate::views::soil;
