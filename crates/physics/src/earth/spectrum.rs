@@ -103,7 +103,8 @@ pub(super) fn of_roots(epsilon: Complex64, lambda: Complex64, u0: Complex64, u1:
 
 /// What is left where R is small against the wavelength in the soil: images in static fields.
 ///
-/// S = weight·e^(−jk0R)/R + remainder, for S_w weight·ρ/(R + ζ)·e^(−jk0R)/R + remainder.
+/// S = weight·e^(−jk0R)/R + remainder, for S_w weight·ρ/(R + ζ)·e^(−jk0R)/R + remainder. Each remainder's spectrum falls
+/// two powers of λ faster than its image's, so it stays finite where R → 0, with a slope there like ln R.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct StaticWeights {
     /// Of S_f: (1 − ε)/(1 + ε).

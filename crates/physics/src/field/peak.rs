@@ -17,11 +17,12 @@ pub fn strongest_direction(source: &FarFieldSource) -> (Direction, f64) {
     let mut best = (zenith, intensity(zenith));
     let mut elevation_deg = 90.0 - step_deg;
     while elevation_deg > lowest_deg - 0.5 * step_deg {
+        let ring = source.ring(elevation_deg.max(lowest_deg));
         let around = (360.0 * elevation_deg.to_radians().cos() / step_deg).ceil().max(1.0);
         for index in 0..around as u32 {
             let azimuth_deg = 360.0 * f64::from(index) / around;
             let direction = Direction { elevation_deg: elevation_deg.max(lowest_deg), azimuth_deg };
-            let here = intensity(direction);
+            let here = ring.field(azimuth_deg).intensity_w_per_sr();
             // Equal lobes differ by rounding; a later one must be better by more than that.
             if here > best.1 * (1.0 + 1e-9) {
                 best = (direction, here);

@@ -24,12 +24,14 @@ pub struct FarFieldSource {
 }
 
 /// The directions of one elevation, for patterns: what depends on elevation alone is found once.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Debug)]
 pub struct Ring<'a> {
     source: &'a FarFieldSource,
     sine: f64,
     cosine: f64,
     reflected: Reflected,
+    /// Phase of the height of each stretch's middle.
+    lifts: Vec<Complex64>,
 }
 
 impl FarFieldSource {
@@ -64,7 +66,8 @@ impl FarFieldSource {
     /// The directions of one elevation, by its sine.
     pub(super) fn ring_at(&self, sine: f64) -> Ring<'_> {
         let cosine = (1.0 - sine * sine).max(0.0).sqrt();
-        Ring { source: self, sine, cosine, reflected: self.ground.reflected(sine) }
+        let lifts = self.runs.iter().map(|run| Complex64::cis(self.k * sine * run.middle_m[2])).collect();
+        Ring { source: self, sine, cosine, reflected: self.ground.reflected(sine), lifts }
     }
 
     /// N = Σ û·J(û·r̂)·e^(jk·r̂·r) over the wires, A·m.
@@ -124,22 +127,36 @@ impl Ring<'_> {
 
     /// Far field toward an azimuth, by its sine and cosine.
     pub(super) fn field_toward(&self, [sin_phi, cos_phi]: [f64; 2]) -> FarField {
-        let Self { source, sine, cosine, reflected } = *self;
+        let Self { source, sine, cosine, reflected, .. } = *self;
+        let (mut direct, mut image) = ([Complex64::ZERO; 3], [Complex64::ZERO; 3]);
+        let share = match reflected {
+            Reflected::Dark => return FarField::default(),
+            Reflected::Nothing => None,
+            Reflected::Share(share) => Some(share),
+        };
+        let outward = |[x, y, _]: Vec3| cosine * (cos_phi * x + sin_phi * y);
+        for (run, lift) in source.runs.iter().zip(&self.lifts) {
+            // What the wires send up, and what they send down at the same angle
+            let (level, rise) = (outward(run.direction), sine * run.direction[2]);
+            let phase = Complex64::cis(source.k * outward(run.middle_m));
+            let up = run.moment_a_m(level + rise);
+            add(&mut direct, up * (phase * lift), run.direction);
+            if share.is_some() {
+                let down = if rise == 0.0 { up } else { run.moment_a_m(level - rise) };
+                add(&mut image, down * (phase * lift.conj()), run.direction);
+            }
+        }
         // Components of N along rising polar angle (downward) and along rising azimuth
-        let across = |sine: f64| {
-            let [x, y, z] = source.moment_a_m([cosine * cos_phi, cosine * sin_phi, sine]);
+        let across = |[x, y, z]: [Complex64; 3], sine: f64| {
             [sine * (cos_phi * x + sin_phi * y) - cosine * z, cos_phi * y - sin_phi * x]
         };
-        let [theta, phi] = match reflected {
-            Reflected::Dark => return FarField::default(),
-            Reflected::Nothing => across(sine),
-            Reflected::Share(share) => {
-                // The image is lit by what the wires send down at the same angle. Its field along rising polar angle
-                // there, mirrored, is the same direction here.
-                let ([theta, phi], [theta_down, phi_down]) = (across(sine), across(-sine));
-                [theta + share.rising * theta_down, phi + share.level * phi_down]
-            }
-        };
+        let [mut theta, mut phi] = across(direct, sine);
+        if let Some(share) = share {
+            // The image's field along rising polar angle, seen from below, is mirrored into the same direction here.
+            let [theta_down, phi_down] = across(image, -sine);
+            theta += share.rising * theta_down;
+            phi += share.level * phi_down;
+        }
         // E = −jkη/4π·N, across the direction
         let scale = Complex64::new(0.0, -source.k * VACUUM_IMPEDANCE_OHM / (4.0 * std::f64::consts::PI));
         FarField { theta_v: scale * theta, phi_v: scale * phi }
