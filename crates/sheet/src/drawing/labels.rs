@@ -235,26 +235,26 @@ mod tests {
     use super::*;
 
     #[test]
-    fn labels_at_one_spot_move_apart_or_are_given_back() {
+    fn labels_of_one_line_move_apart_or_are_given_back() {
         let frame = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: 60.0, height_mm: 40.0 };
         let mut labels = Labels::new(frame);
-        let spot = Spot::new(30.0, 20.0);
+        let spots = spots_on(Spot::new(10.0, 20.0), Spot::new(50.0, 20.0));
         for index in 0..40 {
-            labels.put_near(
-                &[spot],
-                &Text::new(0.0, 0.0, TextStyle::Body, format!("label {index}")),
-                &AROUND,
-            );
+            labels.put_near(&spots, &Text::new(0.0, 0.0, TextStyle::Body, format!("label {index}")), &AROUND);
         }
         let (items, unplaced) = labels.finish();
-        let boxes: Vec<_> = items
-            .iter()
-            .filter_map(|item| if let Item::Text(text) = item { Some(text.corners()) } else { None })
-            .collect();
+        let (mut boxes, mut leaders) = (Vec::new(), Vec::new());
+        for item in &items {
+            match item {
+                Item::Text(text) => boxes.push(text.corners()),
+                Item::Line { points, .. } => leaders.push(ribbon(points[0], points[1])),
+                Item::Area { .. } => {}
+            }
+        }
         assert_eq!(boxes.len() + unplaced.len(), 40);
-        assert!(boxes.len() >= 8, "only {} found room", boxes.len());
+        assert!(boxes.len() >= 8 && !leaders.is_empty(), "only {} found room", boxes.len());
         for (index, a) in boxes.iter().enumerate() {
-            assert!(boxes[index + 1..].iter().all(|b| !overlap(a, b)));
+            assert!(boxes[index + 1..].iter().chain(&leaders).all(|b| !overlap(a, b)));
         }
     }
 }

@@ -202,7 +202,6 @@ fn end_fed() -> Plan {
 pub fn traps_and_arms() -> Plan {
     let mut plan = relief_post();
     plan.name = "Reservoir gauge".to_owned();
-    plan.bands.truncate(5);
     plan.site.supports = vec![
         support("dam tower", SupportKind::Building, 0.0, 12.0),
         support("weir mast", SupportKind::Mast, 46.0, 12.0),
