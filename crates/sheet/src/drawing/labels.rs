@@ -239,6 +239,10 @@ mod tests {
         let frame = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: 60.0, height_mm: 40.0 };
         let mut labels = Labels::new(frame);
         let spots = spots_on(Spot::new(10.0, 20.0), Spot::new(50.0, 20.0));
+        // No label has room between these lines and the spots.
+        for y_mm in [17.0, 23.0] {
+            labels.avoid(&[Spot::new(0.0, y_mm), Spot::new(60.0, y_mm)]);
+        }
         for index in 0..40 {
             labels.put_near(&spots, &Text::new(0.0, 0.0, TextStyle::Body, format!("label {index}")), &AROUND);
         }
