@@ -59,7 +59,7 @@ fn drawn(plan: &Plan, units: Units) -> Option<SideView> {
 
 proptest! {
     #[test]
-    fn labels_stay_apart_and_everything_inside(plan in plan_strategy(), in_feet in any::<bool>()) {
+    fn labels_stay_apart_off_the_lines_and_inside(plan in plan_strategy(), in_feet in any::<bool>()) {
         let units = if in_feet { Units::Feet } else { Units::Metres };
         let view = drawn(&plan, units);
         prop_assume!(view.is_some());
@@ -68,6 +68,11 @@ proptest! {
         let boxes: Vec<[Spot; 4]> = scene.texts().map(sheet::scene::Text::corners).collect();
         for (index, a) in boxes.iter().enumerate() {
             prop_assert!(!boxes[index + 1..].iter().any(|b| overlap(a, b)));
+        }
+        let strokes: Vec<[Spot; 4]> = scene.items.iter().flat_map(support::strokes).collect();
+        for text in scene.texts() {
+            let corners = text.corners();
+            prop_assert!(!strokes.iter().any(|stroke| overlap(&corners, stroke)), "\"{}\" is crossed", text.text);
         }
         let lines = scene.items.iter().flat_map(|item| match item {
             Item::Line { points, .. } | Item::Area { points, .. } => points.as_slice(),

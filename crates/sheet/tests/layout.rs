@@ -131,3 +131,15 @@ fn every_page_says_which_model_and_which_plan() {
         }
     }
 }
+
+#[test]
+fn no_line_crosses_a_text() {
+    every_page(|which, page| {
+        let strokes: Vec<[Spot; 4]> = page.items.iter().flat_map(support::strokes).collect();
+        for text in page.texts() {
+            let corners = text.corners();
+            let crossing = strokes.iter().find(|stroke| overlap(&corners, stroke));
+            assert!(crossing.is_none(), "{which}: \"{}\" is crossed at {crossing:?}", text.text);
+        }
+    });
+}

@@ -3,7 +3,7 @@
 use station::units::Units;
 
 use super::elevation::{Elevation, Fastening, Piece, Place};
-use super::labels::{AROUND, Labels, along};
+use super::labels::{AROUND, Labels, along, spots_on};
 use super::scale::Sight;
 use crate::fonts;
 use crate::scene::{Anchor, Frame, Item, Spot, Text};
@@ -19,38 +19,41 @@ const ARM_OFF_MM: f64 = 3.0;
 /// Shorter spans and parts are not worth a number, m.
 const LEAST_SPAN_M: f64 = 0.5;
 
-/// A dimension line with its ends.
-fn dimension_line(from: Spot, to: Spot, labels: &mut Labels, items: &mut Vec<Item>) {
-    items.push(Item::line(from, to, Stroke::Rule, Ink::Faint));
-    let length_mm = (to.x_mm - from.x_mm).hypot(to.y_mm - from.y_mm).max(f64::MIN_POSITIVE);
-    let (nx, ny) =
-        (-(to.y_mm - from.y_mm) / length_mm * TICK_MM, (to.x_mm - from.x_mm) / length_mm * TICK_MM);
-    for end in [from, to] {
-        let [a, b] = [1.0, -1.0].map(|side| Spot::new(end.x_mm + side * nx, end.y_mm + side * ny));
-        items.push(Item::line(a, b, Stroke::Frame, Ink::Faint));
-    }
-    labels.avoid(&[from, to]);
+/// A measured length: its line, and what stands at it.
+pub(super) struct Dimension {
+    line: (Spot, Spot),
+    words: String,
+    /// Where its number may be tied to if the line is too short for it.
+    tied_to: Vec<Spot>,
+    /// Where to look for a place there.
+    directions: &'static [(f64, f64)],
 }
 
-/// The number of a dimension line, over it or under it; given back where it has no room there.
-fn number(from: Spot, to: Spot, words: &str, labels: &mut Labels) -> Result<(), Text> {
-    let candidates = along(from, to, TextStyle::Strong, words, 0.8);
-    if candidates.is_empty() {
-        return Err(Text::new(0.0, 0.0, TextStyle::Strong, words));
+impl Dimension {
+    /// Draws the line with its ends.
+    pub fn draw(&self, labels: &mut Labels, items: &mut Vec<Item>) {
+        let (from, to) = self.line;
+        let length_mm = (to.x_mm - from.x_mm).hypot(to.y_mm - from.y_mm).max(f64::MIN_POSITIVE);
+        let (nx, ny) =
+            (-(to.y_mm - from.y_mm) / length_mm * TICK_MM, (to.x_mm - from.x_mm) / length_mm * TICK_MM);
+        labels.draw([from, to], Stroke::Rule, Ink::Faint, items);
+        for end in [from, to] {
+            let tick = [1.0, -1.0].map(|side| Spot::new(end.x_mm + side * nx, end.y_mm + side * ny));
+            labels.draw(tick, Stroke::Frame, Ink::Faint, items);
+        }
     }
-    labels.put(candidates)
-}
 
-/// A dimension line with its ends and its number over it.
-fn dimension(
-    from: Spot,
-    to: Spot,
-    words: &str,
-    labels: &mut Labels,
-    items: &mut Vec<Item>,
-) -> Result<(), Text> {
-    dimension_line(from, to, labels, items);
-    number(from, to, words, labels)
+    /// Puts its number over it or under it, if it has room there.
+    pub fn number_along(&self, labels: &mut Labels) -> Option<()> {
+        let (from, to) = self.line;
+        labels.put(along(from, to, TextStyle::Strong, &self.words, 0.8))
+    }
+
+    /// Puts its number near it, tied to it.
+    pub fn number_near(&self, labels: &mut Labels) {
+        let text = Text::new(0.0, 0.0, TextStyle::Strong, &self.words);
+        labels.put_near(&self.tied_to, &text, self.directions);
+    }
 }
 
 /// Rows of names: two where three or more supports may stand close.
@@ -80,21 +83,16 @@ fn stations(elevation: &Elevation) -> Vec<f64> {
 }
 
 /// Spans between fastenings, in a row below the earth.
-pub(super) fn spans(
-    elevation: &Elevation,
-    sight: &Sight,
-    units: Units,
-    top_mm: f64,
-    (labels, items): (&mut Labels, &mut Vec<Item>),
-) {
+pub(super) fn spans(elevation: &Elevation, sight: &Sight, units: Units, top_mm: f64) -> Vec<Dimension> {
     let y_mm = top_mm + SPANS_MM - TICK_MM - 0.3;
     let at = |along_m: f64| Spot::new(sight.spot(Place { along_m, up_m: 0.0 }).x_mm, y_mm);
-    for pair in stations(elevation).windows(2) {
-        let (from, to) = (at(pair[0]), at(pair[1]));
-        if let Err(text) = dimension(from, to, &units.tape(pair[1] - pair[0]), labels, items) {
-            labels.put_near(middle(from, to), &text, &[(0.0, 1.0), (1.0, 0.0), (-1.0, 0.0)]);
-        }
-    }
+    let span = |pair: &[f64]| Dimension {
+        line: (at(pair[0]), at(pair[1])),
+        words: units.tape(pair[1] - pair[0]),
+        tied_to: spots_on(at(pair[0]), at(pair[1])).to_vec(),
+        directions: &[(0.0, 1.0), (1.0, 0.0), (-1.0, 0.0)],
+    };
+    stations(elevation).windows(2).map(span).collect()
 }
 
 /// Heights at which the wire's path is made fast, over the foot of each support.
@@ -103,7 +101,8 @@ pub(super) fn heights(
     sight: &Sight,
     units: Units,
     (labels, items): (&mut Labels, &mut Vec<Item>),
-) {
+) -> Vec<Dimension> {
+    let mut out = Vec::new();
     let last = elevation.fastenings.len().saturating_sub(1);
     let is_leftward = elevation
         .fastenings
@@ -120,16 +119,16 @@ pub(super) fn heights(
         let off = |spot: Spot| Spot::new(spot.x_mm + side * HEIGHT_OFF_MM, spot.y_mm);
         let top = sight.spot(fastening.at);
         let foot = sight.spot(Place { up_m: fastening.foot_m, ..fastening.at });
-        items.push(Item::line(
-            top,
-            Spot::new(off(top).x_mm + side * TICK_MM, top.y_mm),
-            Stroke::Hair,
-            Ink::Rule,
-        ));
-        if let Err(text) = dimension(off(foot), off(top), &units.tape(height_m), labels, items) {
-            labels.put_near(off(top), &text, &AROUND);
-        }
+        let beyond = Spot::new(off(top).x_mm + side * TICK_MM, top.y_mm);
+        labels.draw([top, beyond], Stroke::Hair, Ink::Rule, items);
+        out.push(Dimension {
+            line: (off(foot), off(top)),
+            words: units.tape(height_m),
+            tied_to: [off(top)].into_iter().chain(spots_on(off(foot), off(top))).collect(),
+            directions: &AROUND,
+        });
     }
+    out
 }
 
 /// Marks of the loads, beside their boxes.
@@ -137,46 +136,40 @@ pub(super) fn loads(elevation: &Elevation, sight: &Sight, labels: &mut Labels) {
     for load in &elevation.loads {
         let text = Text::new(0.0, 0.0, TextStyle::Strong, &load.mark);
         let below_first = [(0.0, 1.0), (0.0, -1.0), (0.71, 0.71), (-0.71, 0.71), (1.0, 0.0), (-1.0, 0.0)];
-        labels.put_near(sight.spot(load.at), &text, &below_first);
+        labels.put_near(&[sight.spot(load.at)], &text, &below_first);
     }
 }
 
-/// Lengths of the pieces of wire, each over its dimension line; the parts of a bent piece get their own numbers.
-pub(super) fn arms(
-    elevation: &Elevation,
-    sight: &Sight,
-    units: Units,
-    (labels, items): (&mut Labels, &mut Vec<Item>),
-) {
-    // All lines before any number: no line may cross a number that was put before it.
-    for arm in elevation.arms.iter().filter(|arm| measured_parts(arm).len() == 1) {
-        if let Some((from, to)) = measured(arm, sight) {
-            dimension_line(from, to, labels, items);
-        }
-    }
+/// Lengths of the straight pieces of wire.
+pub(super) fn arms(elevation: &Elevation, sight: &Sight, units: Units) -> Vec<Dimension> {
+    let straight = elevation.arms.iter().filter(|arm| measured_parts(arm).len() == 1);
+    let dimension = |arm: &Piece| {
+        let line = measured(arm, sight)?;
+        let words = format!("{} {}", arm.mark, units.tape(arm.length_m()));
+        Some(Dimension { line, words, tied_to: spots_on(line.0, line.1).to_vec(), directions: &AROUND })
+    };
+    straight.filter_map(dimension).collect()
+}
+
+/// Lengths of the bent pieces of wire: each part has its number, the longest that of the whole piece too.
+pub(super) fn bent_arms(elevation: &Elevation, sight: &Sight, units: Units, labels: &mut Labels) {
     for arm in &elevation.arms {
         let parts = measured_parts(arm);
-        let words = format!("{} {}", arm.mark, units.tape(arm.length_m()));
         if parts.len() == 1 {
-            if let Some((from, to)) = measured(arm, sight)
-                && let Err(text) = number(from, to, &words, labels)
-            {
-                labels.put_near(middle(from, to), &text, &AROUND);
-            }
             continue;
         }
         let longest = longest(arm);
         for index in parts {
             let length = units.tape(arm.lengths_m[index]);
             let part = if index == longest {
-                Text::new(0.0, 0.0, TextStyle::Strong, format!("{words}, here {length}"))
+                let whole = format!("{} {}", arm.mark, units.tape(arm.length_m()));
+                Text::new(0.0, 0.0, TextStyle::Strong, format!("{whole}, here {length}"))
             } else {
                 Text::new(0.0, 0.0, TextStyle::Body, length)
             };
             let (from, to) = (sight.spot(arm.places[index]), sight.spot(arm.places[index + 1]));
-            let candidates = along(from, to, part.style, &part.text, 1.0);
-            if candidates.is_empty() || labels.put(candidates).is_err() {
-                labels.put_near(middle(from, to), &part, &AROUND);
+            if labels.put(along(from, to, part.style, &part.text, 1.0)).is_none() {
+                labels.put_near(&spots_on(from, to), &part, &AROUND);
             }
         }
     }
@@ -203,7 +196,7 @@ fn is_beside(a: &Fastening, b: &Fastening) -> bool {
     is_near && (a.at.up_m - b.at.up_m).abs() < SAME_M && (a.foot_m - b.foot_m).abs() < SAME_M
 }
 
-/// Lengths of ropes, and what the feedpoint, the line and the entrance are.
+/// Lengths of ropes and lines.
 pub(super) fn names(
     elevation: &Elevation,
     sight: &Sight,
@@ -216,11 +209,10 @@ pub(super) fn names(
         let longest = longest(rope);
         if let Some(pair) = rope.places.windows(2).nth(longest) {
             let (from, to) = (sight.spot(pair[0]), sight.spot(pair[1]));
-            let candidates = along(from, to, TextStyle::Body, &words, 1.0);
-            if candidates.is_empty() || labels.put(candidates).is_err() {
+            if labels.put(along(from, to, TextStyle::Body, &words, 1.0)).is_none() {
                 let text = Text::new(0.0, 0.0, TextStyle::Body, words);
                 labels.put_near(
-                    middle(from, to),
+                    &spots_on(from, to),
                     &text,
                     &[(0.0, 1.0), (0.71, 0.71), (-0.71, 0.71), (0.0, -1.0), (0.71, -0.71), (-0.71, -0.71)],
                 );
@@ -228,12 +220,21 @@ pub(super) fn names(
         }
     }
     let (feedpoint, entrance) = (sight.spot(elevation.feedpoint), sight.spot(elevation.entrance));
-    let text = format!("feedpoint, {} up", units.tape(elevation.feedpoint.up_m));
-    labels.put_near(feedpoint, &Text::new(0.0, 0.0, TextStyle::Body, text), &AROUND);
     for line in lines {
         let text = Text::new(0.0, 0.0, TextStyle::Body, line);
-        labels.put_near(middle(feedpoint, entrance), &text, &AROUND);
+        labels.put_near(&spots_on(feedpoint, entrance), &text, &AROUND);
     }
+}
+
+/// Says where the wire is fed, and how high where no fastening beside it says it.
+pub(super) fn feedpoint(elevation: &Elevation, sight: &Sight, units: Units, labels: &mut Labels) {
+    let fed = Fastening { at: elevation.feedpoint, foot_m: 0.0 };
+    let text = if elevation.fastenings.iter().any(|fastening| is_beside(&fed, fastening)) {
+        "feedpoint".to_owned()
+    } else {
+        format!("feedpoint, {} up", units.tape(elevation.feedpoint.up_m))
+    };
+    labels.put_near(&[sight.spot(elevation.feedpoint)], &Text::new(0.0, 0.0, TextStyle::Body, text), &AROUND);
 }
 
 /// Where the entrance is, from the first fastening.
@@ -264,8 +265,8 @@ pub(super) fn entrance(
 ) {
     let at = sight.spot(elevation.entrance);
     let text = Text::new(0.0, 0.0, TextStyle::Body, entrance_words(elevation, units));
-    if let Err(text) = labels.put(below(at.x_mm, &text, (frame, top_mm), name_rows(elevation))) {
-        labels.put_near(at, &text, &AROUND);
+    if labels.put(below(at.x_mm, &text, (frame, top_mm), name_rows(elevation))).is_none() {
+        labels.put_near(&[at], &text, &AROUND);
     }
 }
 
@@ -298,8 +299,8 @@ pub(super) fn support_names(
         let x_mm = sight.spot(support.foot).x_mm;
         let name = fit(TextStyle::Body, &fonts::printable(&support.name), room_mm);
         let text = Text::new(0.0, 0.0, TextStyle::Body, name).ink(Ink::Support);
-        if let Err(text) = labels.put(below(x_mm, &text, (frame, top_mm), 2)) {
-            labels.put_near(Spot::new(x_mm, top_mm), &text, &AROUND);
+        if labels.put(below(x_mm, &text, (frame, top_mm), 2)).is_none() {
+            labels.put_near(&[Spot::new(x_mm, top_mm)], &text, &AROUND);
         }
     }
 }
@@ -307,10 +308,6 @@ pub(super) fn support_names(
 /// Index of the longest straight part.
 fn longest(piece: &Piece) -> usize {
     (0..piece.lengths_m.len()).max_by(|&a, &b| piece.lengths_m[a].total_cmp(&piece.lengths_m[b])).unwrap_or(0)
-}
-
-fn middle(a: Spot, b: Spot) -> Spot {
-    Spot::new((a.x_mm + b.x_mm) / 2.0, (a.y_mm + b.y_mm) / 2.0)
 }
 
 /// A line moved up, at right angles to itself; to the left where it stands upright.

@@ -1,4 +1,6 @@
-//! Places labels so that none lies on another one, none leaves the drawing, and few cross a line.
+//! Places labels so that none lies on another one or on a line, and none leaves the drawing.
+//!
+//! All lines come before any label. The line that ties a label to its place may cross others, but no label.
 
 use crate::scene::{Anchor, Frame, Item, Spot, Text, overlap};
 use crate::tokens::{Ink, Stroke, TextStyle};
@@ -9,6 +11,8 @@ const CLEAR_MM: f64 = 0.5;
 const LINE_MM: f64 = 0.3;
 /// From here on a label is tied to its place by a line, mm.
 const LEADER_FROM_MM: f64 = 4.0;
+/// What a label may stand farther off so that its line crosses one line less, mm.
+const CROSSING_MM: f64 = 6.0;
 /// How far from its place a label may stand, mm.
 const DISTANCES_MM: [f64; 8] = [1.2, 3.0, 5.0, 8.0, 12.0, 17.0, 23.0, 30.0];
 
@@ -32,42 +36,55 @@ impl Labels {
         self.lines.extend(points.windows(2).map(|pair| ribbon(pair[0], pair[1])));
     }
 
-    /// Puts the first of some texts that stands free; gives the last one back where none does.
-    pub fn put(&mut self, candidates: impl IntoIterator<Item = Text>) -> Result<(), Text> {
-        let mut refused = None;
-        for text in candidates {
-            if self.is_free(&text) {
-                self.texts.push(grown(&text));
-                self.items.push(Item::Text(text));
-                return Ok(());
-            }
-            refused = Some(text);
-        }
-        refused.map_or(Ok(()), Err)
+    /// Draws a line and keeps labels off it.
+    pub fn draw(&mut self, points: [Spot; 2], stroke: Stroke, ink: Ink, items: &mut Vec<Item>) {
+        self.avoid(&points);
+        items.push(Item::line(points[0], points[1], stroke, ink));
     }
 
-    /// Puts a text, upright, near a spot, tied to it by a line where it has to stand off; says so in words where there
-    /// is no room at all.
-    pub fn put_near(&mut self, spot: Spot, text: &Text, directions: &[(f64, f64)]) {
+    /// Puts the first of some texts that stands free, if there is one.
+    pub fn put(&mut self, candidates: impl IntoIterator<Item = Text>) -> Option<()> {
+        let text = candidates.into_iter().find(|text| self.is_free(text))?;
+        self.texts.push(grown(&text));
+        self.items.push(Item::Text(text));
+        Some(())
+    }
+
+    /// Puts a text, upright, near one of some spots, tied to it by a line where it has to stand off; says so in words
+    /// where there is no room at all.
+    pub fn put_near(&mut self, spots: &[Spot], text: &Text, directions: &[(f64, f64)]) {
+        let Some(Tied { text: placed, leader }) = self.best_near(spots, text, directions) else {
+            self.unplaced.push(text.text.clone());
+            return;
+        };
+        if let Some([from, to]) = leader {
+            self.items.push(Item::line(from, to, Stroke::Hair, Ink::Faint));
+            self.avoid(&[from, to]);
+        }
+        self.texts.push(grown(&placed));
+        self.items.push(Item::Text(placed));
+    }
+
+    /// The nearest free place; a line that its tie crosses counts as some distance more.
+    fn best_near(&self, spots: &[Spot], text: &Text, directions: &[(f64, f64)]) -> Option<Tied> {
+        let mut best: Option<(f64, Tied)> = None;
         for distance_mm in DISTANCES_MM {
-            for &direction in directions {
-                let candidate = beside(spot, direction, distance_mm, text);
-                if self.is_free(&candidate) {
-                    if distance_mm >= LEADER_FROM_MM {
-                        let from = Spot::new(
-                            spot.x_mm + direction.0 * (distance_mm - 0.8),
-                            spot.y_mm + direction.1 * (distance_mm - 0.8),
-                        );
-                        self.items.push(Item::line(spot, from, Stroke::Hair, Ink::Faint));
-                        self.avoid(&[spot, from]);
-                    }
-                    self.texts.push(grown(&candidate));
-                    self.items.push(Item::Text(candidate));
-                    return;
+            if best.as_ref().is_some_and(|(cost_mm, _)| *cost_mm <= distance_mm) {
+                break;
+            }
+            for (&spot, &direction) in spots.iter().flat_map(|spot| directions.iter().map(move |d| (spot, d)))
+            {
+                let tied = Tied::new(spot, direction, distance_mm, text);
+                if !self.is_free(&tied.text) || !self.is_clear(&tied) {
+                    continue;
+                }
+                let cost_mm = distance_mm + CROSSING_MM * self.crossed_lines(&tied) as f64;
+                if best.as_ref().is_none_or(|(least_mm, _)| cost_mm < *least_mm) {
+                    best = Some((cost_mm, tied));
                 }
             }
         }
-        self.unplaced.push(text.text.clone());
+        best.map(|(_, tied)| tied)
     }
 
     /// What was put, and what found no room.
@@ -84,6 +101,40 @@ impl Labels {
                 && corner.y_mm <= self.frame.bottom_mm()
         });
         is_within && !self.texts.iter().chain(&self.lines).any(|taken| overlap(&corners, taken))
+    }
+
+    /// Whether the line that ties a label crosses no other label.
+    fn is_clear(&self, tied: &Tied) -> bool {
+        let Some([from, to]) = tied.leader else { return true };
+        let ribbon = ribbon(from, to);
+        !self.texts.iter().any(|taken| overlap(&ribbon, taken))
+    }
+
+    /// How many lines the one that ties a label crosses, but for those that it begins at.
+    fn crossed_lines(&self, tied: &Tied) -> usize {
+        let Some([from, to]) = tied.leader else { return 0 };
+        let length_mm = (to.x_mm - from.x_mm).hypot(to.y_mm - from.y_mm);
+        let share = (CLEAR_MM + 2.0 * LINE_MM) / length_mm;
+        let begun =
+            Spot::new(from.x_mm + share * (to.x_mm - from.x_mm), from.y_mm + share * (to.y_mm - from.y_mm));
+        let ribbon = ribbon(begun, to);
+        self.lines.iter().filter(|line| overlap(&ribbon, line)).count()
+    }
+}
+
+/// A label near its place, and the line between them.
+struct Tied {
+    text: Text,
+    leader: Option<[Spot; 2]>,
+}
+
+impl Tied {
+    fn new(spot: Spot, direction: (f64, f64), distance_mm: f64, text: &Text) -> Self {
+        let leader = (distance_mm >= LEADER_FROM_MM).then(|| {
+            let length_mm = distance_mm - 0.8;
+            [spot, Spot::new(spot.x_mm + direction.0 * length_mm, spot.y_mm + direction.1 * length_mm)]
+        });
+        Self { text: beside(spot, direction, distance_mm, text), leader }
     }
 }
 
@@ -106,6 +157,13 @@ pub(super) const AROUND: [(f64, f64); 16] = [
     (0.38, -0.92),
     (-0.38, -0.92),
 ];
+
+/// Spots along a line, its middle first.
+pub(super) fn spots_on(from: Spot, to: Spot) -> [Spot; 5] {
+    [0.5, 0.35, 0.65, 0.2, 0.8].map(|share| {
+        Spot::new(from.x_mm + share * (to.x_mm - from.x_mm), from.y_mm + share * (to.y_mm - from.y_mm))
+    })
+}
 
 /// A text beside a spot, upright: its middle or its end nearest to the spot lies at the distance.
 fn beside(spot: Spot, (x, y): (f64, f64), distance_mm: f64, text: &Text) -> Text {
@@ -177,22 +235,30 @@ mod tests {
     use super::*;
 
     #[test]
-    fn labels_at_one_spot_move_apart_or_are_given_back() {
+    fn labels_of_one_line_move_apart_or_are_given_back() {
         let frame = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: 60.0, height_mm: 40.0 };
         let mut labels = Labels::new(frame);
-        let spot = Spot::new(30.0, 20.0);
+        let spots = spots_on(Spot::new(10.0, 20.0), Spot::new(50.0, 20.0));
+        // No label has room between these lines and the spots.
+        for y_mm in [17.0, 23.0] {
+            labels.avoid(&[Spot::new(0.0, y_mm), Spot::new(60.0, y_mm)]);
+        }
         for index in 0..40 {
-            labels.put_near(spot, &Text::new(0.0, 0.0, TextStyle::Body, format!("label {index}")), &AROUND);
+            labels.put_near(&spots, &Text::new(0.0, 0.0, TextStyle::Body, format!("label {index}")), &AROUND);
         }
         let (items, unplaced) = labels.finish();
-        let boxes: Vec<_> = items
-            .iter()
-            .filter_map(|item| if let Item::Text(text) = item { Some(text.corners()) } else { None })
-            .collect();
+        let (mut boxes, mut leaders) = (Vec::new(), Vec::new());
+        for item in &items {
+            match item {
+                Item::Text(text) => boxes.push(text.corners()),
+                Item::Line { points, .. } => leaders.push(ribbon(points[0], points[1])),
+                Item::Area { .. } => {}
+            }
+        }
         assert_eq!(boxes.len() + unplaced.len(), 40);
-        assert!(boxes.len() >= 8, "only {} found room", boxes.len());
+        assert!(boxes.len() >= 8 && !leaders.is_empty(), "only {} found room", boxes.len());
         for (index, a) in boxes.iter().enumerate() {
-            assert!(boxes[index + 1..].iter().all(|b| !overlap(a, b)));
+            assert!(boxes[index + 1..].iter().chain(&leaders).all(|b| !overlap(a, b)));
         }
     }
 }

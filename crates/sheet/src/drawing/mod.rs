@@ -15,6 +15,7 @@ use station::units::Units;
 
 use crate::model::link_mark;
 use crate::scene::{Frame, Scene, Spot};
+use dimensions::Dimension;
 use labels::Labels;
 
 /// Room beside the outermost supports for heights and signs, mm.
@@ -22,7 +23,7 @@ const SIDE_MM: f64 = 13.0;
 /// Room over the highest support, mm.
 const OVER_MM: f64 = 6.0;
 /// The same where more than two pieces of wire crowd: their dimension lines and numbers stand above.
-const OVER_MANY_MM: f64 = 8.5;
+const OVER_MANY_MM: f64 = 9.6;
 
 /// How large the drawing may be.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -77,6 +78,7 @@ fn paint(
     let surface = site::surface(elevation, sight, frame.left_mm, frame.right_mm());
     site::earth(&surface, items);
     labels.avoid(&surface);
+    labels.avoid(&site::foot_of_earth(&surface));
     for support in &elevation.supports {
         site::support(support, sight, items);
         let top = Place { up_m: support.top_m, ..support.foot };
@@ -98,13 +100,26 @@ fn paint(
         labels.avoid(&sign);
     }
     let below_mm = surface.iter().map(|spot| spot.y_mm).fold(0.0, f64::max) + site::EARTH_MM;
-    dimensions::support_names(elevation, sight, frame, below_mm, &mut labels);
     let spans_mm = below_mm + dimensions::names_mm(elevation);
-    dimensions::spans(elevation, sight, units, spans_mm, (&mut labels, items));
+    // All lines before any text: no line may cross a text that was put before it.
+    let spans = dimensions::spans(elevation, sight, units, spans_mm);
+    let heights = dimensions::heights(elevation, sight, units, (&mut labels, items));
+    let arms = dimensions::arms(elevation, sight, units);
+    for dimension in spans.iter().chain(&heights).chain(&arms) {
+        dimension.draw(&mut labels, items);
+    }
+    dimensions::support_names(elevation, sight, frame, below_mm, &mut labels);
+    let mut tied: Vec<&Dimension> =
+        spans.iter().chain(&heights).filter(|it| it.number_along(&mut labels).is_none()).collect();
     dimensions::entrance(elevation, sight, units, (frame, below_mm), &mut labels);
-    dimensions::heights(elevation, sight, units, (&mut labels, items));
     dimensions::loads(elevation, sight, &mut labels);
-    dimensions::arms(elevation, sight, units, (&mut labels, items));
+    tied.extend(arms.iter().filter(|it| it.number_along(&mut labels).is_none()));
+    // Labels with one place only, before those with many.
+    dimensions::feedpoint(elevation, sight, units, &mut labels);
+    for dimension in tied {
+        dimension.number_near(&mut labels);
+    }
+    dimensions::bent_arms(elevation, sight, units, &mut labels);
     dimensions::names(elevation, sight, units, &line_labels(plan, units), &mut labels);
     let (texts, unplaced) = labels.finish();
     items.extend(texts);

@@ -6,7 +6,7 @@ use super::elevation::Place;
 use crate::scene::Spot;
 
 /// Round steps within a power of ten.
-const STEPS: [f64; 8] = [1.0, 1.5, 2.0, 2.5, 3.0, 4.0, 5.0, 7.5];
+const STEPS: [f64; 9] = [1.0, 1.5, 2.0, 2.5, 3.0, 4.0, 5.0, 6.0, 7.5];
 /// Inches in a foot.
 const INCHES_PER_FOOT: f64 = 12.0;
 /// Millimetres in a metre.

@@ -22,6 +22,8 @@ const MOST_ROOF_MM: f64 = 4.5;
 const HALF_LOAD_MM: (f64, f64) = (2.0, 1.1);
 /// Radius of an insulator, mm.
 const INSULATOR_MM: f64 = 0.9;
+/// Radius of the feedpoint's mark, mm.
+const FEEDPOINT_MM: f64 = 1.26;
 
 /// The earth's surface through the feet of the supports, from edge to edge.
 pub(super) fn surface(elevation: &Elevation, sight: &Sight, left_mm: f64, right_mm: f64) -> Vec<Spot> {
@@ -33,6 +35,11 @@ pub(super) fn surface(elevation: &Elevation, sight: &Sight, left_mm: f64, right_
     out.extend(feet);
     out.push(Spot::new(right_mm, last));
     out
+}
+
+/// Labels keep off the hatching if they keep off its surface and this: no text is as low as what lies between.
+pub(super) fn foot_of_earth(surface: &[Spot]) -> Vec<Spot> {
+    surface.iter().map(|spot| Spot::new(spot.x_mm, spot.y_mm + 0.75 * EARTH_MM)).collect()
 }
 
 /// The earth below its surface.
@@ -99,12 +106,16 @@ fn outline_of(support: &SupportSide, sight: &Sight) -> Vec<Spot> {
 
 /// The box that stands for the entrance.
 fn entrance_frame(elevation: &Elevation, sight: &Sight) -> Frame {
-    let at = sight.spot(elevation.entrance);
+    square(sight.spot(elevation.entrance), HALF_ENTRANCE_MM)
+}
+
+/// An upright square about a spot.
+fn square(at: Spot, half_mm: f64) -> Frame {
     Frame {
-        left_mm: at.x_mm - HALF_ENTRANCE_MM,
-        top_mm: at.y_mm - HALF_ENTRANCE_MM,
-        width_mm: 2.0 * HALF_ENTRANCE_MM,
-        height_mm: 2.0 * HALF_ENTRANCE_MM,
+        left_mm: at.x_mm - half_mm,
+        top_mm: at.y_mm - half_mm,
+        width_mm: 2.0 * half_mm,
+        height_mm: 2.0 * half_mm,
     }
 }
 
@@ -117,6 +128,9 @@ pub(super) fn outlines(elevation: &Elevation, sight: &Sight) -> Vec<Vec<Spot>> {
     let mut out: Vec<Vec<Spot>> =
         elevation.supports.iter().map(|support| closed(outline_of(support, sight))).collect();
     out.push(closed(entrance_frame(elevation, sight).corners().to_vec()));
+    let ring = |(place, radius_mm)| closed(square(sight.spot(place), radius_mm).corners().to_vec());
+    out.extend(elevation.ends.iter().map(|&end| (end, INSULATOR_MM)).map(ring));
+    out.push(ring((elevation.feedpoint, FEEDPOINT_MM)));
     out
 }
 
@@ -143,10 +157,7 @@ pub(super) fn wires(elevation: &Elevation, sight: &Sight, items: &mut Vec<Item>)
         Item::line(shift(feedpoint), shift(entrance), Stroke::Rule, Ink::Text)
     });
     items.extend(line);
-    items.push(Item::area(
-        Frame { left_mm: entrance.x_mm - 1.4, top_mm: entrance.y_mm - 1.4, width_mm: 2.8, height_mm: 2.8 },
-        Ink::Text,
-    ));
+    items.push(Item::area(entrance_frame(elevation, sight), Ink::Text));
     for rope in &elevation.ropes {
         let points = rope.places.iter().map(|&place| sight.spot(place)).collect();
         items.push(Item::Line { points, stroke: Stroke::Rope, ink: Ink::Rope });
@@ -159,7 +170,7 @@ pub(super) fn wires(elevation: &Elevation, sight: &Sight, items: &mut Vec<Item>)
     for &end in &elevation.ends {
         items.push(Item::disc(sight.spot(end), INSULATOR_MM, Ink::Background, outline));
     }
-    items.push(Item::disc(feedpoint, INSULATOR_MM * 1.4, Ink::Background, outline));
+    items.push(Item::disc(feedpoint, FEEDPOINT_MM, Ink::Background, outline));
     items.push(Item::disc(feedpoint, INSULATOR_MM * 0.5, Ink::Wire, None));
 }
 

@@ -14,6 +14,8 @@ pub struct Caution {
     pub head: String,
     /// What to do.
     pub text: String,
+    /// It holds for every station.
+    pub is_general: bool,
 }
 
 /// The findings of this plan that matter to the crew, then the general cautions.
@@ -24,7 +26,7 @@ pub fn cautions(plan: &Plan, report: &Report) -> Vec<Caution> {
         |finding: &&Finding| finding.weight != Weight::Note && !matches!(finding.place, Place::Band(_));
     let found = report.findings.iter().filter(matters).map(|finding| {
         let head = if finding.weight == Weight::Problem { "This plan: problem" } else { "This plan" };
-        Caution { head: head.to_owned(), text: printable(&finding.text) }
+        Caution { head: head.to_owned(), text: printable(&finding.text), is_general: false }
     });
     found.chain(general(plan, report)).collect()
 }
@@ -45,7 +47,7 @@ fn general(plan: &Plan, report: &Report) -> Vec<Caution> {
     } else {
         String::new()
     };
-    let caution = |head: &str, text: String| Caution { head: head.to_owned(), text };
+    let caution = |head: &str, text: String| Caution { head: head.to_owned(), text, is_general: true };
     vec![
         caution(
             "Overhead power lines",

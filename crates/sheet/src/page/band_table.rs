@@ -1,6 +1,7 @@
 //! The table of bands: one block per band, one row per feed in it.
 
 use super::block::{Block, ending, label};
+use super::density::Density;
 use super::flow::Section;
 use super::swr_curve;
 use crate::fonts;
@@ -14,18 +15,14 @@ use station::report::VerdictKind;
 const BAND_MM: f64 = 30.0;
 /// Width of the curve with its numbers, mm.
 const CURVE_MM: f64 = 26.0;
-/// Height of the curve, mm.
-const CURVE_HEIGHT_MM: f64 = 14.0;
 /// Width of the feed's letter, mm.
 const LETTER_MM: f64 = 5.0;
 /// Width of a standing-wave ratio, mm.
 const SWR_MM: f64 = 13.5;
 /// Width of the watts, mm.
 const WATTS_MM: f64 = 14.0;
-/// Over and under a band, mm.
-const PAD_MM: f64 = 0.4;
 
-pub(crate) fn section(model: &SheetModel, width_mm: f64) -> Section {
+pub(crate) fn section(model: &SheetModel, density: &Density, width_mm: f64) -> Section {
     Section {
         title: "Bands".to_owned(),
         aside: Block::aside(&format!(
@@ -33,7 +30,7 @@ pub(crate) fn section(model: &SheetModel, width_mm: f64) -> Section {
             station::units::swr(model.swr_limit)
         )),
         columns: Some(heads(width_mm, model.feeds.len())),
-        blocks: model.bands.iter().map(|band| block(band, model.swr_limit, width_mm)).collect(),
+        blocks: model.bands.iter().map(|band| block(band, model.swr_limit, density, width_mm)).collect(),
     }
 }
 
@@ -85,13 +82,13 @@ fn heads(width_mm: f64, feeds: usize) -> Block {
     block
 }
 
-fn block(band: &BandEntry, limit: f64, width_mm: f64) -> Block {
+fn block(band: &BandEntry, limit: f64, density: &Density, width_mm: f64) -> Block {
     let columns = Columns::new(width_mm);
-    let mut block = Block::default();
+    let mut block = Block::new(*density);
     block.rule(0.0, width_mm, 0.0, Stroke::Rule, Ink::Rule);
     let name_mm = BAND_MM - 1.5;
     let name_style = style_for(&[TextStyle::Key, TextStyle::Strong], &band.name, name_mm, 1);
-    let mut left_mm = PAD_MM;
+    let mut left_mm = density.band_pad;
     for span in [
         Span::new(name_style, clamp(name_style, &band.name, name_mm, 3)),
         Span::new(TextStyle::Note, &band.range).ink(Ink::Faint),
@@ -100,14 +97,14 @@ fn block(band: &BandEntry, limit: f64, width_mm: f64) -> Block {
     ] {
         left_mm += block.paragraph(0.0, left_mm, name_mm, span);
     }
-    let frame =
-        Frame { left_mm: BAND_MM, top_mm: PAD_MM + 0.6, width_mm: CURVE_MM, height_mm: CURVE_HEIGHT_MM };
+    let top_mm = density.band_pad + 0.6;
+    let frame = Frame { left_mm: BAND_MM, top_mm, width_mm: CURVE_MM, height_mm: density.curve };
     swr_curve::draw(&mut block, frame, &band.curves, limit);
-    let mut right_mm = PAD_MM;
+    let mut right_mm = density.band_pad;
     for (index, feed) in band.feeds.iter().enumerate() {
         right_mm += row(&mut block, feed, index, right_mm, &columns) + 0.3;
     }
-    block.height_mm = left_mm.max(right_mm).max(frame.bottom_mm()) + PAD_MM;
+    block.height_mm = left_mm.max(right_mm).max(frame.bottom_mm()) + density.band_pad;
     block
 }
 
@@ -127,7 +124,7 @@ fn row(block: &mut Block, feed: &FeedEntry, index: usize, top_mm: f64, columns: 
     let setting_mm = columns.loss - loss_mm - space::CELL - columns.setting;
     let setting = Span::new(TextStyle::Strong, &feed.setting);
     let first_mm = block.paragraph(columns.setting, top_mm, setting_mm, setting);
-    let second_mm = top_mm + first_mm.max(TextStyle::Body.leading_mm());
+    let second_mm = top_mm + first_mm.max(block.leading_mm(TextStyle::Body));
     let mut room_mm = columns.watts - columns.words;
     if !feed.losses.is_empty() {
         let losses = ending(TextStyle::Note, &feed.losses).ink(Ink::Faint);

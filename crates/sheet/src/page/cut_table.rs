@@ -1,6 +1,7 @@
 //! The cut list.
 
 use super::block::{Block, ending, label};
+use super::density::Density;
 use super::flow::Section;
 use crate::fonts;
 use crate::model::{CutList, CutRow};
@@ -8,16 +9,10 @@ use crate::scene::{Frame, Item};
 use crate::text::{Span, clamp};
 use crate::tokens::{Ink, Stroke, TextStyle, space};
 
-/// Between two columns of numbers, mm.
-const COLUMN_GAP_MM: f64 = 4.0;
-/// Side of the box to tick, mm.
-const TICK_MM: f64 = 4.4;
-/// Least width of the box for the length as built, mm.
-const BUILT_MM: f64 = 19.0;
+/// Around the box to tick, mm.
+const TICK_GAP_MM: f64 = 0.8;
 /// Over and under the text of a row, mm.
 const PAD_MM: f64 = 0.8;
-/// Least height of a row: someone writes in it, mm.
-const ROW_MM: f64 = 6.0;
 
 /// Where the columns stand, mm, from the measured width of what is in them.
 struct Columns {
@@ -28,10 +23,12 @@ struct Columns {
     tick: f64,
     built: f64,
     width: f64,
+    density: Density,
 }
 
 impl Columns {
-    fn new(list: &CutList, width_mm: f64) -> Self {
+    fn new(list: &CutList, density: &Density, width_mm: f64) -> Self {
+        let gap = density.cut_gap;
         let widest = |style: TextStyle, text: fn(&CutRow) -> &String| {
             list.rows.iter().map(|row| fonts::width_mm(style, text(row))).fold(0.0, f64::max)
         };
@@ -42,25 +39,33 @@ impl Columns {
             widest(TextStyle::Body, |row| &row.extra),
             widest(TextStyle::Key, |row| &row.cut),
         ]
-        .map(|width| width.max(8.0) + COLUMN_GAP_MM);
-        let built = width_mm - BUILT_MM;
-        let tick = built - TICK_MM - 2.0;
-        let cut = tick - COLUMN_GAP_MM;
+        .map(|width| width.max(8.0) + gap);
+        let built = width_mm - density.built;
+        let tick = built - (density.cut_row - 2.0 * TICK_GAP_MM) - 2.0;
+        let cut = tick - gap;
         let extra = cut - widths[3];
         let ends = extra - widths[2];
         let plan = ends - widths[1];
         let part_width = plan - widths[0] - mark;
-        Self { part: mark, part_width, numbers: [plan, ends, extra, cut], tick, built, width: width_mm }
+        Self {
+            part: mark,
+            part_width,
+            numbers: [plan, ends, extra, cut],
+            tick,
+            built,
+            width: width_mm,
+            density: *density,
+        }
     }
 }
 
-pub(crate) fn section(list: &CutList, width_mm: f64) -> Section {
-    let columns = Columns::new(list, width_mm);
+pub(crate) fn section(list: &CutList, density: &Density, width_mm: f64) -> Section {
+    let columns = Columns::new(list, density, width_mm);
     let mut blocks: Vec<Block> = list.rows.iter().map(|row| block(row, &columns)).collect();
     let sum = "plan + ends + extra = cut";
     let aside =
         if list.conductor.is_empty() { sum.to_owned() } else { format!("wire: {}; {sum}", list.conductor) };
-    let mut note = Block::default();
+    let mut note = Block::new(*density);
     let words = Span::new(TextStyle::Note, &list.note).ink(Ink::Faint);
     note.height_mm = space::CELL + note.paragraph(0.0, space::CELL, width_mm, words);
     blocks.push(note);
@@ -85,16 +90,17 @@ fn heads(columns: &Columns) -> Block {
 }
 
 fn block(row: &CutRow, columns: &Columns) -> Block {
-    let mut block = Block::default();
+    let density = &columns.density;
+    let mut block = Block::new(*density);
     // Where there is nothing to cut, words take the room of the numbers.
     let is_cut = !row.cut.is_empty();
-    let part_width = if is_cut { columns.part_width } else { columns.tick - COLUMN_GAP_MM - columns.part };
+    let part_width = if is_cut { columns.part_width } else { columns.tick - density.cut_gap - columns.part };
     let spans = [(TextStyle::Strong, &row.part, Ink::Text), (TextStyle::Body, &row.detail, Ink::Faint)]
         .map(|(style, words, ink)| Span::new(style, clamp(style, words, part_width, 2)).ink(ink));
     // The first line stands in the middle of a row of one line.
-    let top_mm = (ROW_MM - TextStyle::Body.leading_mm()) / 2.0;
+    let top_mm = (density.cut_row - block.leading_mm(TextStyle::Body)) / 2.0;
     let text_mm = block.spans(columns.part, top_mm, part_width, &spans);
-    block.height_mm = (text_mm + top_mm + PAD_MM).max(ROW_MM);
+    block.height_mm = (text_mm + top_mm + PAD_MM).max(density.cut_row);
     block.text(0.0, top_mm, label(TextStyle::Strong, &row.mark));
     let [plan, ends, extra, cut] = columns.numbers;
     for (x_mm, number) in [(plan, &row.plan), (ends, &row.ends), (extra, &row.extra)] {
@@ -103,11 +109,12 @@ fn block(row: &CutRow, columns: &Columns) -> Block {
         }
     }
     if is_cut {
-        let key_mm = (ROW_MM - TextStyle::Key.leading_mm()) / 2.0;
+        let key_mm = (density.cut_row - block.leading_mm(TextStyle::Key)) / 2.0;
         block.text(cut, key_mm, ending(TextStyle::Key, &row.cut));
     }
-    let box_mm = (ROW_MM - TICK_MM) / 2.0;
-    let tick = Frame { left_mm: columns.tick, top_mm: box_mm, width_mm: TICK_MM, height_mm: TICK_MM };
+    let box_mm = TICK_GAP_MM;
+    let side_mm = density.cut_row - 2.0 * box_mm;
+    let tick = Frame { left_mm: columns.tick, top_mm: box_mm, width_mm: side_mm, height_mm: side_mm };
     let built = Frame {
         left_mm: columns.built,
         top_mm: box_mm / 2.0,

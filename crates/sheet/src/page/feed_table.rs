@@ -1,6 +1,7 @@
 //! The feed schedules, two beside each other.
 
-use super::block::{Block, baseline_mm, ending, label};
+use super::block::{Block, ending, label};
+use super::density::Density;
 use super::flow::Section;
 use crate::fonts;
 use crate::model::{FeedSchedule, SheetModel, Step, Stress};
@@ -14,10 +15,8 @@ const MARK_MM: f64 = 8.0;
 const VOLTS_MM: f64 = 30.5;
 /// Width of the amperes, mm.
 const AMPERES_MM: f64 = 17.5;
-/// Height of the line with the feed's name, mm.
-const NAME_MM: f64 = 6.0;
 
-pub(crate) fn section(model: &SheetModel, width_mm: f64) -> Section {
+pub(crate) fn section(model: &SheetModel, density: &Density, width_mm: f64) -> Section {
     let column_mm = (width_mm - space::GUTTER) / 2.0;
     let blocks = model
         .feeds
@@ -26,7 +25,7 @@ pub(crate) fn section(model: &SheetModel, width_mm: f64) -> Section {
         .map(|(row, pair)| {
             let mut block = Block::default();
             for (index, feed) in pair.iter().enumerate() {
-                let schedule = schedule(feed, 2 * row + index, column_mm);
+                let schedule = schedule(feed, 2 * row + index, density, column_mm);
                 block.height_mm = block.height_mm.max(schedule.height_mm);
                 block.add(schedule, index as f64 * (column_mm + space::GUTTER), 0.0);
             }
@@ -44,22 +43,22 @@ pub(crate) fn section(model: &SheetModel, width_mm: f64) -> Section {
     }
 }
 
-fn schedule(feed: &FeedSchedule, index: usize, width_mm: f64) -> Block {
-    let mut block = Block::default();
+fn schedule(feed: &FeedSchedule, index: usize, density: &Density, width_mm: f64) -> Block {
+    let mut block = Block::new(*density);
     let ink = Ink::feed(index);
     let tag_mm = fonts::width_mm(TextStyle::Key, &feed.letter) + 4.0;
-    let tag = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: tag_mm, height_mm: NAME_MM };
-    let name_mm = (NAME_MM - TextStyle::Key.leading_mm()) / 2.0;
+    let tag = Frame { left_mm: 0.0, top_mm: 0.0, width_mm: tag_mm, height_mm: density.feed_name };
+    let name_mm = (density.feed_name - block.leading_mm(TextStyle::Key)) / 2.0;
     let letter = label(TextStyle::Key, &feed.letter).ink(Ink::Background).anchor(Anchor::Middle);
     block.text(tag_mm / 2.0, name_mm, letter);
     block.ground(tag, ink);
     let left_mm = MARK_MM.max(tag_mm + 2.0);
     let name = fit(TextStyle::Key, &feed.name, width_mm - left_mm - 18.0 - AMPERES_MM);
     block.text(left_mm, name_mm, label(TextStyle::Key, name));
-    let head_mm = name_mm + baseline_mm(TextStyle::Key) - baseline_mm(TextStyle::Note);
+    let head_mm = name_mm + block.baseline_mm(TextStyle::Key) - block.baseline_mm(TextStyle::Note);
     block.text(width_mm - AMPERES_MM, head_mm, ending(TextStyle::Note, "volts peak").ink(Ink::Faint));
     block.text(width_mm, head_mm, ending(TextStyle::Note, "amps RMS").ink(Ink::Faint));
-    let mut y_mm = NAME_MM;
+    let mut y_mm = density.feed_name;
     for step in &feed.steps {
         block.rule(0.0, width_mm, y_mm, Stroke::Hair, Ink::Rule);
         y_mm += row(&mut block, step, y_mm + 0.5, width_mm) + 1.0;
@@ -93,10 +92,10 @@ fn stress(block: &mut Block, stress: &Stress, right_mm: f64, top_mm: f64) -> f64
         block.text(right_mm, top_mm, rating);
     }
     block.text(x_mm, top_mm, ending(TextStyle::Strong, &stress.value).ink(ink));
-    let second_mm = TextStyle::Strong.leading_mm();
+    let second_mm = block.leading_mm(TextStyle::Strong);
     if stress.at.is_empty() {
         return second_mm;
     }
     block.text(right_mm, top_mm + second_mm, ending(TextStyle::Note, &stress.at).ink(Ink::Faint));
-    second_mm + TextStyle::Note.leading_mm()
+    second_mm + block.leading_mm(TextStyle::Note)
 }

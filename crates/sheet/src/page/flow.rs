@@ -1,6 +1,7 @@
 //! Sections flow down the pages.
 
 use super::block::{Block, baseline_mm, label};
+use super::density::Density;
 use super::furniture;
 use crate::model::Identity;
 use crate::request::Paper;
@@ -23,9 +24,14 @@ impl Section {
     /// Height of a title with its rule, mm.
     pub const TITLE_MM: f64 = 6.2;
 
-    /// Height where nothing is broken, with the space below, mm.
+    /// Height where nothing is broken, mm.
     pub fn height_mm(&self) -> f64 {
-        self.head_height_mm() + self.blocks.iter().map(|block| block.height_mm).sum::<f64>() + space::SECTION
+        self.head_height_mm() + self.blocks.iter().map(|block| block.height_mm).sum::<f64>()
+    }
+
+    /// Height of the head and the first block, mm.
+    pub fn least_height_mm(&self) -> f64 {
+        self.head_height_mm() + self.blocks.first().map_or(0.0, |block| block.height_mm)
     }
 
     fn head_height_mm(&self) -> f64 {
@@ -53,16 +59,17 @@ const TITLE_DROP_MM: f64 = 1.0;
 pub(crate) struct Flow<'a> {
     paper: Paper,
     identity: &'a Identity,
+    density: Density,
     pages: Vec<Scene>,
     y_mm: f64,
     bottom_mm: f64,
 }
 
 impl<'a> Flow<'a> {
-    pub fn new(paper: Paper, identity: &'a Identity) -> Self {
+    pub fn new(paper: Paper, identity: &'a Identity, density: Density) -> Self {
         let (_, height_mm) = paper.size_mm();
         let bottom_mm = height_mm - space::MARGIN - furniture::FOOT_MM;
-        let mut flow = Self { paper, identity, pages: Vec::new(), y_mm: 0.0, bottom_mm };
+        let mut flow = Self { paper, identity, density, pages: Vec::new(), y_mm: 0.0, bottom_mm };
         flow.next_page();
         flow
     }
@@ -85,7 +92,7 @@ impl<'a> Flow<'a> {
         let (width_mm, height_mm) = self.paper.size_mm();
         let mut page = Scene::new(width_mm, height_mm);
         let head = if self.pages.is_empty() {
-            furniture::front_head(self.identity, self.width_mm())
+            furniture::front_head(self.identity, &self.density, self.width_mm())
         } else {
             furniture::running_head(self.identity, self.width_mm())
         };
@@ -96,8 +103,7 @@ impl<'a> Flow<'a> {
 
     pub fn place(&mut self, section: Section) {
         let width_mm = self.width_mm();
-        let first_mm = section.blocks.first().map_or(0.0, |block| block.height_mm);
-        if section.head_height_mm() + first_mm > self.room_mm() {
+        if section.least_height_mm() > self.room_mm() {
             self.next_page();
         }
         self.put(section.head(width_mm, false));
@@ -109,7 +115,7 @@ impl<'a> Flow<'a> {
             }
             self.put(block);
         }
-        self.y_mm += space::SECTION;
+        self.y_mm += self.density.section;
     }
 
     /// Puts a block at the foot of the page.

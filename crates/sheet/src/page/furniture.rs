@@ -3,6 +3,7 @@
 use qrcode::{Color, EcLevel, QrCode};
 
 use super::block::{Block, baseline_mm, ending, label};
+use super::density::Density;
 use crate::model::Identity;
 use crate::scene::{Frame, Item};
 use crate::text::{Span, fit, style_for};
@@ -10,17 +11,15 @@ use crate::tokens::{Ink, Stroke, TextStyle, space};
 
 /// Height of the foot, mm.
 pub(crate) const FOOT_MM: f64 = 5.0;
-/// Side of the code, mm.
-const CODE_MM: f64 = 22.0;
 /// Width of the column with date and checksum, mm.
 const FACTS_MM: f64 = 46.0;
 /// Width of the names in it, mm.
 const FACT_NAME_MM: f64 = 17.0;
 
 /// The head of the first page: name, purpose, date, check, code.
-pub(crate) fn front_head(identity: &Identity, width_mm: f64) -> Block {
+pub(crate) fn front_head(identity: &Identity, density: &Density, width_mm: f64) -> Block {
     let mut block = Block::default();
-    let left_mm = width_mm - CODE_MM - space::GUTTER - FACTS_MM - space::GUTTER;
+    let left_mm = width_mm - density.code - space::GUTTER - FACTS_MM - space::GUTTER;
     let title = style_for(&[TextStyle::Title, TextStyle::Section], &identity.name, left_mm, 1);
     let mut y_mm = block.paragraph(0.0, 0.0, left_mm, Span::new(title, &identity.name));
     let kind = if identity.call_sign.trim().is_empty() {
@@ -47,8 +46,8 @@ pub(crate) fn front_head(identity: &Identity, width_mm: f64) -> Block {
         fact_mm += TextStyle::Key.leading_mm() + 1.2;
         block.rule(facts_mm, facts_mm + FACTS_MM, fact_mm - 0.6, Stroke::Hair, Ink::Rule);
     }
-    block.add(code(&identity.code), width_mm - CODE_MM, 0.0);
-    block.height_mm = y_mm.max(fact_mm).max(CODE_MM) + space::SECTION;
+    block.add(code(&identity.code, density.code), width_mm - density.code, 0.0);
+    block.height_mm = y_mm.max(fact_mm).max(density.code) + density.section;
     block
 }
 
@@ -76,14 +75,14 @@ pub(crate) fn foot(identity: &Identity, width_mm: f64, page: usize, pages: usize
 }
 
 /// A QR code (ISO/IEC 18004) as areas, one for each run of dark modules.
-fn code(content: &str) -> Block {
-    let mut block = Block::empty(CODE_MM);
+fn code(content: &str, side_mm: f64) -> Block {
+    let mut block = Block::empty(side_mm);
     let Ok(code) = QrCode::with_error_correction_level(content, EcLevel::M) else {
         // Too long a name for any code: the sheet stands without one.
         return block;
     };
     let side = code.width();
-    let module_mm = CODE_MM / side as f64;
+    let module_mm = side_mm / side as f64;
     for (row, modules) in code.to_colors().chunks(side).enumerate() {
         let mut from = 0;
         while from < side {

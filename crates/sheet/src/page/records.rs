@@ -1,6 +1,7 @@
 //! Boxes for what the crew measures and signs.
 
 use super::block::{Block, label};
+use super::density::Density;
 use super::flow::Section;
 use crate::fonts;
 use crate::model::{BandEntry, SheetModel};
@@ -12,12 +13,8 @@ use crate::tokens::{Ink, Stroke, TextStyle, space};
 const BANDS_A_ROW: usize = 12;
 /// Fewer bands than this do not make the boxes wider.
 const LEAST_A_ROW: usize = 6;
-/// Height of a box for a number, mm.
-const BOX_MM: f64 = 7.5;
 /// Width of the row's name, mm.
 const NAME_MM: f64 = 16.0;
-/// Height of a box for a name and a date, mm.
-const SIGNED_MM: f64 = 12.0;
 /// Who signs, and the box's share of the width.
 const SIGNED: [(&str, f64); 4] = [
     ("Built: name, date", 0.21),
@@ -27,12 +24,12 @@ const SIGNED: [(&str, f64); 4] = [
 ];
 
 /// Who built, measured, checked and took over.
-pub(crate) fn signatures(width_mm: f64) -> Block {
-    let mut block = Block::empty(SIGNED_MM);
+pub(crate) fn signatures(density: &Density, width_mm: f64) -> Block {
+    let mut block = Block::empty(density.signed);
     let room_mm = width_mm - space::CELL * 2.0 * (SIGNED.len() - 1) as f64;
     let mut left_mm = 0.0;
     for (words, share) in SIGNED {
-        let frame = Frame { left_mm, top_mm: 0.0, width_mm: share * room_mm, height_mm: SIGNED_MM };
+        let frame = Frame { left_mm, top_mm: 0.0, width_mm: share * room_mm, height_mm: density.signed };
         block.items.push(Item::writing_box(frame));
         let words = fit(TextStyle::Note, words, frame.width_mm - 2.0 * space::CELL);
         block.text(left_mm + space::CELL, 0.4, label(TextStyle::Note, words).ink(Ink::Faint));
@@ -60,16 +57,20 @@ pub(crate) fn notes(width_mm: f64, room_mm: f64) -> Option<Block> {
 }
 
 /// A box for each band and feed.
-pub(crate) fn measured(model: &SheetModel, width_mm: f64) -> Section {
+pub(crate) fn measured(model: &SheetModel, density: &Density, width_mm: f64) -> Section {
     Section {
         title: "Measured".to_owned(),
         aside: Block::aside("SWR at the transmitter without the matching unit, in the middle of the band"),
         columns: None,
-        blocks: model.bands.chunks(BANDS_A_ROW).map(|bands| boxes(bands, model, width_mm)).collect(),
+        blocks: model
+            .bands
+            .chunks(BANDS_A_ROW)
+            .map(|bands| boxes(bands, model, density.measured, width_mm))
+            .collect(),
     }
 }
 
-fn boxes(bands: &[BandEntry], model: &SheetModel, width_mm: f64) -> Block {
+fn boxes(bands: &[BandEntry], model: &SheetModel, box_mm: f64, width_mm: f64) -> Block {
     let mut block = Block::default();
     let columns = model.bands.len().clamp(LEAST_A_ROW, BANDS_A_ROW);
     let column_mm = (width_mm - NAME_MM) / columns as f64;
@@ -82,14 +83,14 @@ fn boxes(bands: &[BandEntry], model: &SheetModel, width_mm: f64) -> Block {
     }
     let mut y_mm = TextStyle::Note.leading_mm() + 0.4;
     for feed in &model.feeds {
-        let drop_mm = (BOX_MM - TextStyle::Strong.leading_mm()) / 2.0;
+        let drop_mm = (box_mm - TextStyle::Strong.leading_mm()) / 2.0;
         block.text(0.0, y_mm + drop_mm, label(TextStyle::Strong, format!("SWR {}", feed.letter)));
         for index in 0..bands.len() {
             let frame =
-                Frame { left_mm: left_mm(index), top_mm: y_mm, width_mm: column_mm, height_mm: BOX_MM };
+                Frame { left_mm: left_mm(index), top_mm: y_mm, width_mm: column_mm, height_mm: box_mm };
             block.items.push(Item::writing_box(frame));
         }
-        y_mm += BOX_MM;
+        y_mm += box_mm;
     }
     block.height_mm = y_mm + space::CELL;
     block

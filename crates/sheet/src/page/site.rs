@@ -6,14 +6,16 @@ use station::units::Units;
 
 use super::block::Block;
 use super::flow::Section;
-use crate::drawing::{Ratio, Size, side_view};
+use crate::drawing::{Ratio, SideView, Size, side_view};
 use crate::fonts;
 use crate::scene::{Frame, Item};
 use crate::text::Span;
-use crate::tokens::{Ink, Stroke, TextStyle, space};
+use crate::tokens::{Ink, Stroke, TextStyle};
 
 /// Least height of the section, mm: below it the labels crowd.
 pub(crate) const LEAST_HEIGHT_MM: f64 = 52.0;
+/// Height that is worth moving something to the next page, mm.
+pub(crate) const READABLE_HEIGHT_MM: f64 = 58.0;
 /// Height where there is room to choose, mm.
 pub(crate) const WANTED_HEIGHT_MM: f64 = 80.0;
 /// Most height of the section, mm: above it the page looks empty.
@@ -50,21 +52,29 @@ fn bar_words(bar_m: f64, units: Units) -> String {
     format!("{} {}", station::units::fixed(length, decimals), units.symbol())
 }
 
-/// The drawing as a section of the sheet.
-pub(crate) fn section(plan: &Plan, hung: &Hung, units: Units, size: Size) -> Section {
-    let size = Size { height_mm: size.height_mm - Section::TITLE_MM - space::SECTION, ..size };
-    let mut view = side_view(plan, hung, units, size);
+/// What found no room in the drawing.
+fn unplaced(view: &SideView, size: Size) -> Block {
     let mut note = Block::default();
-    if !view.unplaced.is_empty() {
-        // A lower drawing leaves room to say it below.
-        let lines_mm = 2.0 * TextStyle::Note.leading_mm();
-        view = side_view(plan, hung, units, Size { height_mm: size.height_mm - lines_mm, ..size });
-    }
     if !view.unplaced.is_empty() {
         let words = format!("No room in the drawing for: {}.", view.unplaced.join("; "));
         note.height_mm = note.paragraph(0.0, 0.0, size.width_mm, Span::new(TextStyle::Note, words));
     }
-    let mut block = Block { height_mm: view.scene.height_mm, items: view.scene.items };
+    note
+}
+
+/// The drawing as a section of the sheet.
+pub(crate) fn section(plan: &Plan, hung: &Hung, units: Units, size: Size) -> Section {
+    let size = Size { height_mm: size.height_mm - Section::TITLE_MM, ..size };
+    let mut view = side_view(plan, hung, units, size);
+    let mut note = unplaced(&view, size);
+    if view.scene.height_mm + note.height_mm > size.height_mm {
+        // A lower drawing leaves room to say it below.
+        let height_mm = size.height_mm - note.height_mm.max(2.0 * TextStyle::Note.leading_mm());
+        view = side_view(plan, hung, units, Size { height_mm, ..size });
+        note = unplaced(&view, size);
+    }
+    let mut block = Block::empty(view.scene.height_mm);
+    block.items = view.scene.items;
     let y_mm = block.height_mm;
     block.height_mm += note.height_mm;
     block.add(note, 0.0, y_mm);

@@ -56,10 +56,12 @@ pub(crate) fn draw(block: &mut Block, frame: Frame, curves: &[Curve], limit: f64
         let spot = |(place, swr): (f64, f64)| Spot::new(plot.left_mm + place * plot.width_mm, height(swr));
         if curve.is_channels || curve.points.len() < 2 {
             // Feeds stand beside each other, not on each other; and the outermost channels off the edge.
-            let shift_mm = (index as f64 - (curves.len() as f64 - 1.0) / 2.0) * 2.4 * DOT_MM;
+            let shift_mm = |index: f64| (index - (curves.len() as f64 - 1.0) / 2.0) * 2.4 * DOT_MM;
+            let inset_mm = 2.0 * DOT_MM - shift_mm(0.0);
+            let room_mm = (plot.width_mm - 2.0 * inset_mm).max(0.0);
             for &(place, swr) in &curve.points {
-                let at = spot((0.5 + 0.84 * (place - 0.5), swr));
-                block.items.push(dot(Spot::new(at.x_mm + shift_mm, at.y_mm), index));
+                let x_mm = plot.left_mm + inset_mm + place * room_mm + shift_mm(index as f64);
+                block.items.push(dot(Spot::new(x_mm, height(swr)), index));
             }
         } else {
             let points = curve.points.iter().map(|&point| spot(point)).collect();

@@ -2,6 +2,7 @@
 
 #![allow(dead_code, clippy::unwrap_used)] // Each test binary uses its part; a panic is the failure.
 
+use sheet::scene::{Item, Spot};
 use sheet::{Date, Paper, SheetRequest};
 use station::evaluate::Evaluator;
 use station::plan::{
@@ -20,6 +21,25 @@ pub fn requests() -> Vec<SheetRequest> {
         }
     }
     out
+}
+
+/// The stretches of a line, and of an area's outline, with the width that they are drawn in.
+pub fn strokes(item: &Item) -> Vec<[Spot; 4]> {
+    let (points, stroke) = match item {
+        Item::Line { points, stroke, .. } => (points.clone(), *stroke),
+        Item::Area { points, outline: Some((stroke, _)), .. } => {
+            (points.iter().chain(points.first()).copied().collect(), *stroke)
+        }
+        _ => return Vec::new(),
+    };
+    let ribbon = |pair: &[Spot]| {
+        let (dx, dy) = (pair[1].x_mm - pair[0].x_mm, pair[1].y_mm - pair[0].y_mm);
+        let half = stroke.width_mm() / 2.0 / dx.hypot(dy).max(f64::MIN_POSITIVE);
+        let (x, y) = (-dy * half, dx * half);
+        let at = |spot: Spot, side: f64| Spot::new(spot.x_mm + side * x, spot.y_mm + side * y);
+        [at(pair[0], 1.0), at(pair[1], 1.0), at(pair[1], -1.0), at(pair[0], -1.0)]
+    };
+    points.windows(2).map(ribbon).collect()
 }
 
 pub struct Station {
@@ -182,7 +202,6 @@ fn end_fed() -> Plan {
 pub fn traps_and_arms() -> Plan {
     let mut plan = relief_post();
     plan.name = "Reservoir gauge".to_owned();
-    plan.bands.truncate(5);
     plan.site.supports = vec![
         support("dam tower", SupportKind::Building, 0.0, 12.0),
         support("weir mast", SupportKind::Mast, 46.0, 12.0),
