@@ -12,7 +12,6 @@ mod loads;
 pub mod marks;
 pub mod sheet;
 pub mod station;
-pub mod swr_scale;
 mod together;
 pub mod yard;
 
