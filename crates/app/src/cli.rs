@@ -7,10 +7,10 @@ use clap::{Args, Parser, Subcommand, ValueEnum};
 use sheet::Date;
 use station::units::Units;
 
-use crate::command::Paper;
 use crate::headless::{self, HeadlessError};
 use crate::paper::PaperError;
 use crate::start;
+use sheet::Paper;
 
 /// Plan one HF wire antenna for many bands.
 #[derive(Debug, Parser)]

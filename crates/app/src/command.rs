@@ -170,7 +170,7 @@ pub enum Show {
     Theme(Theme),
     /// The RF cycle of the standing wave.
     Motion(Motion),
-    Paper(Paper),
+    Paper(sheet::Paper),
 }
 
 /// The views, by the names on their tabs.
@@ -192,15 +192,6 @@ pub enum Theme {
     Desktop,
     Light,
     Dark,
-}
-
-/// The paper of the sheet.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, serde::Serialize, serde::Deserialize)]
-#[allow(missing_docs)] // The words say it.
-pub enum Paper {
-    #[default]
-    A4,
-    Letter,
 }
 
 /// How the standing wave moves.

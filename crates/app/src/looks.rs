@@ -3,8 +3,9 @@
 use station::plan::Plan;
 use station::units::Units;
 
-use crate::command::{Motion, Paper, Show, Theme, View};
+use crate::command::{Motion, Show, Theme, View};
 use crate::desk::Settings;
+use sheet::Paper;
 
 /// Seconds on screen for one RF cycle: slow enough to follow a loop with the eye.
 const PERIOD_S: f64 = 4.0;

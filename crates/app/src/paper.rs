@@ -3,13 +3,11 @@
 use std::ffi::OsString;
 use std::path::{Path, PathBuf};
 
-use sheet::{Date, SheetRequest};
+use sheet::{Date, Paper, SheetRequest};
 use station::file::{self, FileError};
 use station::plan::Plan;
 use station::report::Report;
 use station::units::Units;
-
-use crate::command::Paper;
 
 /// Resolution of a picture: small print stays legible, and a page is below a megabyte.
 const DOTS_PER_INCH: f64 = 150.0;
@@ -69,10 +67,6 @@ impl Kind {
 /// Paper and units, with the date of today.
 #[must_use]
 pub fn request(paper: Paper, units: Units) -> SheetRequest {
-    let paper = match paper {
-        Paper::A4 => sheet::Paper::A4,
-        Paper::Letter => sheet::Paper::Letter,
-    };
     SheetRequest { paper, units, date: today() }
 }
 

@@ -8,7 +8,7 @@ use station::units::Units;
 use crate::error::SheetError;
 
 /// Paper, upright.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, serde::Serialize, serde::Deserialize)]
 #[allow(missing_docs)] // The words say it.
 pub enum Paper {
     #[default]

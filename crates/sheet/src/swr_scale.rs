@@ -6,6 +6,9 @@
 /// Ratio at half height.
 const HALF: f64 = 3.0;
 
+/// Ratios worth a grid line.
+pub const GRID: [f64; 9] = [1.0, 1.5, 2.0, 3.0, 5.0, 10.0, 30.0, 100.0, 1000.0];
+
 /// Height of a ratio, 0 (match) to 1 (total reflection). Ratios below 1 or without a value count as the nearest end.
 #[must_use]
 pub fn height(swr: f64) -> f64 {
@@ -14,6 +17,16 @@ pub fn height(swr: f64) -> f64 {
     }
     let log = swr.max(1.0).ln();
     log / (log + HALF.ln())
+}
+
+/// The ratio at a height; infinite at 1 and above.
+#[must_use]
+pub fn ratio(height: f64) -> f64 {
+    if height >= 1.0 {
+        return f64::INFINITY;
+    }
+    let height = height.max(0.0);
+    (HALF.ln() * height / (1.0 - height)).exp()
 }
 
 #[cfg(test)]
@@ -27,5 +40,13 @@ mod tests {
         }
         assert!(height(1.0).abs() < 1e-12 && (height(HALF) - 0.5).abs() < 1e-12);
         assert!((height(f64::NAN) - 1.0).abs() < 1e-12);
+    }
+
+    #[test]
+    fn a_height_reads_back_as_its_ratio() {
+        for swr in [1.0, 1.3, 2.0, 7.5, 40.0, 800.0] {
+            assert!((ratio(height(swr)) / swr - 1.0).abs() < 1e-9, "{swr}");
+        }
+        assert!(ratio(1.0).is_infinite());
     }
 }

@@ -7,7 +7,8 @@ use etcetera::BaseStrategy as _;
 use serde::{Deserialize, Serialize};
 use station::units::Units;
 
-use crate::command::{Paper, Theme};
+use crate::command::Theme;
+use sheet::Paper;
 
 /// As many as a menu shows without scrolling.
 const RECENT: usize = 8;

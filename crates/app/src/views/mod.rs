@@ -13,7 +13,6 @@ pub mod marks;
 pub mod sheet;
 mod soil;
 pub mod station;
-pub mod swr_scale;
 mod together;
 pub mod yard;
 

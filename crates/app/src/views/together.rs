@@ -3,8 +3,9 @@
 use eframe::egui::Ui;
 
 use super::{band, feed_path, lanes, sheet, station, yard};
-use crate::command::{Command, Paper};
+use crate::command::Command;
 use crate::snapshot::Snapshot;
+use ::sheet::Paper;
 
 /// What the views remember between two frames: nothing of the plan.
 #[derive(Default)]

@@ -14,6 +14,7 @@ pub use cautions::{Caution, cautions};
 pub use cut_list::{Allowances, CutList, CutRow};
 pub use feeds::{FeedSchedule, Step, Stress};
 pub use identity::{Identity, checksum};
+pub use loads::{LoadKind, load_values};
 pub use pieces::{Arm, Cut, arm_mark, arms, load_mark};
 
 use station::plan::Plan;

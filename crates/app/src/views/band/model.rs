@@ -4,7 +4,8 @@ use egui_plot::PlotPoint;
 use station::report::{BandReport, FeedReport, FrequencyReport, Model, ProfilePoint, Report, Sense, Setting};
 use station::units::{self, Units};
 
-use crate::views::{marks, swr_scale};
+use crate::views::marks;
+use sheet::swr_scale;
 
 /// Free space at both sides of a frequency axis, as a share of the band.
 const MARGIN: f64 = 0.04;

@@ -13,7 +13,7 @@ use super::layout::Plot;
 use super::{BandState, Shown, model, sample};
 use crate::explain::{self, Explain as _};
 use crate::theme::color;
-use crate::views::swr_scale;
+use sheet::swr_scale;
 
 /// Thickness of the axes at the left, the same for all plots, so that they stand below each other.
 const LEFT_AXIS: f32 = 42.0;

@@ -3,7 +3,7 @@
 use eframe::egui::{Pos2, Rangef, Rect, pos2};
 use station::report::{BandReport, FeedReport, StandingWave};
 
-use crate::views::swr_scale;
+use sheet::swr_scale;
 
 /// Space between columns.
 const GAP: f32 = 10.0;

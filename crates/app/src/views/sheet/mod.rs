@@ -9,10 +9,11 @@ use sheet::{SheetError, SheetRequest};
 use station::plan::Plan;
 use station::units::Units;
 
-use crate::command::{Command, Desk, Paper, Show};
+use crate::command::{Command, Desk, Show};
 use crate::explain::Explain as _;
 use crate::snapshot::Snapshot;
 use crate::{paper, theme};
+use sheet::Paper;
 
 /// Between pages, and between a page and the edge, points.
 const GAP: f32 = 16.0;

@@ -11,7 +11,7 @@ use crate::command::{Command, Edit};
 use crate::explain::Explain as _;
 use crate::snapshot::Snapshot;
 use crate::views::fields::{Quantity, button, quantity};
-use crate::views::loads::{Kind, values};
+use sheet::model::{LoadKind, load_values};
 
 const NAME_WIDTH: f32 = 150.0;
 /// A kind of load that can be picked.
@@ -179,8 +179,8 @@ fn kind(ui: &mut Ui, number: usize, circuit: &mut Circuit) -> bool {
 /// The kind's name in the list of kinds.
 fn words(circuit: &Circuit) -> &'static str {
     match circuit {
-        Circuit::Parallel(_) if Kind::of(circuit) == Kind::Trap => "trap from parts",
-        _ => Kind::of(circuit).words(),
+        Circuit::Parallel(_) if LoadKind::of(circuit) == LoadKind::Trap => "trap from parts",
+        _ => LoadKind::of(circuit).words(),
     }
 }
 
@@ -206,7 +206,7 @@ fn circuit(ui: &mut Ui, circuit: &mut Circuit, out: &mut Vec<Command>) {
             part(ui, ("capacitance", "The trap's capacitor.", capacitance_f), &PICOFARADS, out);
             part(ui, ("Q", "The trap's Q at resonance; 50 to 300 is usual.", q), &QUALITY, out);
         }
-        Circuit::Parallel(_) if Kind::of(circuit) == Kind::Trap => {
+        Circuit::Parallel(_) if LoadKind::of(circuit) == LoadKind::Trap => {
             if let Circuit::Parallel(parts) = circuit {
                 for part in parts {
                     self::circuit(ui, part, out);
@@ -214,7 +214,7 @@ fn circuit(ui: &mut Ui, circuit: &mut Circuit, out: &mut Vec<Command>) {
             }
         }
         Circuit::Series(_) | Circuit::Parallel(_) => {
-            ui.weak(values(circuit));
+            ui.weak(load_values(circuit));
         }
     }
 }

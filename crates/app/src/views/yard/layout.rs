@@ -6,7 +6,7 @@ use station::plan::{Load, Point, SupportKind};
 use station::report::BandReport;
 use station::units::Units;
 
-use crate::views::loads::Kind;
+use sheet::model::LoadKind;
 
 use super::grip::Grip;
 use super::model::Model;
@@ -69,7 +69,7 @@ pub struct SupportShape {
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct LoadShape {
     /// What it is.
-    pub kind: Kind,
+    pub kind: LoadKind,
     /// Where on the wire.
     pub at: Pos2,
     /// The wire's direction there.
@@ -301,7 +301,7 @@ fn load_shapes(model: &Model<'_>, view: &SideView) -> Vec<LoadShape> {
         let pair = wire.vertices.windows(2).find(|pair| arc_m <= pair[1].arc_m)?;
         let along = (view.at(pair[1].at) - view.at(pair[0].at)).normalized();
         let along = if along == Vec2::ZERO { vec2(1.0, 0.0) } else { along };
-        Some(LoadShape { kind: Kind::of(&load.circuit), at: view.at(wire.point_at(arc_m)), along })
+        Some(LoadShape { kind: LoadKind::of(&load.circuit), at: view.at(wire.point_at(arc_m)), along })
     };
     model.plan.loads.iter().filter_map(shape).collect()
 }

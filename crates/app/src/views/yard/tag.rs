@@ -8,7 +8,7 @@ use eframe::egui::{
 use sheet::tokens::{Ink, Pen};
 
 use crate::command::Command;
-use crate::views::loads::values;
+use sheet::model::load_values;
 
 use super::YardState;
 use super::ask::{Grid, feed_place};
@@ -89,7 +89,7 @@ fn note(bench: &Bench<'_>, grip: Grip) -> Option<String> {
             let percent = || format!("{} % of the wire", station::units::fixed(100.0 * fraction, 1));
             Some(feed_place(fraction).map_or_else(percent, str::to_owned))
         }
-        Grip::Load { load } => bench.model.load(load).map(|load| values(&load.circuit)),
+        Grip::Load { load } => bench.model.load(load).map(|load| load_values(&load.circuit)),
         _ => None,
     }
 }

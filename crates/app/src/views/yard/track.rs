@@ -12,16 +12,10 @@ const ROUNDING_PX: f32 = 7.0;
 /// stands off the other.
 #[derive(Clone, Copy, Debug)]
 pub struct NearBend {
-    /// Where the wire bends.
-    pub corner: Pos2,
-    /// Along the bisector of the inner angle.
-    pub inward: Vec2,
     /// 1 where the inner side is the side of plus, −1 otherwise.
     pub side: f32,
     /// How far from the wire the bisector is at this place, px.
     pub room_px: f32,
-    /// Sine of half the inner angle.
-    pub sine: f32,
 }
 
 /// The wire's line on the screen, measured in pixels.
@@ -97,12 +91,6 @@ impl Track {
         let along = if away_px < 0.0 { before } else { after };
         let off = vec2(along.y, -along.x) * self.side;
         let inward = (after - before).normalized();
-        Some(NearBend {
-            corner,
-            inward,
-            side: off.dot(inward).signum(),
-            room_px: away_px.abs() * sine / cosine,
-            sine,
-        })
+        Some(NearBend { side: off.dot(inward).signum(), room_px: away_px.abs() * sine / cosine })
     }
 }

@@ -25,6 +25,11 @@ const GAP_M: f64 = 0.03;
 /// The thinnest ribbon that shows its grain, half of it, px.
 const GRAIN_HALF_PX: f32 = 2.5;
 
+/// How far from a bend its legs may meet again, in samples of the wire.
+const MITRE_SAMPLES: usize = 40;
+/// Pieces that run back and lie no farther apart belong to one bend, in samples of the wire.
+const MITRE_GAP_SAMPLES: usize = 6;
+
 /// The longest whisker of a stub, in longest whiskers of all else.
 const LONGEST_WHISKER: f32 = 1.25;
 
@@ -94,12 +99,9 @@ impl Sample {
         self.bend.is_some_and(|b| offset_px * b.side > b.room_px)
     }
 
-    /// A place off the wire, positive on the side of plus; in the inner angle of a bend, on the bisector.
+    /// A place off the wire, positive on the side of plus.
     fn off_by(&self, offset_px: f32) -> Pos2 {
-        match self.bend {
-            Some(b) if self.crosses(offset_px) => b.corner + b.inward * (offset_px.abs() / b.sine),
-            _ => self.at + self.off * offset_px,
-        }
+        self.at + self.off * offset_px
     }
 }
 
@@ -283,15 +285,36 @@ impl<'a> Wave<'a> {
     }
 
     fn ribbon_of(&self, half_px: impl Fn(&Sample) -> f32) -> Ribbon {
-        let mut ribbon = Ribbon::default();
-        ribbon.upper.reserve(self.samples.len());
-        ribbon.lower.reserve(self.samples.len());
-        for sample in &self.samples {
-            let half_px = half_px(sample);
-            ribbon.upper.push(sample.off_by(half_px));
-            ribbon.lower.push(sample.off_by(-half_px));
+        let halves_px: Vec<f32> = self.samples.iter().map(half_px).collect();
+        Ribbon { upper: self.edge(&halves_px, 1.0), lower: self.edge(&halves_px, -1.0) }
+    }
+
+    /// One edge of a ribbon. On the inner side of a bend what stands off one leg crosses what stands off the other:
+    /// there both end.
+    fn edge(&self, halves_px: &[f32], side: f32) -> Vec<Pos2> {
+        let mut edge: Vec<Pos2> =
+            self.samples.iter().zip(halves_px).map(|(s, half_px)| s.off_by(side * half_px)).collect();
+        let mut n = 1;
+        while let Some(turned) = (n..edge.len()).find(|&n| self.runs_back(&edge, n)) {
+            let last = turned + MITRE_GAP_SAMPLES;
+            let back =
+                (turned..edge.len().min(last)).rev().find(|&n| self.runs_back(&edge, n)).unwrap_or(turned);
+            n = back + 1;
+            if let Some((from, to, meet)) = meeting(&edge, turned, back) {
+                edge[from + 1..=to].fill(meet);
+                n = n.max(to + 1);
+            } else {
+                // A leg shorter than what stands off it: the edge waits until it goes on.
+                let wait = edge[turned - 1];
+                edge[turned..=back].fill(wait);
+            }
         }
-        ribbon
+        edge
+    }
+
+    /// Whether the piece of an edge that ends at a sample runs against the wire.
+    fn runs_back(&self, edge: &[Pos2], n: usize) -> bool {
+        (edge[n] - edge[n - 1]).dot(self.samples[n].at - self.samples[n - 1].at) < 0.0
     }
 
     fn ribbon_scale(&self) -> f32 {
@@ -389,4 +412,28 @@ impl<'a> Wave<'a> {
     fn forward(&self, run_px: f32) -> Vec2 {
         (self.sample(run_px + SAMPLE_PX).at - self.sample(run_px - SAMPLE_PX).at).normalized()
     }
+}
+
+/// Where the edge before `turned` meets the one after `back`, and between which of its points: as far from the bend as
+/// there is such a place.
+fn meeting(edge: &[Pos2], turned: usize, back: usize) -> Option<(usize, usize, Pos2)> {
+    let before = turned.saturating_sub(MITRE_SAMPLES)..turned;
+    before.into_iter().find_map(|from| {
+        let after = (turned..edge.len().min(back + MITRE_SAMPLES)).rev();
+        // Neighbours share a point.
+        after.filter(|&to| to > from + 2).find_map(|to| {
+            let meet = crossing([edge[from], edge[from + 1]], [edge[to - 1], edge[to]])?;
+            Some((from, to - 1, meet))
+        })
+    })
+}
+
+/// Where two straight pieces cross.
+pub(super) fn crossing(a: [Pos2; 2], b: [Pos2; 2]) -> Option<Pos2> {
+    let (along_a, along_b, between) = (a[1] - a[0], b[1] - b[0], b[0] - a[0]);
+    let cross = |u: Vec2, v: Vec2| u.x * v.y - u.y * v.x;
+    let slant = cross(along_a, along_b);
+    let (share_a, share_b) = (cross(between, along_b) / slant, cross(between, along_a) / slant);
+    let is_within = |share: f32| (0.0..=1.0).contains(&share);
+    (is_within(share_a) && is_within(share_b)).then(|| a[0] + along_a * share_a)
 }

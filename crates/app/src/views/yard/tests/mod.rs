@@ -83,6 +83,21 @@ pub fn end_fed() -> Plan {
     plan
 }
 
+/// 80 m fed at an end that hangs down, over masts of different height, on 80 m.
+pub fn end_fed_with_bends() -> Plan {
+    let mut plan = end_fed();
+    plan.site.supports = vec![
+        support("low mast", 0.0, 8.5),
+        support("high mast", 30.0, 14.0),
+        support("east mast", 62.0, 9.0),
+    ];
+    plan.wires[0].path = vec![on("low mast", 12.0), on("high mast", 13.5), on("east mast", 12.0)];
+    plan.wires[0].start_m = -9.0;
+    let range = BandRange::Span { low_hz: 3.5e6, high_hz: 3.8e6 };
+    plan.bands.insert(0, Band { name: "80 m".to_owned(), range });
+    plan
+}
+
 fn free(x_m: f64, z_m: f64) -> PathPoint {
     PathPoint::Free(Point::new(x_m, 0.0, z_m))
 }
