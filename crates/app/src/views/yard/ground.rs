@@ -32,6 +32,8 @@ pub fn show(ui: &mut Ui, plot: Rect, snapshot: &Snapshot<'_>, out: &mut Vec<Comm
                 out.push(Command::Edit(Edit::Earth(next)));
             }
         }
-        soil::picker(ui, "earth in the yard", earth, out);
+        let picker = soil::picker(ui, "earth in the yard", earth, out);
+        let label = ui.label("earth").id;
+        picker.labelled_by(label);
     });
 }
