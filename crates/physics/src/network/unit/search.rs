@@ -55,14 +55,14 @@ impl Found {
 struct Effort {
     /// Samples along a variable part.
     samples: u32,
-    /// Steps of the search for an edge, and for an extremum.
+    /// Steps of the golden section.
     rounds: u32,
     /// Steps of a bank that are all tried; a larger one is thinned to this many first.
     most_steps: u32,
 }
 
-const OF_TWO: Effort = Effort { samples: 20, rounds: 18, most_steps: 512 };
-const OF_THREE: Effort = Effort { samples: 16, rounds: 14, most_steps: 48 };
+const OF_TWO: Effort = Effort { samples: 20, rounds: 18, most_steps: 64 };
+const OF_THREE: Effort = Effort { samples: 14, rounds: 14, most_steps: 48 };
 
 pub(super) fn search(elements: &[Element], problem: &UnitProblem) -> Found {
     let bar = Bar::of(problem.largest_swr);
@@ -100,7 +100,14 @@ fn over(
     match element.range {
         Range::Steps { first, step, count } => {
             let at = |index: u32| follow(element.size_of(first + step * f64::from(index)));
-            over_steps(count, effort.most_steps, bar, at)
+            // which step a promising size is next to; a bank has at most some thousand
+            let near: Vec<u32> = promising
+                .iter()
+                .map(|&size| ((element.value_of(size) - first) / step).round())
+                .filter(|index| index.is_finite())
+                .map(|index| index.clamp(0.0, f64::from(count - 1)) as u32)
+                .collect();
+            over_steps(count, effort.most_steps, &near, bar, at)
         }
         Range::Variable { .. } => {
             let mut sizes = sampled(element, effort.samples);
@@ -112,25 +119,35 @@ fn over(
     }
 }
 
-/// All steps of a bank, or a thinned bank and then the neighbourhood of its best.
-fn over_steps(count: u32, most: u32, bar: &Bar, at: impl Fn(u32) -> Found) -> Found {
+/// A near miss: a mismatch this much over the bar's share above 1 may hide a step that fits.
+const NEAR_MISS: f64 = 12.0;
+
+/// How many steps on either side of a promising one are tried.
+const AROUND: u32 = 2;
+
+/// All steps of a bank; of a large one a thinned bank and what is promising, and then the neighbourhood of the best.
+fn over_steps(count: u32, most: u32, near: &[u32], bar: &Bar, at: impl Fn(u32) -> Found) -> Found {
     let stride = count.div_ceil(most);
     let mut best = (0, at(0));
-    let mut consider = |index: u32| {
+    let consider = |best: &mut (u32, Found), index: u32| {
         let found = at(index);
         if found.beats(&best.1, bar) {
-            best = (index, found);
+            *best = (index, found);
         }
-        best.0
     };
-    let mut near = 0;
+    let around = |index: u32, reach: u32| index.saturating_sub(reach)..(index + reach + 1).min(count);
     for index in (stride..count).step_by(stride as usize).chain([count - 1]) {
-        near = consider(index);
+        consider(&mut best, index);
     }
-    if stride > 1 {
-        for index in near.saturating_sub(stride)..(near + stride + 1).min(count) {
-            consider(index);
-        }
+    if stride == 1 {
+        return best.1;
+    }
+    for &index in near {
+        around(index, AROUND).for_each(|index| consider(&mut best, index));
+    }
+    around(best.0, stride).for_each(|index| consider(&mut best, index));
+    if !best.1.fits(bar) && best.1.mismatch - 1.0 < NEAR_MISS * (bar.mismatch - 1.0) {
+        (0..count).for_each(|index| consider(&mut best, index));
     }
     best.1
 }
@@ -156,30 +173,38 @@ struct Scan<'a, F> {
 
 impl<F: Fn(f64) -> Found> Scan<'_, F> {
     /// The best over rising sizes and what lies between them.
+    ///
+    /// Around the best of each run of sizes that fit a golden section goes on: toward the extremum inside the run,
+    /// or toward its edge, since what does not fit is worse than all that does.
     fn best(&self, sizes: &[f64]) -> Found {
         let mut tried: Vec<(f64, Found)> = sizes.iter().map(|&size| (size, (self.follow)(size))).collect();
         if !tried.iter().any(|(_, found)| found.fits(self.bar)) {
             self.deepen(&mut tried);
         }
         let mut best = tried[0].1;
-        for (_, found) in &tried {
+        let mut consider = |found: Found| {
             if found.beats(&best, self.bar) {
-                best = *found;
+                best = found;
             }
-        }
+        };
         let mut index = 0;
         while index < tried.len() {
+            let mut top = index;
+            consider(tried[index].1);
             let start = index;
             while index < tried.len() && tried[index].1.fits(self.bar) {
+                if tried[index].1.beats(&tried[top].1, self.bar) {
+                    top = index;
+                }
                 index += 1;
             }
             if index > start {
-                let found = self.within_run(&tried, start, index - 1);
-                if found.beats(&best, self.bar) {
-                    best = found;
-                }
+                let [before, after] = [top.saturating_sub(1), (top + 1).min(tried.len() - 1)];
+                consider(tried[top].1);
+                consider(self.golden(tried[before].0, tried[after].0).1);
+            } else {
+                index += 1;
             }
-            index += 1;
         }
         best
     }
@@ -197,43 +222,6 @@ impl<F: Fn(f64) -> Found> Scan<'_, F> {
         }
         tried.extend(deeper);
         tried.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
-    }
-
-    /// The least loss in a run of sizes that all fit, and between it and its neighbours that do not.
-    fn within_run(&self, tried: &[(f64, Found)], start: usize, end: usize) -> Found {
-        let edge = |inside: usize, outside: Option<&(f64, Found)>| {
-            outside.map_or(tried[inside], |outside| self.edge(tried[inside], outside.0))
-        };
-        let low = edge(start, start.checked_sub(1).map(|n| &tried[n]));
-        let high = edge(end, tried.get(end + 1));
-        let mut points = vec![low];
-        points.extend_from_slice(&tried[start..=end]);
-        points.push(high);
-        points.extend((1..8).map(|n| {
-            let size = low.0 + (high.0 - low.0) * f64::from(n) / 8.0;
-            (size, (self.follow)(size))
-        }));
-        points.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
-        let best = (1..points.len())
-            .fold(0, |best, n| if points[n].1.beats(&points[best].1, self.bar) { n } else { best });
-        let found =
-            self.golden(points[best.saturating_sub(1)].0, points[(best + 1).min(points.len() - 1)].0).1;
-        if found.beats(&points[best].1, self.bar) { found } else { points[best].1 }
-    }
-
-    /// The last size that fits between one that does and one that does not.
-    fn edge(&self, inside: (f64, Found), outside: f64) -> (f64, Found) {
-        let (mut inside, mut outside) = (inside, outside);
-        for _ in 0..self.rounds {
-            let middle = 0.5 * (inside.0 + outside);
-            let found = (self.follow)(middle);
-            if found.fits(self.bar) {
-                inside = (middle, found);
-            } else {
-                outside = middle;
-            }
-        }
-        inside
     }
 
     /// The best between two sizes, by golden section.
