@@ -16,8 +16,10 @@ pub(super) struct Bar {
 
 impl Bar {
     pub fn of(swr: f64) -> Self {
-        let of = |excess: f64| 1.0 + 0.5 * excess * excess / (1.0 + excess);
-        Self { mismatch: of((swr - 1.0) * (1.0 - 1e-9)), fits: of((swr - 1.0) * (1.0 - 1e-12)) }
+        let excess = |over_one: f64| 0.5 * over_one * over_one / (1.0 + over_one);
+        // Rounding of the mismatch is absolute, so a bar near 1 needs its own hair.
+        let aim = excess((swr - 1.0) * (1.0 - 1e-9));
+        Self { mismatch: 1.0 + aim - (0.5 * aim).min(1e-13), fits: 1.0 + excess(swr - 1.0) }
     }
 }
 
