@@ -69,7 +69,7 @@ fn a_broken_file_costs_nothing() {
     for (name, text, words) in [
         ("broken.ron", "(format: (1, 0), plan: {".to_owned(), "line 1"),
         ("truncated.ron", good[..good.len() / 2].to_owned(), "line"),
-        ("newer.ron", good.replace("(1, 0)", "(9, 0)"), "newer"),
+        ("newer.ron", good.replace("(1, 1)", "(9, 0)"), "newer"),
         ("absurd.ron", good.replace("cut_length_m: ", "cut_length_m: -"), "wires[0].cut_length_m"),
     ] {
         let path = window.file(name);

@@ -15,6 +15,7 @@ pub mod conductor;
 pub mod constants;
 pub mod earth;
 pub mod field;
+pub mod insulator;
 pub mod line;
 pub mod network;
 pub mod sinusoid;

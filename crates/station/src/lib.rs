@@ -9,5 +9,6 @@ pub mod plan;
 pub mod report;
 #[cfg(test)]
 mod sample;
+pub mod touchstone;
 pub mod units;
 pub mod validate;

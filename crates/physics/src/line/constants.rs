@@ -27,8 +27,11 @@ impl LineConstants {
         self.gamma_per_m.re / NEPER_PER_DB
     }
 
-    /// From series impedance (Ω/m) and shunt admittance (S/m) per metre.
-    pub(super) fn from_per_metre(series_ohm_per_m: Complex64, shunt_s_per_m: Complex64) -> Self {
+    /// From series impedance R + jωL (Ω/m) and shunt admittance G + jωC (S/m) per metre.
+    ///
+    /// Valid where both take no power from nowhere: R, G ≥ 0 and L, C > 0.
+    #[must_use]
+    pub fn from_per_metre(series_ohm_per_m: Complex64, shunt_s_per_m: Complex64) -> Self {
         // Z₀ = √(Z′/Y′), γ = √(Z′Y′) = Z₀·Y′. Both Z′ and Y′ lie between j and 1 + j, so Z′/Y′ lies in the
         // right half-plane, where √(x + jy) = p + j·y/2p with p = √((|·| + x)/2) has no cancellation.
         let square = series_ohm_per_m / shunt_s_per_m;

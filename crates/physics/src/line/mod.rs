@@ -10,6 +10,7 @@
 //!
 //! The line equations are those of any text on transmission lines (from memory).
 
+mod condition;
 mod constants;
 mod fit;
 mod geometry;
@@ -17,6 +18,7 @@ mod piece;
 mod reflection;
 mod state;
 
+pub use condition::{AverageRating, SpacerEffect, Spacers, Wetness};
 pub use constants::{LineConstants, LineError, NominalLine};
 pub use fit::{AttenuationPoint, FitError, LossLaw};
 pub use geometry::{Coaxial, TwoWire};

@@ -4,7 +4,8 @@ use std::f64::consts::{PI, TAU};
 
 use num_complex::Complex64;
 
-use super::{LineConstants, State};
+use super::constants::positive;
+use super::{LineConstants, LineError, State};
 
 /// A piece of line at one frequency, with everything that does not depend on its load worked out.
 ///
@@ -48,6 +49,16 @@ impl Piece {
     pub fn new(constants: LineConstants, length_m: f64) -> Self {
         let (cosh, sinh) = cosh_sinh(constants.gamma_per_m * length_m);
         Self { constants, y0_s: constants.z0_ohm.inv(), length_m, cosh, sinh }
+    }
+
+    /// As [`Self::new`], for a length that somebody typed.
+    ///
+    /// # Errors
+    ///
+    /// A length that is not greater than zero.
+    pub fn checked(constants: LineConstants, length_m: f64) -> Result<Self, LineError> {
+        positive("the line's length in metres", length_m)?;
+        Ok(Self::new(constants, length_m))
     }
 
     /// Z₀ and γ.

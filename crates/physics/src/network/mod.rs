@@ -1,12 +1,30 @@
-//! Networks between the line and the transmitter: ideal transformer and L-network.
+//! Networks between the wire and the transmitter: transformers, stubs, arresters and matching units.
 //!
-//! Like the line, they carry a [`State`] from the load's side to the source's side; phasors are peak.
+//! Like the line, they carry a [`State`] from the load's side to the source's side; phasors are peak. At one
+//! frequency each is a [`TwoPort`].
 
+mod arrester;
+mod error;
 mod l_network;
 mod l_solution;
+mod stub;
+mod transformer;
+mod tuner;
+mod two_port;
+mod unit;
 
+pub use arrester::SurgeArrester;
+pub use error::PartError;
 pub use l_network::{LNetwork, Parts, Passage, Sense, Setting, Stress};
 pub use l_solution::{LMatch, LProblem, NetworkError, l_network};
+pub use stub::{Stub, StubEnd};
+pub use transformer::{CoreLoss, Transformer, TransformerStress};
+pub use tuner::{BuiltInTuner, TunerReach};
+pub use two_port::{Carried, TwoPort};
+pub use unit::{
+    LForm, MatchingUnit, Part, PartRating, PartRole, PartSetting, Power, Range, UnitError, UnitMatch,
+    UnitProblem,
+};
 
 use crate::line::State;
 

@@ -10,6 +10,7 @@ use thiserror::Error;
 pub enum Kind {
     Line,
     Conductor,
+    Insulator,
     Soil,
     Band,
 }
@@ -19,6 +20,7 @@ impl fmt::Display for Kind {
         f.write_str(match self {
             Self::Line => "feed line",
             Self::Conductor => "conductor",
+            Self::Insulator => "insulator",
             Self::Soil => "soil",
             Self::Band => "band",
         })

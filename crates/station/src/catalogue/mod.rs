@@ -1,9 +1,11 @@
-//! The catalogues compiled into the program: feed lines, conductors, soils and bands.
+//! The catalogues compiled into the program: feed lines, conductors, insulators, soils and bands.
 //!
 //! The files are `assets/*.ron`; every entry says where its figures come from. An entry is found by its id, which
 //! plan files refer to and which therefore never changes.
 
 mod error;
+mod insulators;
+mod lines;
 #[cfg(test)]
 mod tests;
 
@@ -13,20 +15,10 @@ use serde::Deserialize;
 use serde::de::DeserializeOwned;
 
 pub use error::{CatalogueError, Kind};
+pub use insulators::{InsulatorEntry, InsulatorSources, insulator_entry, insulators};
+pub use lines::{LineEntry, LineSources, line_at, line_entry, lines, rated_average_w, wet_line_at};
 
 use crate::plan::{Band, ConductorChoice, ConductorData, Earth, LineChoice, LineData, Soil};
-
-/// A feed line of the catalogue.
-#[derive(Clone, Debug, PartialEq, Deserialize)]
-#[serde(deny_unknown_fields)]
-pub struct LineEntry {
-    /// What plans call it.
-    pub id: String,
-    /// One line: what it is good for.
-    pub hint: String,
-    /// Its figures and their source.
-    pub data: LineData,
-}
 
 /// A conductor of the catalogue.
 #[derive(Clone, Debug, PartialEq, Deserialize)]
@@ -102,13 +94,6 @@ pub enum Region {
     Three,
 }
 
-/// All feed lines, in the order in which lists show them.
-#[must_use]
-pub fn lines() -> &'static [LineEntry] {
-    static LINES: OnceLock<Vec<LineEntry>> = OnceLock::new();
-    LINES.get_or_init(|| read(include_str!("../../../../assets/lines.ron")))
-}
-
 /// All conductors, in the order in which lists show them.
 #[must_use]
 pub fn conductors() -> &'static [ConductorEntry] {
@@ -150,15 +135,6 @@ pub fn line(choice: &LineChoice) -> Result<&LineData, CatalogueError> {
         LineChoice::Own(data) => Ok(data),
         LineChoice::Catalogue(id) => line_entry(id).map(|entry| &entry.data),
     }
-}
-
-/// The feed line with this id.
-///
-/// # Errors
-///
-/// An id that the catalogue does not have.
-pub fn line_entry(id: &str) -> Result<&'static LineEntry, CatalogueError> {
-    find(lines(), id)
 }
 
 /// The figures of a chosen conductor.
@@ -228,14 +204,6 @@ trait Entry {
     const KIND: Kind;
 
     fn id(&self) -> &str;
-}
-
-impl Entry for LineEntry {
-    const KIND: Kind = Kind::Line;
-
-    fn id(&self) -> &str {
-        &self.id
-    }
 }
 
 impl Entry for ConductorEntry {

@@ -19,7 +19,7 @@ use crate::plan::Plan;
 use crate::validate;
 
 /// The version that this program writes.
-pub const FORMAT: Version = Version(1, 0);
+pub const FORMAT: Version = Version(1, 1);
 /// A plan of 64 bands and 6 feeds has some 40 kB; a file beyond this is not a plan.
 const LARGEST_BYTES: u64 = 2_000_000;
 

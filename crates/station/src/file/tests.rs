@@ -32,9 +32,9 @@ fn bad_files_say_what_where_and_what_instead() {
     let cases: Vec<(String, &[&str])> = vec![
         (String::new(), &["line 1", "accepted"]),
         (good[..cut].to_owned(), &["line ", "column ", "accepted"]),
-        (good.replace("format: (1, 0)", "format: (2, 0)"), &["format 2.0", "up to format 1.0"]),
-        (good.replace("format: (1, 0)", "format: (1, 3)"), &["format 1.3", "up to format 1.0"]),
-        (good.replace("format: (1, 0)", "format: (0, 9)"), &["0.9 does not exist", "accepted"]),
+        (good.replace("format: (1, 1)", "format: (2, 0)"), &["format 2.0", "up to format 1.1"]),
+        (good.replace("format: (1, 1)", "format: (1, 3)"), &["format 1.3", "up to format 1.1"]),
+        (good.replace("format: (1, 1)", "format: (0, 9)"), &["0.9 does not exist", "accepted"]),
         (
             good.replace("cut_length_m: 40.0", "cut_length_m: -40.0"),
             &["wires[0].cut_length_m", "-40 m", "0.05 to 1000 m"],

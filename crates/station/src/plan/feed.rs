@@ -63,9 +63,36 @@ pub struct LineData {
     /// Highest peak voltage between its conductors, V; absent where no figure is known.
     #[serde(default, skip_serializing_if = "Option::is_none")]
     pub rating_peak_v: Option<f64>,
+    /// Highest average power into a matched load; absent where no figure is known.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub rating_average: Option<AverageRating>,
+    /// What rain does to it; absent where it does nothing, as to coax.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub wet: Option<Wetness>,
     /// Where the figures come from.
     #[serde(default)]
     pub source: String,
+}
+
+/// Average power that a line takes at one frequency, matched. It is heat that limits it: at another frequency it takes
+/// what makes the same heat in a metre.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct AverageRating {
+    /// W.
+    pub watts: f64,
+    /// Where it takes them, Hz.
+    pub frequency_hz: f64,
+}
+
+/// What water does to a line: a named condition, not a measurement.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct Wetness {
+    /// Capacitance per metre over that of the dry line, 1 or more.
+    pub capacitance_factor: f64,
+    /// What is added to the loss tangent.
+    pub added_loss_tangent: f64,
 }
 
 /// How the constants of a line are found.

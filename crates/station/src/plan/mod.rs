@@ -9,7 +9,8 @@ mod site;
 mod wire;
 
 pub use feed::{
-    Feed, LineChoice, LineConstruction, LineData, LinePiece, Link, LossLaw, MatchingUnit, Transformer,
+    AverageRating, Feed, LineChoice, LineConstruction, LineData, LinePiece, Link, LossLaw, MatchingUnit,
+    Transformer, Wetness,
 };
 pub use load::{Circuit, LOAD_GAP_M, Load};
 pub use site::{Earth, Point, Site, Soil, Support, SupportKind};

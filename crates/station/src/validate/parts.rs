@@ -43,6 +43,14 @@ pub(super) fn check_line(field: &str, data: &LineData) -> Checked {
     if let Some(rating) = data.rating_peak_v {
         number(&format!("{field}.rating_peak_v"), rating, 10.0..=1e6, "V")?;
     }
+    if let Some(rating) = data.rating_average {
+        number(&format!("{field}.rating_average.watts"), rating.watts, 0.1..=1e6, "W")?;
+        number(&format!("{field}.rating_average.frequency_hz"), rating.frequency_hz, 1e5..=1e9, "Hz")?;
+    }
+    if let Some(wet) = data.wet {
+        number(&format!("{field}.wet.capacitance_factor"), wet.capacitance_factor, 1.0..=5.0, "")?;
+        number(&format!("{field}.wet.added_loss_tangent"), wet.added_loss_tangent, 0.0..=1.0, "")?;
+    }
     let at = |name: &str| format!("{field}.construction.{name}");
     match data.construction {
         LineConstruction::Published { z0_ohm, velocity_factor, loss } => {
