@@ -175,7 +175,6 @@ fn forked(boundary: Boundary) -> WireModel {
 fn matrix_is_symmetric_when_both_triangles_are_computed() {
     for boundary in [Boundary::FreeSpace, Boundary::Mirror] {
         let matrix = both_triangles(&forked(boundary), 14e6);
-        let largest = matrix.map(Complex64::norm).max();
         let mut worst = 0.0_f64;
         for row in 0..matrix.nrows() {
             for column in 0..row {
@@ -185,7 +184,6 @@ fn matrix_is_symmetric_when_both_triangles_are_computed() {
                 worst = worst.max((below - above).norm() / size);
             }
         }
-        println!("{boundary:?}: asymmetry {worst:.1e}, largest {largest:.1e}");
         // Tolerance of the quadrature of near pairs.
         assert!(worst > 0.0 && worst < 1e-6, "{boundary:?}: {worst}");
     }
@@ -198,7 +196,6 @@ fn ports_are_reciprocal_without_symmetrising() {
         let drive = model.drive(wave_number_rad_per_m(14e6)).map(Complex64::from);
         let admittance = drive.tr_mul(&both_triangles(&model, 14e6).lu().solve(&drive).unwrap());
         let (one, other) = (admittance[(0, 1)], admittance[(1, 0)]);
-        println!("{boundary:?}: {one} and {other}, {:.1e}", (one - other).norm() / one.norm());
         assert!(one != other && (one - other).norm() < 1e-6 * one.norm(), "{one} and {other}");
         // It is the matrix of the solver but for the metal, which is perfect here.
         let solved = model.solve(14e6).unwrap().port_admittance_s;

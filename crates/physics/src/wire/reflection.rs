@@ -180,10 +180,10 @@ impl WithSimd for Multiply<'_> {
                 sum.fill(0.0);
                 for patch in patches.of(unknown) {
                     let weights = if part < 2 { &patch.current_m } else { &patch.slope_m };
-                    for node in 0..patch.nodes {
-                        let begin = kernels.width * (patch.first_node + node);
-                        let row = &kernels.parts[part][begin..begin + kernels.width];
-                        add_scaled(simd, &mut sum, row, weights[node]);
+                    let rows =
+                        kernels.parts[part][kernels.width * patch.first_node..].chunks_exact(kernels.width);
+                    for (row, weight) in rows.zip(&weights[..patch.nodes]) {
+                        add_scaled(simd, &mut sum, row, *weight);
                     }
                 }
                 for (node, value) in sum[..nodes].iter().enumerate() {
