@@ -1,6 +1,7 @@
 //! Speed of the full solver and its sweep, and ratios to baselines of the same run: absolute times drift with the
 //! machine and what else it does.
 
+use std::collections::HashMap;
 use std::hint::black_box;
 use std::time::Instant;
 
@@ -8,6 +9,7 @@ use criterion::Criterion;
 use nalgebra::DMatrix;
 use num_complex::Complex64;
 use physics::constants::SPEED_OF_LIGHT_M_PER_S;
+use physics::earth::{HalfSpace, Soil};
 use physics::sweep::{Fit, Sample, Sweep, SweepRange};
 use physics::wire::{Boundary, Conductor, Material, Metal, PortPlace, Structure, WireModel, WireShape};
 
@@ -88,6 +90,86 @@ fn edit(boundary: Boundary, frequencies_hz: &[f64]) -> (Vec<Complex64>, usize) {
     (impedances, currents)
 }
 
+/// Average soil.
+const SOIL: Soil = Soil { relative_permittivity: 13.0, conductivity_s_per_m: 0.005 };
+
+/// Earths made ready, by the bits of the frequency.
+type Earths = HashMap<u64, HalfSpace>;
+
+/// The sweep over soil; earths that are missing are made.
+fn sweep_over(model: &WireModel, soil: &Soil, earths: &mut Earths) -> Fit {
+    let half_waves = 2.0 * LENGTH_M * HIGHEST_HZ / SPEED_OF_LIGHT_M_PER_S;
+    let range = SweepRange { lowest_hz: LOWEST_HZ, highest_hz: HIGHEST_HZ, half_waves, tolerance: 1e-3 };
+    let reach = model.reach().expect("over soil");
+    let mut sweep = Sweep::new(&range).expect("a sound range");
+    while !sweep.wanted_hz().is_empty() {
+        let solve = |frequency_hz: f64| {
+            let earth = earths
+                .entry(frequency_hz.to_bits())
+                .or_insert_with(|| HalfSpace::for_wires(soil, frequency_hz, &reach).expect("a soil"));
+            Sample::from(model.solve_over(frequency_hz, earth).expect("within the mesh"))
+        };
+        let samples: Vec<Sample> = sweep.wanted_hz().into_iter().map(solve).collect();
+        sweep.give(samples).expect("what it wanted");
+    }
+    sweep.into_fit()
+}
+
+/// An edit's whole way over soil, with the earths kept or made anew.
+fn edit_over(soil: &Soil, earths: &mut Earths, frequencies_hz: &[f64]) -> (Vec<Complex64>, usize) {
+    let model = WireModel::new(inverted_v(Boundary::Soil(*soil)), HIGHEST_HZ).expect("a plain inverted V");
+    let fit = sweep_over(&model, soil, earths);
+    let table = fit.admittances(frequencies_hz).expect("within the range");
+    let impedances = table.entry_s(0, 0).iter().map(Complex64::inv).collect();
+    let currents = BANDS_HZ
+        .iter()
+        .map(|&frequency_hz| {
+            let sample = fit.sample(frequency_hz).expect("within the range");
+            model.end_currents(&sample.currents_a_per_v, &[Complex64::ONE]).len()
+        })
+        .sum();
+    (impedances, currents)
+}
+
+fn measure_over_soil(criterion: &mut Criterion) {
+    let frequencies_hz = thousand_hz();
+    let model = model_of_81(Boundary::Soil(SOIL));
+    let highest_hz = model.highest_hz();
+    let earth = HalfSpace::for_wires(&SOIL, highest_hz, &model.reach().expect("over soil")).expect("a soil");
+    criterion.bench_function("one solution, soil kept, 81 unknowns", |bencher| {
+        bencher.iter(|| black_box(model.solve_over(black_box(highest_hz), &earth)));
+    });
+    let mut kept = Earths::new();
+    criterion.bench_function("edit to 1,000 frequencies and ten bands, soil kept", |bencher| {
+        bencher.iter(|| black_box(edit_over(&SOIL, &mut kept, black_box(&frequencies_hz))));
+    });
+    criterion.bench_function("change of soil to 1,000 frequencies and ten bands", |bencher| {
+        bencher.iter(|| black_box(edit_over(&SOIL, &mut Earths::new(), black_box(&frequencies_hz))));
+    });
+}
+
+fn print_soil_ratios() {
+    let frequencies_hz = thousand_hz();
+    let free_us = shortest_us(50, || edit(Boundary::FreeSpace, &frequencies_hz));
+    let mut kept = Earths::new();
+    let (again, _) = edit_over(&SOIL, &mut kept, &frequencies_hz);
+    let kept = std::cell::RefCell::new(kept);
+    let edit_us = shortest_us(50, || edit_over(&SOIL, &mut kept.borrow_mut(), &frequencies_hz));
+    let anew_us = shortest_us(20, || edit_over(&SOIL, &mut Earths::new(), &frequencies_hz));
+    println!(
+        "soil: edit to 1,000 frequencies and ten bands {edit_us:.0} µs, {:.2} of free space; everything of the earth made anew {anew_us:.0} µs, {:.1} of it",
+        edit_us / free_us,
+        anew_us / free_us
+    );
+    // How far the fit is from direct solutions over soil: the bar is 1e-3.
+    let model = WireModel::new(inverted_v(Boundary::Soil(SOIL)), HIGHEST_HZ).expect("a plain inverted V");
+    let worst = (0..frequencies_hz.len()).step_by(37).map(|index| {
+        let direct = model.solve(frequencies_hz[index]).expect("within the mesh").port_admittance_s[(0, 0)];
+        (again[index].inv() - direct).norm() / direct.norm()
+    });
+    println!("soil: error of the fit {:.1e}", worst.fold(0.0, f64::max));
+}
+
 /// Shortest time of several runs, µs: what the work takes when nothing else disturbs it.
 fn shortest_us<T>(runs: usize, work: impl Fn() -> T) -> f64 {
     let time = |_| {
@@ -155,6 +237,8 @@ fn print_ratios() {
 fn main() {
     let mut criterion = Criterion::default().configure_from_args();
     measure(&mut criterion);
+    measure_over_soil(&mut criterion);
     criterion.final_summary();
     print_ratios();
+    print_soil_ratios();
 }

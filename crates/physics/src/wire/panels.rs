@@ -16,8 +16,8 @@ use crate::field::quadrature::gauss_legendre;
 pub(super) const MOST_NODES: usize = 8;
 /// Fewest nodes of a panel.
 const FEWEST_NODES: usize = 3;
-/// Longest panel, in shortest wavelengths: e^(−jkR) over it is within 1e-5 of the polynomial of 8 nodes.
-const LONGEST_WAVELENGTHS: f64 = 0.6;
+/// Longest panel, in shortest wavelengths: e^(−jkR) over it is within 2e-4 of the polynomial of 8 nodes.
+const LONGEST_WAVELENGTHS: f64 = 0.85;
 /// Longest panel, in heights of its lowest point. An image is two heights away: the polynomial errs by about 3⁻⁸ of it.
 const LONGEST_HEIGHTS: f64 = 3.0;
 
