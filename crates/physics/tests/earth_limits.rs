@@ -5,7 +5,6 @@ use num_complex::Complex64;
 use physics::constants::wave_number_rad_per_m;
 use physics::earth::Soil;
 use physics::field::{FarFieldSource, earth_power_w, radiated_power_w};
-use physics::sinusoid::{ParallelWires, mutual_impedance};
 use physics::wire::{
     Boundary, Conductor, Material, Metal, PortPlace, Structure, WireError, WireModel, WireShape,
 };
@@ -66,8 +65,8 @@ fn a_perfect_conductor_below_is_the_mirror() {
 
 #[test]
 fn many_wavelengths_up_there_is_no_earth() {
-    // A level half wave: what comes back is the wave reflected straight down, Γ times the mutual impedance with the
-    // image, and falls with the height.
+    // A level half wave: what comes back is the wave that the soil reflects straight up, −Γ times what a mirror gives back,
+    // and falls with the height.
     let (frequency_hz, half_m) = (50e6, 1.45);
     let epsilon = Soil { relative_permittivity: 13.0, conductivity_s_per_m: 0.005 };
     let index = epsilon.complex_permittivity(frequency_hz).unwrap().sqrt();
@@ -86,13 +85,7 @@ fn many_wavelengths_up_there_is_no_earth() {
     for height_m in [12.0, 24.0, 48.0] {
         let free = impedance(height_m, Boundary::FreeSpace);
         let change = impedance(height_m, soil(13.0, 0.005)) - free;
-        let image = ParallelWires {
-            half_length_1_m: half_m,
-            half_length_2_m: half_m,
-            spacing_m: 2.0 * height_m,
-            offset_m: 0.0,
-        };
-        let expected = reflection * mutual_impedance(&image, frequency_hz);
+        let expected = -reflection * (impedance(height_m, Boundary::Mirror) - free);
         // The next term of the series is smaller by the order of 1/2kh.
         let next = 4.0 / (2.0 * wave_number_rad_per_m(frequency_hz) * height_m);
         let off = (change - expected).norm() / expected.norm();
