@@ -1,8 +1,8 @@
 //! What the views ask for. Drawing returns commands; the document is the one place that changes the plan.
 
 use station::plan::{
-    Band, ConductorChoice, Earth, Feed, LineChoice, Link, Load, PathPoint, Plan, Point, Support, SupportKind,
-    Transmitter, Wire,
+    Band, ConductorChoice, Earth, EarthConnection, Feed, LineChoice, Link, Load, PathPoint, Plan, Point,
+    Support, SupportKind, Transmitter, Wire,
 };
 use station::units::Units;
 
@@ -70,6 +70,11 @@ pub enum Edit {
     RenameWire {
         wire: usize,
         name: String,
+    },
+    /// What connects a wire's ends to the earth.
+    Earthing {
+        wire: usize,
+        earthed: Vec<EarthConnection>,
     },
     FeedFraction(f64),
     AddLoad(Load),

@@ -74,7 +74,7 @@ fn wire_through_the_mirror() {
         boundary: Boundary::Mirror,
         ..structure(vec![wire(vertices_m, 1e-3)])
     };
-    says(over(&[[0.0, 0.0, 5.0], [10.0, 0.0, -1.0]]), "wire 1 goes through the mirror");
+    says(over(&[[0.0, 0.0, 5.0], [10.0, 0.0, -1.0]]), "wire 1 goes into the earth");
     assert!(matches!(
         refusal(over(&[[0.0, 0.0, 5.0], [0.0, 0.0, 0.0], [8.0, 0.0, 0.0]])),
         WireError::ThroughMirror { .. }

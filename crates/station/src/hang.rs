@@ -7,6 +7,7 @@
 use thiserror::Error;
 
 use crate::catalogue::{self, CatalogueError};
+pub use crate::plan::WireEnd;
 use crate::plan::{ConductorData, Earth, PathPoint, Plan, Point, Site, Wire};
 
 /// The wires as they hang, the ropes that hold them, and the feedpoint.
@@ -16,6 +17,8 @@ pub struct Hung {
     pub wires: Vec<HungWire>,
     /// Ropes, where a path is longer than its wire.
     pub ropes: Vec<Rope>,
+    /// Leads from earthed ends to the earth, wire by wire.
+    pub leads: Vec<EarthLead>,
     /// Where the wire is fed.
     pub feedpoint: Port,
 }
@@ -51,12 +54,15 @@ pub struct Rope {
     pub length_m: f64,
 }
 
-/// An end of a wire.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-#[allow(missing_docs)] // The words say it.
-pub enum WireEnd {
-    Beginning,
-    End,
+/// A lead from the end of a wire straight down to the earth.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct EarthLead {
+    /// Index of the wire.
+    pub wire: usize,
+    /// Which end of it.
+    pub end: WireEnd,
+    /// Where it leaves the wire; the earth is straight below.
+    pub top: Point,
 }
 
 /// A place where a generator or a load can be attached.
@@ -177,13 +183,23 @@ pub fn hang(plan: &Plan) -> Result<Hung, HangError> {
         wires.push(hung);
         ropes.extend(ropes_of(index, wire, &path));
     }
+    let leads = plan.wires.iter().zip(&wires).enumerate().flat_map(|(wire, (planned, hung))| {
+        planned.earthed.iter().filter_map(move |connection| {
+            let vertex = match connection.end {
+                WireEnd::Beginning => hung.vertices.first(),
+                WireEnd::End => hung.vertices.last(),
+            };
+            vertex.map(|vertex| EarthLead { wire, end: connection.end, top: vertex.at })
+        })
+    });
+    let leads = leads.collect();
     let index = plan.feedpoint.wire;
     let Some(wire) = wires.get(index) else {
         return Err(HangError::NoSuchWire { wire: index, last: wires.len().saturating_sub(1) });
     };
     let arc_m = plan.feedpoint.fraction * plan.wires[index].cut_length_m;
     let feedpoint = Port { wire: index, arc_m, at: wire.point_at(arc_m) };
-    Ok(Hung { wires, ropes, feedpoint })
+    Ok(Hung { wires, ropes, leads, feedpoint })
 }
 
 /// The points of a wire's path in space.

@@ -44,6 +44,7 @@ pub fn plan() -> Plan {
             start_m: 5.0,
             cut_length_m: 40.0,
             conductor: ConductorChoice::Catalogue("copper-2mm".to_owned()),
+            earthed: Vec::new(),
         }],
         feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
         loads: Vec::new(),

@@ -122,6 +122,9 @@ pub fn check(plan: &Plan) -> Checked {
     for (index, wire) in plan.wires.iter().enumerate() {
         check_wire(&format!("wires[{index}]"), wire)?;
     }
+    for (index, wire) in plan.wires.iter().enumerate() {
+        parts::check_earthed(&format!("wires[{index}].earthed"), &wire.earthed, &plan.site.earth)?;
+    }
     number("feedpoint.fraction", plan.feedpoint.fraction, FEED_FRACTION, "of the wire")?;
     number("feedpoint.gap_m", plan.feedpoint.gap_m, 0.001..=1.0, "m")?;
     count("loads", plan.loads.len(), 0, MOST_LOADS)?;

@@ -177,6 +177,7 @@ impl CaseWire {
             cut_length_m: points.windows(2).map(|pair| pair[0].distance_m(pair[1])).sum(),
             path: points.into_iter().map(PathPoint::Free).collect(),
             conductor: ConductorChoice::Own(self.conductor.data(2.0 * self.radius_m)),
+            earthed: Vec::new(),
         }
     }
 }

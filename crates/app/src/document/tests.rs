@@ -94,6 +94,13 @@ fn any_edit() -> impl Strategy<Value = Edit> {
         (0..3_usize, length.clone())
             .prop_map(|(support, height_m)| Edit::SupportHeight { support, height_m }),
         Just(Edit::Earth(Earth::Mirror)),
+        (0..2_usize, 0.0..3.0_f64).prop_map(|(wire, length_m)| Edit::Earthing {
+            wire,
+            earthed: vec![EarthConnection {
+                end: WireEnd::End,
+                electrode: Electrode::Stake { length_m, diameter_m: 0.016 },
+            }],
+        }),
         (0..3_usize, 0..3_usize, length).prop_map(|(feed, link, length_m)| Edit::LinkLength {
             feed,
             link,

@@ -52,7 +52,14 @@ pub fn add(plan: &mut Plan, length_m: f64) -> Result<(), Refusal> {
     for (at, end) in ends {
         let name = free_name(plan);
         let path = vec![PathPoint::Free(at), PathPoint::Free(end)];
-        let arm = Wire { name, path, start_m: 0.0, cut_length_m: length_m, conductor: conductor.clone() };
+        let arm = Wire {
+            name,
+            path,
+            start_m: 0.0,
+            cut_length_m: length_m,
+            conductor: conductor.clone(),
+            earthed: Vec::new(),
+        };
         plan.wires.push(arm);
     }
     Ok(())

@@ -25,7 +25,7 @@ impl Handle {
             Edit::SupportFoot { support, .. } | Edit::SupportHeight { support, .. } => (*support, 0),
             Edit::LinkLength { feed, link, .. } | Edit::SetLink { feed, link, .. } => (*feed, *link),
             Edit::LoadFraction { load, .. } | Edit::SetLoad { load, .. } => (*load, 0),
-            Edit::RenameWire { wire, .. } => (*wire, 0),
+            Edit::RenameWire { wire, .. } | Edit::Earthing { wire, .. } => (*wire, 0),
             Edit::RenameFeed { feed, .. } => (*feed, 0),
             Edit::RenameSupport { support, .. } => (*support, 0),
             Edit::FeedFraction(_)

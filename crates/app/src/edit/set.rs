@@ -23,7 +23,9 @@ fn change(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
         | Edit::PathHeight { .. }
         | Edit::PathPoints { .. }
         | Edit::Conductor { .. } => wire(plan, edit),
-        Edit::AddWire(_) | Edit::RemoveWire { .. } | Edit::RenameWire { .. } => wires::wires(plan, edit),
+        Edit::AddWire(_) | Edit::RemoveWire { .. } | Edit::RenameWire { .. } | Edit::Earthing { .. } => {
+            wires::wires(plan, edit)
+        }
         Edit::AddArms { length_m } => arms::add(plan, *length_m),
         Edit::AddLoad(_) | Edit::RemoveLoad { .. } | Edit::SetLoad { .. } | Edit::LoadFraction { .. } => {
             wires::loads(plan, edit)

@@ -11,6 +11,7 @@ pub fn wires(plan: &mut Plan, edit: &Edit) -> Result<(), Refusal> {
     match edit {
         Edit::AddWire(wire) => plan.wires.push(wire.clone()),
         Edit::RenameWire { wire, name } => get(&mut plan.wires, *wire, "wire")?.name.clone_from(name),
+        Edit::Earthing { wire, earthed } => get(&mut plan.wires, *wire, "wire")?.earthed.clone_from(earthed),
         Edit::RemoveWire { wire } => {
             let gone = *wire;
             let name = get(&mut plan.wires, gone, "wire")?.name.clone();

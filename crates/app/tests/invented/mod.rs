@@ -93,6 +93,7 @@ pub fn plan(bands: usize, feeds: usize) -> Plan {
             start_m: 0.0,
             cut_length_m: WIRE_M,
             conductor: ConductorChoice::Catalogue("copper-2mm".to_owned()),
+            earthed: Vec::new(),
         }],
         feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
         loads: Vec::new(),

@@ -14,6 +14,7 @@
 //! They stand beside e^(−jR)/R of the source itself: −1 times it (S_h, S_f) or +1 times it (S_z) over a perfect ground.
 
 pub mod dyad;
+mod electrode;
 mod error;
 mod exact;
 mod fresnel;
@@ -25,6 +26,7 @@ mod spectrum;
 mod table;
 
 pub use dyad::WithoutImages;
+pub use electrode::Electrode;
 pub use error::EarthError;
 pub use exact::exact_kernels;
 pub use fresnel::{Fresnel, fresnel};

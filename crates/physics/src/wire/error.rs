@@ -101,7 +101,7 @@ pub enum WireError {
     },
     /// A wire that reaches the mirror or goes through it.
     #[error(
-        "wire {} goes through the mirror or lies on it: its axis comes down to {height_m} m, at least {lowest_m} m is accepted except at an end on the mirror itself",
+        "wire {} goes into the earth or lies on it: its axis comes down to {height_m} m, at least {lowest_m} m is accepted except at an end on its surface",
         wire + 1
     )]
     ThroughMirror {

@@ -4,6 +4,8 @@ use std::f64::consts::TAU;
 
 use num_complex::Complex64;
 
+use crate::earth::{Electrode, Soil};
+
 /// A lumped load, made of ideal parts with a quality factor each.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Load {
@@ -25,6 +27,13 @@ pub enum Load {
         farad: f64,
         /// Quality factor, the same at all frequencies; infinity for none.
         q: f64,
+    },
+    /// A connection to the earth, at the end of a wire on its surface; open where the soil is no soil.
+    Earth {
+        /// What is in the earth.
+        electrode: Electrode,
+        /// The soil.
+        soil: Soil,
     },
     /// Parts one after the other; none at all is a short.
     Series(Vec<Load>),
@@ -58,6 +67,9 @@ impl Load {
             // Z = 1/jωC + 1/(ωCQ)
             Self::Capacitor { farad, q } => {
                 Termination::Impedance(Complex64::new(q.recip(), -1.0) / (omega * farad))
+            }
+            Self::Earth { electrode, soil } => {
+                electrode.impedance_ohm(soil, frequency_hz).map_or(Termination::Open, Termination::Impedance)
             }
             Self::Series(parts) => parts
                 .iter()

@@ -1,7 +1,7 @@
 //! Findings: what the user should know before building, in one sentence each, most important first.
 
 use crate::hang::Hung;
-use crate::plan::{Link, Plan};
+use crate::plan::{Electrode, Link, Plan, WireEnd};
 use crate::report::{BandReport, Finding, Model, Place, Weight};
 use crate::units;
 
@@ -17,6 +17,7 @@ pub(super) fn findings(plan: &Plan, hung: &Hung, bands: &[BandReport], model: Mo
     if model == Model::Sketch {
         limits_of_the_sketch(hung, &mut found);
     }
+    earth_connections(plan, hung, &mut found);
     found.sort_by_key(|finding| finding.weight);
     found
 }
@@ -96,5 +97,35 @@ fn limits_of_the_sketch(hung: &Hung, found: &mut Vec<Finding>) {
     }
     if hung.wires.len() > 1 {
         note(Weight::Caution, Place::Plan, "The sketch sees only the fed wire; the others are left out.");
+    }
+}
+
+/// A connection to the earth is known approximately only, and needs its lead.
+fn earth_connections(plan: &Plan, hung: &Hung, found: &mut Vec<Finding>) {
+    for lead in &hung.leads {
+        let Some(wire) = plan.wires.get(lead.wire) else { continue };
+        let Some(connection) = wire.earthed.iter().find(|connection| connection.end == lead.end) else {
+            continue;
+        };
+        let electrode = match connection.electrode {
+            Electrode::Stake { length_m, .. } => format!("a stake of {} m", units::short(length_m)),
+            Electrode::Radials { count, length_m, .. } => {
+                format!("{count} radials of {} m", units::short(length_m))
+            }
+            Electrode::Stated { resistance_ohm, .. } => {
+                format!("an electrode of {} Ω", units::short(resistance_ohm))
+            }
+        };
+        let end = match lead.end {
+            WireEnd::Beginning => "beginning",
+            WireEnd::End => "end",
+        };
+        let text = format!(
+            "The {end} of {} goes on {} m straight down, in the same wire, to {electrode}. What the earth opposes there is known \
+             approximately only: measure, and follow local rules for earthing.",
+            wire.name,
+            units::fixed(lead.top.z_m, 2)
+        );
+        found.push(Finding { weight: Weight::Caution, place: Place::Wire(lead.wire), text });
     }
 }

@@ -38,7 +38,7 @@ use self::watts::Passage;
 use self::wire::{BandSolution, WireSolution};
 use crate::catalogue::CatalogueError;
 use crate::hang::{HangError, Hung, hang};
-use crate::plan::{Earth, Feed, Load, Plan};
+use crate::plan::{Earth, EarthConnection, Feed, Load, Plan};
 use crate::report::{BandFeed, BandReport, FrequencyReport, Model, Report};
 use crate::validate::{self, PlanError};
 
@@ -135,7 +135,7 @@ type Answered = Result<(Model, Arc<WireSolution>), EvaluateError>;
 struct Full {
     key: WireKey,
     solved: full::Solved,
-    loads: Vec<Load>,
+    loads: LoadKey,
     solution: Arc<WireSolution>,
 }
 
@@ -147,6 +147,13 @@ struct WireKey {
     gap_m: f64,
     /// Wire and fraction of each load.
     load_places: Vec<(usize, f64)>,
+}
+
+/// What is attached to the solved wires: loads, and electrodes by wire.
+type LoadKey = (Vec<Load>, Vec<Vec<EarthConnection>>);
+
+fn load_key(plan: &Plan) -> LoadKey {
+    (plan.loads.clone(), plan.wires.iter().map(|wire| wire.earthed.clone()).collect())
 }
 
 impl Full {
@@ -270,7 +277,7 @@ impl Evaluator {
     fn full(&mut self, plan: &Plan, hung: &Hung) -> Answered {
         let key = WireKey::new(plan, hung);
         let kept = self.full.take();
-        if let Some(full) = kept.as_ref().filter(|full| full.key == key && full.loads == plan.loads) {
+        if let Some(full) = kept.as_ref().filter(|full| full.key == key && full.loads == load_key(plan)) {
             let answer = (full.model(), Arc::clone(&full.solution));
             self.full = kept;
             return Ok(answer);
@@ -284,7 +291,7 @@ impl Evaluator {
             }
         };
         let solution = Arc::new(solved.answer(plan, hung, &self.grids)?);
-        let full = Full { key, solved, loads: plan.loads.clone(), solution: Arc::clone(&solution) };
+        let full = Full { key, solved, loads: load_key(plan), solution: Arc::clone(&solution) };
         let model = full.model();
         self.full = Some(full);
         Ok((model, solution))

@@ -1,7 +1,13 @@
 use super::*;
-use crate::plan::{Circuit, Earth, LineChoice, LinePiece, Link, Load};
-use crate::report::VerdictKind;
+use crate::plan::{
+    Circuit, Earth, EarthConnection, Electrode, LineChoice, LinePiece, Link, Load, PathPoint, Point, WireEnd,
+};
+use crate::report::{Shares, VerdictKind};
 use crate::sample;
+
+fn farmland() -> Earth {
+    Earth::Catalogue("farmland".to_owned())
+}
 
 fn report(plan: &Plan) -> Report {
     Evaluator::new().evaluate(plan, 7).unwrap()
@@ -195,7 +201,7 @@ fn lines_and_loads_never_solve_the_wires_again() {
 #[test]
 fn the_potential_jumps_by_the_feed_voltage() {
     let mut plan = sample::plan();
-    for earth in [Earth::NoEarth, Earth::Mirror] {
+    for earth in [Earth::NoEarth, Earth::Mirror, farmland()] {
         plan.site.earth = earth;
         for band in report(&plan).bands {
             let z = band.middle_point().feedpoint_ohm;
@@ -212,7 +218,7 @@ fn the_potential_jumps_by_the_feed_voltage() {
 #[test]
 fn energy_is_in_balance_with_and_without_loads() {
     let mut plan = with_trap();
-    for earth in [Earth::NoEarth, Earth::Mirror] {
+    for earth in [Earth::NoEarth, Earth::Mirror, farmland()] {
         plan.site.earth = earth;
         let mut evaluator = Evaluator::new();
         let report = evaluator.evaluate(&plan, 1).unwrap();
@@ -237,4 +243,55 @@ fn the_sketch_looks_like_the_full_answer() {
         assert!((a - b).norm() < 0.5 * a.norm(), "{}: {a} and {b}", full.name);
         assert_eq!(full.wave.wires[0].marks.len(), sketch.wave.wires[0].marks.len(), "{}", full.name);
     }
+}
+
+/// A low wire whose end goes down to an earth stake: the current goes on into the lead, the electrode's watts heat the
+/// earth, and a better electrode gives more sky.
+#[test]
+fn an_earthed_end_carries_current_into_the_earth() {
+    let earthed = |electrode: Option<Electrode>| {
+        let mut plan = sample::plan();
+        let connection = electrode.map(|electrode| EarthConnection { end: WireEnd::End, electrode });
+        plan.wires[0].earthed = connection.into_iter().collect();
+        report(&plan)
+    };
+    let stated = |resistance_ohm| Some(Electrode::Stated { resistance_ohm, reactance_ohm: 0.0 });
+    let end_a = |report: &Report| report.bands[0].wave.wires[0].current_a.last().unwrap().norm();
+    let [open, poor, good] = [None, stated(300.0), stated(10.0)].map(earthed);
+    assert!(end_a(&good) > 5.0 * end_a(&open), "{} against {}", end_a(&good), end_a(&open));
+    let shares = |report: &Report| report.bands[0].middle_point().shares;
+    for report in [&open, &poor, &good] {
+        let Shares { sky, earth, burnt } = shares(report);
+        assert!((sky + earth + burnt - 1.0).abs() < 1e-9 && sky > 0.0 && earth > 0.0 && burnt < 0.1);
+    }
+    assert!(shares(&good).sky > shares(&poor).sky, "{:?} {:?}", shares(&good), shares(&poor));
+    assert!(good.findings.iter().any(|finding| finding.text.contains("approximately")));
+    let stake = earthed(Some(Electrode::Stake { length_m: 1.5, diameter_m: 0.016 }));
+    assert!(stake.bands[0].middle_point().feedpoint_ohm.is_finite());
+}
+
+#[test]
+fn without_an_earth_nothing_is_earthed() {
+    let mut plan = sample::plan();
+    plan.site.earth = Earth::NoEarth;
+    plan.wires[0].earthed = vec![EarthConnection {
+        end: WireEnd::End,
+        electrode: Electrode::Stake { length_m: 1.5, diameter_m: 0.016 },
+    }];
+    let refusal = Evaluator::new().evaluate(&plan, 1).unwrap_err().to_string();
+    assert!(refusal.contains("wires[0].earthed") && refusal.contains("accepted"), "{refusal}");
+}
+
+/// Lower than the earth's kernels are made for: said in words, no number.
+#[test]
+fn a_wire_too_near_the_soil_is_refused_in_words() {
+    let mut plan = sample::plan();
+    plan.wires[0].path =
+        vec![PathPoint::Free(Point::new(-20.0, 0.0, 0.06)), PathPoint::Free(Point::new(20.0, 0.0, 0.06))];
+    plan.wires[0].start_m = 0.0;
+    let refusal = Evaluator::new().evaluate_at(&plan, 1, &[1.85e6]).map(|_| ()).unwrap_err().to_string();
+    assert!(
+        refusal.contains("wires[0]") && refusal.contains("0.06 m") && refusal.contains("at least"),
+        "{refusal}"
+    );
 }

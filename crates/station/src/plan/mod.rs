@@ -14,7 +14,10 @@ pub use feed::{
 };
 pub use load::{Circuit, LOAD_GAP_M, Load};
 pub use site::{Earth, Point, Site, Soil, Support, SupportKind};
-pub use wire::{ConductorChoice, ConductorData, Core, Feedpoint, Insulation, PathPoint, Wire};
+pub use wire::{
+    ConductorChoice, ConductorData, Core, EarthConnection, Electrode, Feedpoint, Insulation, PathPoint, Wire,
+    WireEnd,
+};
 
 use serde::{Deserialize, Serialize};
 

@@ -21,6 +21,56 @@ pub struct Wire {
     pub cut_length_m: f64,
     /// What it is made of.
     pub conductor: ConductorChoice,
+    /// Ends that are connected to the earth, each by a lead of the same wire straight down; at most one for each end.
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub earthed: Vec<EarthConnection>,
+}
+
+/// An end of a wire that is connected to the earth.
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct EarthConnection {
+    /// Which end.
+    pub end: WireEnd,
+    /// What is in the earth.
+    pub electrode: Electrode,
+}
+
+/// An end of a wire.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[allow(missing_docs)] // The words say it.
+pub enum WireEnd {
+    Beginning,
+    End,
+}
+
+/// What connects a wire to the earth. Known approximately only.
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub enum Electrode {
+    /// A stake driven straight down.
+    Stake {
+        /// Length in the earth, m.
+        length_m: f64,
+        /// Diameter, m.
+        diameter_m: f64,
+    },
+    /// A few bare wires laid on the earth as a star.
+    Radials {
+        /// How many.
+        count: u32,
+        /// Length of each, m.
+        length_m: f64,
+        /// Diameter of the wire, m.
+        diameter_m: f64,
+    },
+    /// A stated impedance, the same on all frequencies.
+    Stated {
+        /// Ω.
+        resistance_ohm: f64,
+        /// Ω.
+        reactance_ohm: f64,
+    },
 }
 
 /// A point of the path.

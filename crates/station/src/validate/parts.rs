@@ -1,7 +1,10 @@
 //! Validation of parts: conductors, lines, matching units, loads.
 
 use super::{Checked, PlanError, count, number, text};
-use crate::plan::{Circuit, ConductorData, LOAD_GAP_M, LineConstruction, LineData, Load, MatchingUnit, Plan};
+use crate::plan::{
+    Circuit, ConductorData, Earth, EarthConnection, Electrode, LOAD_GAP_M, LineConstruction, LineData, Load,
+    MatchingUnit, Plan,
+};
 
 pub(super) fn check_conductor(field: &str, data: &ConductorData) -> Checked {
     text(&format!("{field}.name"), &data.name, 80)?;
@@ -104,6 +107,41 @@ fn exceeds(field: &str, value_m: f64, limit_m: f64, what: &str) -> Checked {
         value: format!("{value_m} m"),
         accepted: format!("more than {limit_m:.4} m, {what}"),
     })
+}
+
+/// Connections to the earth: one for each end at most, and an earth to connect to.
+pub(super) fn check_earthed(field: &str, earthed: &[EarthConnection], earth: &Earth) -> Checked {
+    let refused = |value: String, accepted: &str| {
+        Err(PlanError::Contradiction { field: field.to_owned(), value, accepted: accepted.to_owned() })
+    };
+    if !earthed.is_empty() && matches!(earth, Earth::NoEarth) {
+        return refused(
+            "a connection to the earth, of which there is none".to_owned(),
+            "none without an earth",
+        );
+    }
+    for (index, connection) in earthed.iter().enumerate() {
+        if earthed[..index].iter().any(|other| other.end == connection.end) {
+            return refused(format!("two connections at one end ({:?})", connection.end), "one for each end");
+        }
+        let field = format!("{field}[{index}].electrode");
+        match connection.electrode {
+            Electrode::Stake { length_m, diameter_m } => {
+                number(&format!("{field}.length_m"), length_m, 0.1..=20.0, "m")?;
+                number(&format!("{field}.diameter_m"), diameter_m, 0.001..=0.2, "m")?;
+            }
+            Electrode::Radials { count, length_m, diameter_m } => {
+                number(&format!("{field}.count"), f64::from(count), 1.0..=64.0, "")?;
+                number(&format!("{field}.length_m"), length_m, 0.5..=100.0, "m")?;
+                number(&format!("{field}.diameter_m"), diameter_m, 0.000_1..=0.02, "m")?;
+            }
+            Electrode::Stated { resistance_ohm, reactance_ohm } => {
+                number(&format!("{field}.resistance_ohm"), resistance_ohm, 0.0..=10_000.0, "Ω")?;
+                number(&format!("{field}.reactance_ohm"), reactance_ohm, -10_000.0..=10_000.0, "Ω")?;
+            }
+        }
+    }
+    Ok(())
 }
 
 /// Circuits inside circuits, at most; nobody builds deeper, and a file could ask for a million.

@@ -3,6 +3,7 @@
 
 mod about;
 mod bands;
+mod earthing;
 mod loads;
 mod site;
 mod typed;

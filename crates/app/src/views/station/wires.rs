@@ -81,6 +81,7 @@ fn one(
             out.push(Command::Edit(Edit::CutLength { wire: index, cut_length_m }));
         }
     });
+    super::earthing::show(ui, snapshot, (index, wire), out);
 }
 
 fn fed_at(ui: &mut Ui, snapshot: &Snapshot<'_>, several: bool, out: &mut Vec<Command>) {
@@ -156,6 +157,7 @@ fn new_wire(plan: &Plan) -> Wire {
         path: vec![PathPoint::Free(from), PathPoint::Free(to)],
         start_m: 0.0,
         cut_length_m: NEW_WIRE_M,
+        earthed: Vec::new(),
         conductor: plan.wires.first().map_or_else(
             || ConductorChoice::Catalogue("copper-2mm".to_owned()),
             |wire| wire.conductor.clone(),

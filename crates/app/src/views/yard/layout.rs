@@ -114,6 +114,8 @@ pub struct Layout<'a> {
     pub supports: Vec<SupportShape>,
     /// Ropes.
     pub ropes: Vec<Vec<Pos2>>,
+    /// Leads from earthed ends to the earth.
+    pub leads: Vec<[Pos2; 2]>,
     /// Wires.
     pub wires: Vec<Vec<Pos2>>,
     /// Loads in the plan's order.
@@ -179,6 +181,12 @@ impl<'a> Layout<'a> {
         let wires = hung.map_or_else(Vec::new, |hung| {
             hung.wires.iter().map(|wire| line(&mut wire.vertices.iter().map(|v| v.at))).collect()
         });
+        let leads = hung.map_or_else(Vec::new, |hung| {
+            hung.leads
+                .iter()
+                .map(|lead| [lead.top, Point { z_m: 0.0, ..lead.top }].map(|at| view.at(at)))
+                .collect()
+        });
         let feed_line =
             hung.map_or_else(Vec::new, |h| slack_line(view.at(h.feedpoint.at), view.at(site.entrance)));
         let plot = view.frame;
@@ -188,6 +196,7 @@ impl<'a> Layout<'a> {
             distances: rulers::distances(&view, asking.units, model.zero_along_m()),
             supports,
             ropes,
+            leads,
             wires,
             loads: load_shapes(model, &view),
             feed_line,

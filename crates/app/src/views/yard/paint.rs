@@ -143,6 +143,15 @@ fn paint_lines(painter: &Painter, layout: &Layout<'_>, look: &Look<'_>) {
     for line in &layout.ropes {
         shapes.extend(Shape::dashed_line(line, rope, 5.0, 3.0));
     }
+    let lead = Stroke::new(Pen::Curve.width(), look.ink(Ink::Wire));
+    for &[top, foot] in &layout.leads {
+        shapes.push(Shape::line_segment([top, foot], lead));
+        // The sign for earth: three bars, each shorter than the one above.
+        for (below, half) in [(0.0, 8.0), (3.5, 5.0), (7.0, 2.0)] {
+            let bar = foot + vec2(0.0, below);
+            shapes.push(Shape::line_segment([bar - vec2(half, 0.0), bar + vec2(half, 0.0)], lead));
+        }
+    }
     if layout.feed_line.len() > 1 {
         let stroke = Stroke::new(Pen::Curve.width(), look.ink(Ink::feed(look.feed)));
         patterned(layout.feed_line.clone(), Pattern::feed(look.feed), stroke, &mut shapes);

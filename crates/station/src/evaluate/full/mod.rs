@@ -109,9 +109,13 @@ impl Solved {
 
     /// Attaches the plan's loads and answers at every frequency.
     pub fn answer(&self, plan: &Plan, hung: &Hung, grids: &[Grid]) -> Result<WireSolution, EvaluateError> {
-        let loads = structure::loads(plan);
+        let loads = self.loads(plan);
         let bands = grids.par_iter().map(|grid| self.band(plan, hung, grid, &loads));
         Ok(WireSolution { bands: bands.collect::<Result<_, _>>()? })
+    }
+
+    fn loads(&self, plan: &Plan) -> Vec<Load> {
+        structure::loads(plan, self.model.structure().boundary)
     }
 
     fn band(
@@ -171,7 +175,9 @@ impl Solved {
             loaded.voltage_ratio.column(0).iter().map(|ratio| ratio * volt).collect();
         let currents = self.model.end_currents(&sample.currents_a_per_v, &voltages);
         let in_metal_w: f64 = self.model.wire_loss_w(&currents, frequency_hz).iter().sum();
-        let in_loads_w: f64 = (1..voltages.len())
+        // What an electrode takes heats the earth.
+        let loads_end = 1 + loads.iter().take_while(|load| !matches!(load, Load::Earth { .. })).count();
+        let in_loads_w: f64 = (1..loads_end)
             .map(|port| {
                 let into: Complex64 =
                     sample.admittance_s.row(port).iter().zip(&voltages).map(|(y, v)| y * v).sum();

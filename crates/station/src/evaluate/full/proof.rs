@@ -5,7 +5,6 @@ use physics::wire::mesh_error;
 
 use super::Solved;
 use super::answers::solve_at;
-use super::structure;
 use crate::evaluate::EvaluateError;
 use crate::plan::Plan;
 
@@ -48,7 +47,7 @@ pub struct Gains {
 
 impl Solved {
     pub fn prove(&self, plan: &Plan, frequency_hz: f64) -> Result<Proof, EvaluateError> {
-        let loads = structure::loads(plan);
+        let loads = self.loads(plan);
         let fed = self.fed(&self.answers.sample(frequency_hz)?, &loads)?;
         let earths = self.earths.as_deref();
         let working = solve_at(&self.model, earths, frequency_hz)?;
@@ -71,7 +70,7 @@ impl Solved {
         frequency_hz: f64,
         directions: &[Direction],
     ) -> Result<Gains, EvaluateError> {
-        let fed = self.fed(&self.answers.sample(frequency_hz)?, &structure::loads(plan))?;
+        let fed = self.fed(&self.answers.sample(frequency_hz)?, &self.loads(plan))?;
         let source = self.far_field(&fed);
         let gain = |direction: Direction| source.field(direction).gain_dbi(1.0);
         let (peak, _) = strongest_direction(&source);

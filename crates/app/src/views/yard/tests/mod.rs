@@ -39,6 +39,7 @@ pub fn flat() -> Plan {
             start_m: 5.0,
             cut_length_m: 30.0,
             conductor: ConductorChoice::Catalogue("copper-2mm".to_owned()),
+            earthed: Vec::new(),
         }],
         feedpoint: Feedpoint { wire: 0, fraction: 0.5, gap_m: 0.02 },
         loads: Vec::new(),
