@@ -53,7 +53,7 @@ impl Answers {
         let news: Vec<News> = self.worker.iter().flat_map(Worker::news).collect();
         for piece in news {
             match piece {
-                News::Answer(answer) => self.take(answer, document),
+                News::Answer(answer) => self.take(*answer, document),
                 News::Proofs { revision, proofs } => {
                     if self.report.as_ref().is_some_and(|report| report.revision == revision) {
                         self.proofs = proofs;

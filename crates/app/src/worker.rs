@@ -17,7 +17,7 @@ struct Request {
 /// What the worker sends.
 pub enum News {
     /// A plan has been evaluated.
-    Answer(Answer),
+    Answer(Box<Answer>),
     /// What stands behind the newest full answer: one entry per band, computed while nothing else was asked.
     Proofs {
         /// The plan's revision.
@@ -121,11 +121,11 @@ impl<W: Fn()> Bench<W> {
                 guarded(&mut self.evaluator, |e| e.sketch(plan, *revision).map_err(|e| e.to_string()));
             // A plan that the sketch refuses may still have a full answer.
             if sketch.is_ok() {
-                self.send(News::Answer(Answer {
+                self.send(News::Answer(Box::new(Answer {
                     revision: *revision,
                     took: begun.elapsed(),
                     outcome: sketch,
-                }))?;
+                })))?;
             }
         }
         let begun = Instant::now();
@@ -133,7 +133,7 @@ impl<W: Fn()> Bench<W> {
             guarded(&mut self.evaluator, |e| e.evaluate(plan, *revision).map_err(|e| e.to_string()));
         self.full_took = begun.elapsed();
         let report = outcome.as_ref().ok().cloned();
-        self.send(News::Answer(Answer { revision: *revision, took: self.full_took, outcome }))?;
+        self.send(News::Answer(Box::new(Answer { revision: *revision, took: self.full_took, outcome })))?;
         Some(report)
     }
 

@@ -6,7 +6,7 @@ use app::command::{Command, Show, View};
 use app::start;
 use common::Window;
 use eframe::egui::{Key, Modifiers, vec2};
-use station::plan::Circuit;
+use station::plan::{Circuit, EarthConnection, Electrode, WireEnd};
 
 fn open() -> Window {
     let mut window = Window::open();
@@ -131,4 +131,39 @@ fn a_fan_answers_and_undoes_in_one_step() {
     assert!(window.lane("20 m").contains('Ω') && window.lane("20 m") != before);
     window.ctrl(Key::Z);
     assert_eq!(*window.plan(), start::demo());
+}
+
+/// The 40 m lane's words; the Station view is left and entered again.
+fn lane_in_yard(window: &mut Window) -> String {
+    show(window, View::Yard);
+    window.settle();
+    let lane = window.lane("40 m");
+    show(window, View::Station);
+    window.settle();
+    lane
+}
+
+#[test]
+fn an_end_is_earthed_changed_and_taken_back() {
+    let mut window = open();
+    let wire = window.plan().wires[0].name.clone();
+    let lane = lane_in_yard(&mut window);
+    window.click(&format!("earth at the end of {wire}"));
+    window.click("earth stake");
+    let earthed = window.plan().wires[0].earthed.clone();
+    assert!(
+        matches!(earthed[..], [EarthConnection { end: WireEnd::End, electrode: Electrode::Stake { .. } }]),
+        "{earthed:?}"
+    );
+    assert_ne!(lane_in_yard(&mut window), lane, "the bands follow");
+    window.click(&format!("earth at the end of {wire}"));
+    window.click("stated impedance");
+    window.type_into("resistance", "75");
+    window.key(Modifiers::NONE, Key::Tab);
+    let electrode = window.plan().wires[0].earthed[0].electrode.clone();
+    assert!(matches!(electrode, Electrode::Stated { resistance_ohm, .. } if near(resistance_ohm, 75.0)));
+    window.click(&format!("earth at the end of {wire}"));
+    window.click("nothing");
+    assert!(window.plan().wires[0].earthed.is_empty());
+    assert_eq!(lane_in_yard(&mut window), lane, "everything is as it was");
 }

@@ -1,7 +1,7 @@
 //! Steps back and forward.
 
 use proptest::prelude::*;
-use station::plan::{Earth, Point, Transmitter};
+use station::plan::{Earth, EarthConnection, Electrode, Point, Transmitter, WireEnd};
 
 use super::*;
 use crate::start;

@@ -253,7 +253,7 @@ fn a_load_slides_to_the_end_of_its_wire_and_never_into_the_feedpoint() {
 fn spare() -> Wire {
     let path = [Point::new(0.0, 20.0, 8.0), Point::new(12.0, 20.0, 8.0)].map(PathPoint::Free).to_vec();
     let conductor = ConductorChoice::Catalogue("copper-2mm".to_owned());
-    Wire { name: "spare".to_owned(), path, start_m: 0.0, cut_length_m: 12.0, conductor }
+    Wire { name: "spare".to_owned(), path, start_m: 0.0, cut_length_m: 12.0, conductor, earthed: Vec::new() }
 }
 
 #[test]

@@ -125,6 +125,7 @@ pub fn report(plan: &Plan) -> Report {
                 vertices: vec![Vertex { at: ends[0], arc_m: 0.0 }, Vertex { at: ends[1], arc_m: WIRE_M }],
                 conductor,
             }],
+            leads: Vec::new(),
             ropes: vec![],
             feedpoint: Port { wire: 0, arc_m: 0.5 * WIRE_M, at: ends[0].toward(ends[1], 0.5) },
         },

@@ -221,6 +221,7 @@ pub fn traps_and_arms() -> Plan {
         start_m: 0.0,
         cut_length_m: 10.2,
         conductor: plan.wires[0].conductor.clone(),
+        earthed: Vec::new(),
     };
     let arms = [arm("left arm", 22.9, on("alder", 5.5)), arm("right arm", 23.1, on("willow", 4.5))];
     plan.wires.extend(arms);

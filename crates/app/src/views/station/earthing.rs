@@ -55,7 +55,7 @@ pub(super) fn show(
             step = pick(ui, &name, &mut with);
         });
         if let Some(electrode) = &mut with {
-            group(ui, &name, |ui| figures(ui, snapshot, electrode, out));
+            group(ui, &format!("figures of the {name}"), |ui| figures(ui, snapshot, electrode, out));
         }
         if with.as_ref() != now.map(|connection| &connection.electrode) {
             let others = wire.earthed.iter().filter(|connection| connection.end != end).cloned();
