@@ -108,7 +108,6 @@ fn near_fields(solved: &Solved, points_m: &[[f64; 3]]) -> Vec<NearField> {
         let source = source.expect("not over soil");
         return points_m.iter().map(|at_m| source.field(*at_m)).collect();
     };
-    let sources = model.point_sources(currents, *frequency_hz).expect("over soil");
     let corner = |pick: fn(f64, f64) -> f64, from: f64| {
         points_m
             .iter()
@@ -116,8 +115,8 @@ fn near_fields(solved: &Solved, points_m: &[[f64; 3]]) -> Vec<NearField> {
     };
     let region =
         Region { low_m: corner(f64::min, f64::INFINITY), high_m: corner(f64::max, f64::NEG_INFINITY) };
-    let earth = HalfSpace::for_wires(&soil, *frequency_hz, &region.reach(&sources)).expect("an earth");
-    let source = NearFieldOverSoil::new(&finer.segments, &finer.currents, sources, &earth);
+    let earth = HalfSpace::for_wires(&soil, *frequency_hz, &region.reach(&finer.segments)).expect("an earth");
+    let source = NearFieldOverSoil::new(&finer.segments, &finer.currents, &earth);
     points_m.iter().map(|at_m| source.field(*at_m)).collect()
 }
 

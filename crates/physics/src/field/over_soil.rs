@@ -11,9 +11,9 @@ use num_complex::Complex64;
 
 use super::near::{NearField, NearFieldSource};
 use super::space::Vec3;
-use crate::constants::{VACUUM_IMPEDANCE_OHM, VACUUM_PERMITTIVITY_F_PER_M};
+use crate::constants::{SPEED_OF_LIGHT_M_PER_S, VACUUM_IMPEDANCE_OHM, VACUUM_PERMITTIVITY_F_PER_M};
 use crate::earth::{GroundKernels, HalfSpace, Reach, StaticWeights};
-use crate::wire::{EndCurrents, PointSource, Segment};
+use crate::wire::{EndCurrents, PointSource, Segment, point_sources};
 
 /// Where fields are wanted: a box, edges along the axes, above the soil.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -36,14 +36,14 @@ pub struct NearFieldOverSoil<'a> {
 }
 
 impl Region {
-    /// What an earth must reach for fields in the region: to make it ready by [`HalfSpace::for_wires`].
+    /// What an earth must reach for the fields of wires in the region: to make it ready by [`HalfSpace::for_wires`].
     #[must_use]
-    pub fn reach(&self, sources: &[PointSource]) -> Reach {
-        let least = |axis: usize| {
-            let places = sources.iter().map(|source| source.element.position_m[axis]);
+    pub fn reach(&self, segments: &[Segment]) -> Reach {
+        let ends = |axis: usize| {
+            let places = segments.iter().flat_map(|segment| [segment.from_m[axis], segment.to_m[axis]]);
             places.fold([f64::INFINITY, f64::NEG_INFINITY], |[low, high], x| [low.min(x), high.max(x)])
         };
-        let [x, y, z] = [0, 1, 2].map(least);
+        let [x, y, z] = [0, 1, 2].map(ends);
         let across = |axis: usize, [low, high]: [f64; 2]| {
             (self.high_m[axis] - low).abs().max((high - self.low_m[axis]).abs())
         };
@@ -60,18 +60,15 @@ impl Region {
 }
 
 impl<'a> NearFieldOverSoil<'a> {
-    /// The source for currents at the ends of segments (A peak), best [`super::smoothed`], and for what of them the soil
-    /// sees: [`crate::wire::WireModel::point_sources`].
+    /// The source for currents at the ends of segments (A peak), [`super::smoothed`] to the least distance from wires and
+    /// ground.
     ///
     /// The earth may be ready for any reach; that of [`Region::reach`] makes fields within the region quick.
     #[must_use]
-    pub fn new(
-        segments: &[Segment],
-        currents: &[EndCurrents],
-        sources: Vec<PointSource>,
-        earth: &'a HalfSpace,
-    ) -> Self {
-        let own = NearFieldSource::in_free_space(segments, currents, earth.wave_number_rad_per_m());
+    pub fn new(segments: &[Segment], currents: &[EndCurrents], earth: &'a HalfSpace) -> Self {
+        let k = earth.wave_number_rad_per_m();
+        let own = NearFieldSource::in_free_space(segments, currents, k);
+        let sources = point_sources(segments, currents, k * SPEED_OF_LIGHT_M_PER_S / TAU);
         Self { own, sources, earth }
     }
 
@@ -280,5 +277,209 @@ impl Slopes {
             sum[1] += outward * y + round * x;
             sum[2] += up;
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::earth::{Soil, exact_kernels};
+    use crate::wire::{Element, Material, PortPlace, Structure, WireModel, WireShape};
+    use crate::{constants::VACUUM_PERMEABILITY_H_PER_M, field::smoothed, wire::Boundary};
+
+    const FREQUENCY_HZ: f64 = 7.1e6;
+
+    fn norm(vector: [Complex64; 3]) -> f64 {
+        vector.iter().map(Complex64::norm_sqr).sum::<f64>().sqrt()
+    }
+
+    fn minus(a: [Complex64; 3], b: [Complex64; 3]) -> [Complex64; 3] {
+        std::array::from_fn(|axis| a[axis] - b[axis])
+    }
+
+    /// Differences of E and of H over the second's.
+    fn apart(a: &NearField, b: &NearField) -> [f64; 2] {
+        [(a.e_v_per_m, b.e_v_per_m), (a.h_a_per_m, b.h_a_per_m)].map(|(a, b)| norm(minus(a, b)) / norm(b))
+    }
+
+    /// Smoothed currents of a wire over the soil, for 1 V.
+    fn fed(vertices_m: &[[f64; 3]], soil: Soil) -> (Vec<Segment>, Vec<EndCurrents>) {
+        let boundary = Boundary::Soil(soil);
+        let vertices_m = vertices_m.to_vec();
+        let wires = vec![WireShape { vertices_m, radius_m: 1e-3, material: Material::PERFECT }];
+        let ports = vec![PortPlace { wire: 0, arc_m: 2.0, gap_m: 0.02 }];
+        let model = WireModel::new(Structure { wires, ports, boundary }, FREQUENCY_HZ).unwrap();
+        let solution = model.solve(FREQUENCY_HZ).unwrap();
+        let currents = model.end_currents(&solution.coefficients_a_per_v, &[Complex64::ONE]);
+        let finer = smoothed(model.segments(), &currents, boundary, FREQUENCY_HZ, 0.03);
+        (finer.segments, finer.currents)
+    }
+
+    fn shapes() -> [Vec<[f64; 3]>; 4] {
+        [
+            vec![[-12.0, 0.0, 1.0], [12.0, 0.0, 1.0]],
+            vec![[-8.0, 0.0, 3.0], [0.0, 0.0, 9.0], [7.0, 5.0, 2.0]],
+            vec![[0.0, 1.0, 1.5], [9.0, 1.0, 8.0]],
+            vec![[0.0, 0.0, 0.0], [0.0, 0.0, 8.0], [6.0, 0.0, 7.0]],
+        ]
+    }
+
+    const POINTS: [Vec3; 5] =
+        [[1.5, 0.3, 0.0], [-12.2, 0.1, 0.0], [7.3, 4.0, 1.7], [4.0, -3.0, 11.0], [20.0, 25.0, 1.7]];
+
+    /// What soil gives back of few sources is what it gives back of every piece of the wire.
+    #[test]
+    fn few_sources_stand_for_the_wires() {
+        let soil = Soil { relative_permittivity: 13.0, conductivity_s_per_m: 0.005 };
+        for vertices_m in &shapes() {
+            let (segments, currents) = fed(vertices_m, soil);
+            let region = Region { low_m: [-13.0, -4.0, 0.0], high_m: [21.0, 26.0, 12.0] };
+            let earth = HalfSpace::for_wires(&soil, FREQUENCY_HZ, &region.reach(&segments)).unwrap();
+            let few = NearFieldOverSoil::new(&segments, &currents, &earth);
+            let pieces = segments.iter().zip(&currents).map(|(segment, ends)| PointSource {
+                element: Element {
+                    position_m: std::array::from_fn(|axis| 0.5 * (segment.from_m[axis] + segment.to_m[axis])),
+                    direction: segment.direction(),
+                },
+                current_a_m: 0.5 * (ends.from_a + ends.to_a) * segment.length_m(),
+                charge_c: (ends.to_a - ends.from_a) * Complex64::new(0.0, (TAU * FREQUENCY_HZ).recip()),
+            });
+            let feet = few.sources.iter().filter(|source| source.current_a_m == Complex64::ZERO);
+            let sources: Vec<PointSource> = pieces.chain(feet.copied()).collect();
+            assert!(5 * few.sources.len() < sources.len(), "{} for {}", few.sources.len(), sources.len());
+            let many = NearFieldOverSoil { own: few.own.clone(), sources, earth: &earth };
+            for at_m in POINTS {
+                let error = apart(&few.field(at_m), &many.field(at_m));
+                assert!(error.iter().all(|error| *error < 1e-3), "{vertices_m:?}, {at_m:?}: {error:?}");
+            }
+        }
+    }
+
+    /// Tables and integrals give the same fields, over soils from sand to the sea.
+    #[test]
+    fn tables_give_the_fields_of_the_integrals() {
+        for (relative_permittivity, conductivity_s_per_m) in
+            [(3.0, 1e-4), (13.0, 0.005), (80.0, 0.001), (81.0, 5.0)]
+        {
+            let soil = Soil { relative_permittivity, conductivity_s_per_m };
+            for (at_m, source) in pairs() {
+                let reach = Reach { rho_max_m: 40.0, zeta_min_m: 0.3, zeta_max_m: 20.0 };
+                let earth = HalfSpace::for_wires(&soil, FREQUENCY_HZ, &reach).unwrap();
+                let (by_tables, by_integrals) =
+                    (given_back(&earth, at_m, &source), exactly(&earth, at_m, &source));
+                let error = apart(&by_tables, &by_integrals);
+                assert!(error.iter().all(|error| *error < 3e-3), "{soil:?}, {at_m:?}: {error:?}");
+            }
+        }
+    }
+
+    /// ∇×E = −jωµ₀H and ∇×H = jωε₀E, although the sources are no closed circuits: each has the charges of its current.
+    #[test]
+    fn given_back_fields_obey_maxwell() {
+        let soil = Soil { relative_permittivity: 13.0, conductivity_s_per_m: 0.005 };
+        let reach = Reach { rho_max_m: 40.0, zeta_min_m: 0.3, zeta_max_m: 20.0 };
+        let earth = HalfSpace::for_wires(&soil, FREQUENCY_HZ, &reach).unwrap();
+        let omega = TAU * FREQUENCY_HZ;
+        let (permeability, permittivity) = (
+            Complex64::new(0.0, -omega * VACUUM_PERMEABILITY_H_PER_M),
+            Complex64::new(0.0, omega * VACUUM_PERMITTIVITY_F_PER_M),
+        );
+        for (at_m, source) in pairs() {
+            let dipole = dipole(&source);
+            let field = |at_m: Vec3| {
+                let mut sum = NearField::default();
+                for source in &dipole {
+                    let part = exactly(&earth, at_m, source);
+                    for axis in 0..3 {
+                        sum.e_v_per_m[axis] += part.e_v_per_m[axis];
+                        sum.h_a_per_m[axis] += part.h_a_per_m[axis];
+                    }
+                }
+                sum
+            };
+            let step_m = 0.005;
+            let beside = |axis: usize, sign: f64| {
+                let mut place_m = at_m;
+                place_m[axis] += sign * step_m;
+                field(place_m)
+            };
+            let sides: [[NearField; 2]; 3] =
+                std::array::from_fn(|axis| [beside(axis, 1.0), beside(axis, -1.0)]);
+            let curl = |pick: fn(&NearField) -> [Complex64; 3]| -> [Complex64; 3] {
+                let slope = |over: usize, of: usize| {
+                    (pick(&sides[over][0])[of] - pick(&sides[over][1])[of]) / (2.0 * step_m)
+                };
+                std::array::from_fn(|axis| {
+                    let (next, last) = ((axis + 1) % 3, (axis + 2) % 3);
+                    slope(next, last) - slope(last, next)
+                })
+            };
+            let here = field(at_m);
+            let (curl_e, curl_h) = (curl(|field| field.e_v_per_m), curl(|field| field.h_a_per_m));
+            let (of_h, of_e) =
+                (here.h_a_per_m.map(|h| h * permeability), here.e_v_per_m.map(|e| e * permittivity));
+            let errors = [norm(minus(curl_e, of_h)) / norm(of_h), norm(minus(curl_h, of_e)) / norm(of_e)];
+            assert!(errors.iter().all(|error| *error < 0.01), "{at_m:?}, {source:?}: {errors:?}");
+        }
+    }
+
+    /// Points and sources: level, upright, oblique; near, far, nearly straight above, on the ground.
+    fn pairs() -> Vec<(Vec3, PointSource)> {
+        let directions = [[1.0, 0.0, 0.0], [0.0, 0.0, 1.0], [0.48, 0.6, 0.64]];
+        let places = [
+            [2.5, 1.0, 1.7],
+            [0.01, 0.0, 2.0],
+            [0.5, 0.3, 0.0],
+            [-1.0, 3.0, 0.0],
+            [20.0, -9.0, 1.5],
+            [9.0, 30.0, 9.0],
+        ];
+        let source = |direction: Vec3| PointSource {
+            element: Element { position_m: [0.0, 0.0, 3.0], direction },
+            current_a_m: Complex64::ONE,
+            charge_c: Complex64::new(2e-8, -1e-8),
+        };
+        directions.into_iter().flat_map(|direction| places.map(|at_m| (at_m, source(direction)))).collect()
+    }
+
+    /// A short current with the charges at its ends.
+    fn dipole(source: &PointSource) -> [PointSource; 3] {
+        let length_m = 0.005;
+        let end = |sign: f64| {
+            let mut end = *source;
+            for (place, direction) in end.element.position_m.iter_mut().zip(source.element.direction) {
+                *place += 0.5 * sign * length_m * direction;
+            }
+            end.current_a_m = Complex64::ZERO;
+            // Q = I/jω where the current ends
+            end.charge_c = Complex64::new(0.0, -sign / (TAU * FREQUENCY_HZ * length_m)) * source.current_a_m;
+            end
+        };
+        [PointSource { charge_c: Complex64::ZERO, ..*source }, end(1.0), end(-1.0)]
+    }
+
+    fn given_back(earth: &HalfSpace, at_m: Vec3, source: &PointSource) -> NearField {
+        let mut field = NearField::default();
+        let kernels = |rho_m: &[f64], zeta_m: &[f64], rest: &mut [GroundKernels]| {
+            earth.remainders(rho_m, zeta_m, rest);
+        };
+        add_reflected(&mut field, at_m, std::slice::from_ref(source), &Steps::new(earth), kernels);
+        field
+    }
+
+    /// By the integrals, with much smaller steps.
+    fn exactly(earth: &HalfSpace, at_m: Vec3, source: &PointSource) -> NearField {
+        let k = earth.wave_number_rad_per_m();
+        let mut field = NearField::default();
+        let kernels = |rho_m: &[f64], zeta_m: &[f64], rest: &mut [GroundKernels]| {
+            for ((rho_m, zeta_m), rest) in rho_m.iter().zip(zeta_m).zip(rest) {
+                let (rho, zeta) = (k * rho_m, k * zeta_m);
+                let images = earth.static_weights().images(rho, zeta);
+                *rest = (exact_kernels(earth.permittivity(), rho, zeta) - images) * k;
+            }
+        };
+        let steps = Steps { longest_m: 0.01, ..Steps::new(earth) };
+        add_reflected(&mut field, at_m, std::slice::from_ref(source), &steps, kernels);
+        field
     }
 }

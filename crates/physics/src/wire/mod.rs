@@ -55,7 +55,7 @@ mod vector;
 pub use error::WireError;
 pub use load::{Load, Termination};
 pub use material::{Conductor, Insulation, Material, Metal};
-pub use point_source::PointSource;
+pub(crate) use point_source::{PointSource, point_sources};
 pub use power::{port_power_w, segment_loss_w};
 pub use reflection::{Element, Kernel, Reflection};
 pub use returned::Returned;
