@@ -20,8 +20,8 @@ impl Fed {
             vec![WireShape { vertices_m: vertices_m.to_vec(), radius_m: 1e-3, material: Material::PERFECT }];
         let ports = vec![PortPlace { wire: 0, arc_m: 2.0, gap_m: 0.02 }];
         let structure = Structure { wires, ports, boundary: Boundary::Soil(soil) };
-        let model = WireModel::new(structure, frequency_hz).unwrap();
-        let solution = model.solve(frequency_hz).unwrap();
+        let model = WireModel::new(structure, frequency_hz).expect("a sound structure");
+        let solution = model.solve(frequency_hz).expect("within the mesh");
         let currents = model.end_currents(&solution.coefficients_a_per_v, &[Complex64::ONE]);
         Self { model, soil, frequency_hz, currents }
     }
@@ -34,15 +34,15 @@ impl Fed {
         };
         let region = Region { low_m: corner(f64::min), high_m: corner(f64::max) };
         let reach = region.reach(self.model.segments());
-        let earth = HalfSpace::for_wires(&self.soil, self.frequency_hz, &reach).unwrap();
+        let earth = HalfSpace::for_wires(&self.soil, self.frequency_hz, &reach).expect("a soil");
         let source = NearFieldOverSoil::new(self.model.segments(), &self.currents, &earth);
         points_m.iter().map(|at_m| source.field(*at_m)).collect()
     }
 
     /// The same currents above another boundary.
     fn fields_above(&self, boundary: Boundary, points_m: &[[f64; 3]]) -> Vec<NearField> {
-        let source =
-            NearFieldSource::new(self.model.segments(), &self.currents, boundary, self.frequency_hz).unwrap();
+        let source = NearFieldSource::new(self.model.segments(), &self.currents, boundary, self.frequency_hz)
+            .expect("not over soil");
         points_m.iter().map(|at_m| source.field(*at_m)).collect()
     }
 }
