@@ -26,7 +26,7 @@ pub struct Region {
 
 /// The currents of a structure above soil at one frequency, ready for near fields.
 ///
-/// Error below 0.2 % of the field (measured against the reference cases and against the integrals), for wires and points
+/// Error 0.25 % of the field at most (measured against the reference cases and against the integrals), for wires and points
 /// within the reach of the soil's tables; farther points are right, and slow. Nearer than 0.002 wavelengths to the foot
 /// of a wire that stands on the soil the field is indicative: the current enters the soil at a point.
 pub struct NearFieldOverSoil<'a> {
