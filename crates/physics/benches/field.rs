@@ -4,9 +4,10 @@ use std::hint::black_box;
 
 use criterion::{Criterion, criterion_group, criterion_main};
 use num_complex::Complex64;
-use physics::earth::Soil;
+use physics::earth::{HalfSpace, Soil};
 use physics::field::{
-    FarFieldSource, NearFieldSource, earth_power_w, radiated_power_w, smoothed, strongest_direction,
+    FarFieldSource, NearFieldOverSoil, NearFieldSource, Region, earth_power_w, radiated_power_w, smoothed,
+    strongest_direction,
 };
 use physics::wire::{
     Boundary, Conductor, EndCurrents, Material, Metal, PortPlace, Structure, WireModel, WireShape,
@@ -94,6 +95,31 @@ fn near_fields(criterion: &mut Criterion) {
             points.map(|point| near.field(point).e_v_per_m[0].re).sum::<f64>()
         });
     });
+    near_fields_over_soil(criterion);
+}
+
+fn near_fields_over_soil(criterion: &mut Criterion) {
+    let soil = Soil { relative_permittivity: 13.0, conductivity_s_per_m: 5e-3 };
+    let (model, currents) = solved(SOIL, inverted_v(), FREQUENCY_HZ);
+    let finer = smoothed(model.segments(), &currents, SOIL, FREQUENCY_HZ, 0.25);
+    let region = Region { low_m: [-20.0, 0.0, 2.0], high_m: [20.0, 24.0, 2.0] };
+    let reach = region.reach(&finer.segments);
+    let earth = HalfSpace::for_wires(&soil, FREQUENCY_HZ, &reach).expect("a soil");
+    let mut group = criterion.benchmark_group("near field above soil");
+    group.bench_function("an earth for a region", |bencher| {
+        bencher.iter(|| HalfSpace::for_wires(&soil, FREQUENCY_HZ, black_box(&reach)));
+    });
+    group.bench_function("a source", |bencher| {
+        bencher.iter(|| black_box(NearFieldOverSoil::new(&finer.segments, &finer.currents, &earth)));
+    });
+    let near = NearFieldOverSoil::new(&finer.segments, &finer.currents, &earth);
+    group.bench_function("a point", |bencher| bencher.iter(|| near.field(black_box([3.0, 7.0, 2.0]))));
+    let wires = NearFieldSource::new(&finer.segments, &finer.currents, Boundary::FreeSpace, FREQUENCY_HZ)
+        .expect("free space");
+    group.bench_function("the wires' own part of it", |bencher| {
+        bencher.iter(|| wires.field(black_box([3.0, 7.0, 2.0])));
+    });
+    group.finish();
 }
 
 criterion_group!(benches, far_fields, earth, near_fields);

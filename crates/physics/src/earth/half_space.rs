@@ -68,7 +68,8 @@ impl HalfSpace {
     /// As [`HalfSpace::new`], but for the least height.
     pub fn for_wires(soil: &Soil, frequency_hz: f64, reach: &Reach) -> Result<Self, EarthError> {
         let lowest_m = LOWEST_ZETA / wave_number_rad_per_m(frequency_hz);
-        let per_m = wave_number_rad_per_m(frequency_hz).recip();
+        // The limits themselves shall not fall out by rounding.
+        let per_m = (1.0 - 1e-12) / wave_number_rad_per_m(frequency_hz);
         let zeta_min_m = reach.zeta_min_m.clamp(lowest_m, ZETA_MAX * per_m);
         let zeta_max_m = reach.zeta_max_m.clamp(zeta_min_m, ZETA_MAX * per_m);
         let rho_max_m = reach.rho_max_m.min(RHO_MAX * per_m);

@@ -40,7 +40,8 @@ struct Filament {
 }
 
 impl NearFieldSource {
-    /// The source for currents at the ends of segments (A peak); `None` over soil, whose near field is not offered.
+    /// The source for currents at the ends of segments (A peak); `None` over soil, which
+    /// [`super::NearFieldOverSoil`] serves.
     ///
     /// Segments must be shorter than half a wave, as those of a mesh are.
     #[must_use]
@@ -51,13 +52,23 @@ impl NearFieldSource {
         frequency_hz: f64,
     ) -> Option<Self> {
         let k = wave_number_rad_per_m(frequency_hz);
-        let wires = segments.iter().zip(currents).map(|(segment, ends)| Filament::new(segment, ends, k));
-        let filaments = match boundary {
+        let mut source = Self::in_free_space(segments, currents, k);
+        match boundary {
             Boundary::Soil(_) => return None,
-            Boundary::FreeSpace => wires.collect(),
-            Boundary::Mirror => wires.flat_map(|filament| [filament, filament.image()]).collect(),
-        };
-        Some(Self { k, boundary, filaments })
+            Boundary::FreeSpace => {}
+            Boundary::Mirror => {
+                let images: Vec<Filament> = source.filaments.iter().map(Filament::image).collect();
+                source.filaments.extend(images);
+                source.boundary = boundary;
+            }
+        }
+        Some(source)
+    }
+
+    /// Of the wires alone.
+    pub(super) fn in_free_space(segments: &[Segment], currents: &[EndCurrents], k: f64) -> Self {
+        let wires = segments.iter().zip(currents).map(|(segment, ends)| Filament::new(segment, ends, k));
+        Self { k, boundary: Boundary::FreeSpace, filaments: wires.collect() }
     }
 
     /// The field at a point, m; none below a mirror.

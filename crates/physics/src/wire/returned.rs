@@ -6,7 +6,7 @@ use num_complex::Complex64;
 
 use super::panels::Panels;
 use super::reflection::{Kernel, Reflection};
-use super::segment::EndCurrents;
+use super::segment::{EndCurrents, Segment};
 use super::shapes::Shapes;
 use super::solution::WireModel;
 use crate::constants::{VACUUM_PERMEABILITY_H_PER_M, VACUUM_PERMITTIVITY_F_PER_M, wave_number_rad_per_m};
@@ -34,19 +34,7 @@ impl WireModel {
     ) -> Option<Returned<'_>> {
         let panels = self.panels()?;
         let k = wave_number_rad_per_m(frequency_hz);
-        let mut at_nodes = vec![[Complex64::ZERO; 2]; panels.nodes.len()];
-        for (index, (segment, ends)) in self.segments().iter().zip(currents).enumerate() {
-            let shapes = Shapes::new(k, segment.length_m());
-            for span in panels.spans(index) {
-                let weights = span.weights(&shapes);
-                for node in 0..span.nodes {
-                    let [current, slope] = &mut at_nodes[span.first_node + node];
-                    *current +=
-                        ends.from_a * weights.current_m[0][node] + ends.to_a * weights.current_m[1][node];
-                    *slope += ends.from_a * weights.slope_m[0][node] + ends.to_a * weights.slope_m[1][node];
-                }
-            }
-        }
+        let at_nodes = at_nodes(panels, self.segments(), currents, k);
         // q = −I'/jω;  Φ = ∫ q·K/4πε₀,  jωA = jωµ₀/4π·∫ I·K
         let charge =
             Complex64::new(0.0, k / (TAU * frequency_hz)) / (2.0 * TAU * VACUUM_PERMITTIVITY_F_PER_M);
@@ -69,6 +57,28 @@ impl WireModel {
         }
         Some(returned)
     }
+}
+
+/// ∫ I·L ds and ∫ k⁻¹·I'·L ds of each node, A·m.
+pub(super) fn at_nodes(
+    panels: &Panels,
+    segments: &[Segment],
+    currents: &[EndCurrents],
+    k: f64,
+) -> Vec<[Complex64; 2]> {
+    let mut at_nodes = vec![[Complex64::ZERO; 2]; panels.nodes.len()];
+    for (index, (segment, ends)) in segments.iter().zip(currents).enumerate() {
+        let shapes = Shapes::new(k, segment.length_m());
+        for span in panels.spans(index) {
+            let weights = span.weights(&shapes);
+            for node in 0..span.nodes {
+                let [current, slope] = &mut at_nodes[span.first_node + node];
+                *current += ends.from_a * weights.current_m[0][node] + ends.to_a * weights.current_m[1][node];
+                *slope += ends.from_a * weights.slope_m[0][node] + ends.to_a * weights.slope_m[1][node];
+            }
+        }
+    }
+    at_nodes
 }
 
 impl Returned<'_> {
