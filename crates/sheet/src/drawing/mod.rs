@@ -93,6 +93,7 @@ fn paint(
         let corners = site::load_outline(load, sight);
         labels.avoid(&[corners[0], corners[2]]);
         labels.avoid(&[corners[1], corners[3]]);
+        labels.avoid(&[corners[0], corners[1], corners[2], corners[3], corners[0]]);
         items.push(site::load(corners));
     }
     labels.avoid(&[sight.spot(elevation.feedpoint), sight.spot(elevation.entrance)]);
