@@ -13,7 +13,11 @@ use station::units::Units;
 
 fn sheets(criterion: &mut Criterion) {
     let request = SheetRequest { paper: Paper::A4, units: Units::Metres, date: support::DATE };
-    for (name, plan) in [("12 bands", support::relief_post()), ("30 bands", support::long_list())] {
+    for (name, plan) in [
+        ("12 bands", support::relief_post()),
+        ("12 bands, three wires, loads", support::traps_and_arms()),
+        ("30 bands", support::long_list()),
+    ] {
         let station = support::station(name, plan);
         let (plan, report) = (&station.plan, &station.report);
         criterion.bench_function(&format!("layout, {name}"), |b| {

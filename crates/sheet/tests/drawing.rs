@@ -7,6 +7,7 @@ mod support;
 use proptest::prelude::*;
 use sheet::drawing::{Elevation, SideView, Size, side_view};
 use sheet::scene::{Item, Spot, overlap};
+use sheet::tokens::{Ink, Stroke};
 use station::hang::hang;
 use station::plan::{PathPoint, Plan, Point, Support, SupportKind};
 use station::units::Units;
@@ -99,7 +100,7 @@ proptest! {
                 .map(|pair| (pair[1].along_m - pair[0].along_m).hypot(pair[1].up_m - pair[0].up_m))
                 .sum();
             let drawn = view.scene.items.iter().any(|item| match item {
-                Item::Line { points, stroke: sheet::tokens::Stroke::Wire, .. } => {
+                Item::Line { points, stroke: Stroke::Wire, .. } => {
                     let paper_mm: f64 = points
                         .windows(2)
                         .map(|pair| (pair[1].x_mm - pair[0].x_mm).hypot(pair[1].y_mm - pair[0].y_mm))
@@ -139,6 +140,40 @@ fn what_the_crew_measures_is_on_the_drawing_of_the_fixtures() {
         for fastening in &elevation.fastenings {
             let height = Units::Metres.tape(fastening.at.up_m - fastening.foot_m);
             assert!(said.contains(&height.as_str()), "{}: no height {height} in {said:?}", station.name);
+        }
+    }
+}
+
+/// The line that ties a label to its place stays in the air where the air has room.
+#[test]
+fn no_leader_runs_through_the_earth() {
+    for station in support::stations() {
+        let hung = hang(&station.plan).unwrap();
+        let elevation = Elevation::new(&station.plan, &hung);
+        // An entrance far below the feet is reached through the earth only.
+        if elevation.entrance.up_m < 0.0 {
+            continue;
+        }
+        for units in [Units::Metres, Units::Feet] {
+            let scene = drawn(&station.plan, units).unwrap().scene;
+            let earth = scene.items.iter().find_map(|item| match item {
+                Item::Area { points, fill: Ink::Earth, .. } => Some(points.clone()),
+                _ => None,
+            });
+            let surface = earth.unwrap();
+            let surface = &surface[..surface.len() / 2];
+            let level_mm = |x_mm: f64| {
+                let pair = surface.windows(2).find(|pair| x_mm <= pair[1].x_mm).unwrap();
+                let share = (x_mm - pair[0].x_mm) / (pair[1].x_mm - pair[0].x_mm);
+                pair[0].y_mm + share * (pair[1].y_mm - pair[0].y_mm)
+            };
+            for item in &scene.items {
+                let Item::Line { points, stroke: Stroke::Hair, ink: Ink::Faint } = item else { continue };
+                let depth_mm = |spot: Spot| spot.y_mm - level_mm(spot.x_mm);
+                let (from, to) = (depth_mm(points[0]), depth_mm(points[1]));
+                let dips = from.min(to) < -0.5 && from.max(to) > 0.5;
+                assert!(!dips, "{}, {units:?}: a line through the earth, {points:?}", station.name);
+            }
         }
     }
 }

@@ -3,7 +3,7 @@
 use station::units::Units;
 
 use super::elevation::{Elevation, Fastening, Piece, Place};
-use super::labels::{AROUND, Labels, along, spots_on};
+use super::labels::{AROUND, DOWN_FIRST, Labels, along, spots_on};
 use super::scale::Sight;
 use crate::fonts;
 use crate::scene::{Anchor, Frame, Item, Spot, Text};
@@ -211,11 +211,7 @@ pub(super) fn names(
             let (from, to) = (sight.spot(pair[0]), sight.spot(pair[1]));
             if labels.put(along(from, to, TextStyle::Body, &words, 1.0)).is_none() {
                 let text = Text::new(0.0, 0.0, TextStyle::Body, words);
-                labels.put_near(
-                    &spots_on(from, to),
-                    &text,
-                    &[(0.0, 1.0), (0.71, 0.71), (-0.71, 0.71), (0.0, -1.0), (0.71, -0.71), (-0.71, -0.71)],
-                );
+                labels.put_near(&spots_on(from, to), &text, &DOWN_FIRST);
             }
         }
     }

@@ -13,6 +13,8 @@ const LINE_MM: f64 = 0.3;
 const LEADER_FROM_MM: f64 = 4.0;
 /// What a label may stand farther off so that its line crosses one line less, mm.
 const CROSSING_MM: f64 = 6.0;
+/// The same so that its line does not run through the earth: farther than any label stands.
+const EARTH_CROSSING_MM: f64 = 40.0;
 /// How far from its place a label may stand, mm.
 const DISTANCES_MM: [f64; 8] = [1.2, 3.0, 5.0, 8.0, 12.0, 17.0, 23.0, 30.0];
 
@@ -21,6 +23,7 @@ pub(super) struct Labels {
     frame: Frame,
     texts: Vec<[Spot; 4]>,
     lines: Vec<[Spot; 4]>,
+    earth: Vec<[Spot; 4]>,
     items: Vec<Item>,
     unplaced: Vec<String>,
 }
@@ -28,12 +31,25 @@ pub(super) struct Labels {
 impl Labels {
     /// An empty drawing.
     pub fn new(frame: Frame) -> Self {
-        Self { frame, texts: Vec::new(), lines: Vec::new(), items: Vec::new(), unplaced: Vec::new() }
+        Self {
+            frame,
+            texts: Vec::new(),
+            lines: Vec::new(),
+            earth: Vec::new(),
+            items: Vec::new(),
+            unplaced: Vec::new(),
+        }
     }
 
     /// Keeps labels off a line.
     pub fn avoid(&mut self, points: &[Spot]) {
         self.lines.extend(points.windows(2).map(|pair| ribbon(pair[0], pair[1])));
+    }
+
+    /// Keeps labels off the earth's surface, and the lines that tie them out of the earth.
+    pub fn avoid_earth(&mut self, surface: &[Spot]) {
+        self.avoid(surface);
+        self.earth.extend(surface.windows(2).map(|pair| ribbon(pair[0], pair[1])));
     }
 
     /// Draws a line and keeps labels off it.
@@ -78,7 +94,7 @@ impl Labels {
                 if !self.is_free(&tied.text) || !self.is_clear(&tied) {
                     continue;
                 }
-                let cost_mm = distance_mm + CROSSING_MM * self.crossed_lines(&tied) as f64;
+                let cost_mm = distance_mm + self.crossings_mm(&tied);
                 if best.as_ref().is_none_or(|(least_mm, _)| cost_mm < *least_mm) {
                     best = Some((cost_mm, tied));
                 }
@@ -110,15 +126,16 @@ impl Labels {
         !self.texts.iter().any(|taken| overlap(&ribbon, taken))
     }
 
-    /// How many lines the one that ties a label crosses, but for those that it begins at.
-    fn crossed_lines(&self, tied: &Tied) -> usize {
-        let Some([from, to]) = tied.leader else { return 0 };
+    /// What the lines cost that the one that ties a label crosses, but for those that it begins at.
+    fn crossings_mm(&self, tied: &Tied) -> f64 {
+        let Some([from, to]) = tied.leader else { return 0.0 };
         let length_mm = (to.x_mm - from.x_mm).hypot(to.y_mm - from.y_mm);
         let share = (CLEAR_MM + 2.0 * LINE_MM) / length_mm;
         let begun =
             Spot::new(from.x_mm + share * (to.x_mm - from.x_mm), from.y_mm + share * (to.y_mm - from.y_mm));
         let ribbon = ribbon(begun, to);
-        self.lines.iter().filter(|line| overlap(&ribbon, line)).count()
+        let crossed = |lines: &[[Spot; 4]]| lines.iter().filter(|line| overlap(&ribbon, line)).count() as f64;
+        CROSSING_MM * crossed(&self.lines) + EARTH_CROSSING_MM * crossed(&self.earth)
     }
 }
 
@@ -156,6 +173,26 @@ pub(super) const AROUND: [(f64, f64); 16] = [
     (-0.38, 0.92),
     (0.38, -0.92),
     (-0.38, -0.92),
+];
+
+/// The same, those first that leave a slanting line most clearly.
+pub(super) const DOWN_FIRST: [(f64, f64); 16] = [
+    (0.0, 1.0),
+    (0.71, 0.71),
+    (-0.71, 0.71),
+    (0.0, -1.0),
+    (0.71, -0.71),
+    (-0.71, -0.71),
+    (0.38, 0.92),
+    (-0.38, 0.92),
+    (0.38, -0.92),
+    (-0.38, -0.92),
+    (0.92, 0.38),
+    (-0.92, 0.38),
+    (0.92, -0.38),
+    (-0.92, -0.38),
+    (1.0, 0.0),
+    (-1.0, 0.0),
 ];
 
 /// Spots along a line, its middle first.

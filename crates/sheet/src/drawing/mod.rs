@@ -77,7 +77,7 @@ fn paint(
     let items = &mut scene.items;
     let surface = site::surface(elevation, sight, frame.left_mm, frame.right_mm());
     site::earth(&surface, items);
-    labels.avoid(&surface);
+    labels.avoid_earth(&surface);
     labels.avoid(&site::foot_of_earth(&surface));
     for support in &elevation.supports {
         site::support(support, sight, items);

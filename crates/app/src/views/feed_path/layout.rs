@@ -24,6 +24,8 @@ const BETWEEN: f32 = 10.0;
 const MOST_BETWEEN: f32 = 30.0;
 /// The wire and its watts.
 const WIRE: f32 = 76.0;
+/// The same where its watts stand one below the other.
+const NARROW_WIRE: f32 = WIRE + LINE;
 /// The path's own share of a column's width.
 const INSET: f32 = 4.0;
 /// What is left of a path without watts.
@@ -53,7 +55,7 @@ pub struct Path {
 pub fn height(columns: &[Column<'_>], width: f32, available: f32) -> f32 {
     let links = columns.iter().map(|column| column.blocks.len()).max().unwrap_or(0) as f32;
     let block = block_height(width);
-    let with = |between: f32| HEAD + TRANSMITTER + links * (between + block) + between + WIRE;
+    let with = |between: f32| HEAD + TRANSMITTER + links * (between + block) + between + wire_height(width);
     available.clamp(with(BETWEEN), with(MOST_BETWEEN))
 }
 
@@ -65,6 +67,10 @@ pub fn is_narrow(width: f32) -> bool {
 
 fn block_height(width: f32) -> f32 {
     NAME + LINE * if is_narrow(width) { 6.0 } else { 3.0 } + 2.0 * BLOCK_PAD + 2.0
+}
+
+fn wire_height(width: f32) -> f32 {
+    if is_narrow(width) { NARROW_WIRE } else { WIRE }
 }
 
 /// The line of a block's name.
@@ -97,7 +103,7 @@ pub fn path(column: &Column<'_>, place: usize, width: f32, area: Rect) -> Path {
     let at = |top: f32, height: f32| Rect::from_x_y_ranges(x, top..=top + height);
     let head = at(area.top(), HEAD);
     let transmitter = at(head.bottom(), TRANSMITTER);
-    let wire = at(area.bottom() - WIRE, WIRE);
+    let wire = at(area.bottom() - wire_height(width), wire_height(width));
     let count = column.blocks.len() as f32;
     let height = block_height(width);
     let free = wire.top() - transmitter.bottom() - count * height;

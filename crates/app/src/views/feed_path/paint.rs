@@ -92,15 +92,16 @@ pub(super) fn transmitter(ui: &egui::Ui, view: &View<'_>, response: &Response) {
     frame(ui, rect, view, response, view.picked == Some(Picked::Transmitter));
     let inner = rect.shrink2(vec2(6.0, 2.0));
     let style = ui.style();
-    let mut words = LayoutJob::default();
-    if !layout::is_narrow(rect.width()) {
-        words.append("transmitter", 0.0, piece(TextStyle::Small.resolve(style), color(Ink::Faint, ground)));
-    }
+    let faint = piece(TextStyle::Small.resolve(style), color(Ink::Faint, ground));
+    let words = LayoutJob::single_section("transmitter".to_owned(), faint);
     let power = view.column.given();
     let strong = piece(TextStyle::Body.resolve(style), color(Ink::Text, ground));
     let power = marks::one_line(ui.painter(), LayoutJob::single_section(power, strong), inner.width());
     let left = inner.right() - power.size().x;
-    text_in(ui.painter(), inner.with_max_x(left - 4.0), words);
+    // The word goes where the watts leave room for all of it.
+    if ui.painter().layout_job(words.clone()).size().x < left - 4.0 - inner.left() {
+        text_in(ui.painter(), inner, words);
+    }
     ui.painter().galley(pos2(left, inner.center().y - 0.5 * power.size().y), power, Color32::PLACEHOLDER);
 }
 
@@ -180,9 +181,16 @@ pub(super) fn wire(ui: &egui::Ui, view: &View<'_>) {
     };
     centred(5.0, units::watts(wire.watts), TextStyle::Heading, Ink::Text);
     centred(26.0, "to the wire".to_owned(), TextStyle::Small, Ink::Faint);
-    let ends = [("sky", wire.sky_w), ("earth", wire.earth_w), ("heat", wire.heat_w)];
-    let ends: Vec<String> =
-        ends.iter().map(|(name, watts)| format!("{name} {}", units::watts(*watts))).collect();
-    centred(41.0, ends[..2].join("   "), TextStyle::Small, Ink::Text);
-    centred(56.0, ends[2].clone(), TextStyle::Small, Ink::Faint);
+    let [sky, earth, heat] = [("sky", wire.sky_w), ("earth", wire.earth_w), ("heat", wire.heat_w)]
+        .map(|(name, watts)| format!("{name} {}", units::watts(watts)));
+    let lines = if layout::is_narrow(rect.width()) {
+        vec![(sky, Ink::Text), (earth, Ink::Text), (heat, Ink::Faint)]
+    } else {
+        vec![(format!("{sky}   {earth}"), Ink::Text), (heat, Ink::Faint)]
+    };
+    let mut top = 41.0;
+    for (text, ink) in lines {
+        centred(top, text, TextStyle::Small, ink);
+        top += 15.0;
+    }
 }

@@ -10,10 +10,10 @@ const GAP: f32 = 10.0;
 /// Space left free at the right edge, for the scroll bar.
 const EDGE: f32 = 18.0;
 /// Height of one feed's gauge and the space below it.
-const GAUGE: f32 = 20.0;
+const GAUGE: f32 = 21.0;
 const GAUGE_GAP: f32 = 2.0;
 /// Height of the bar below a gauge's words.
-const TRACK: f32 = 3.0;
+const TRACK: f32 = 4.0;
 /// Space above and below the content of a lane.
 const PAD: f32 = 4.0;
 /// A lane with one feed still needs two lines for its name.
@@ -44,7 +44,7 @@ pub fn columns(x: Rangef, feeds: usize) -> Columns {
     let (pin, name, impedance) = (16.0, if width < 760.0 { 112.0 } else { 124.0 }, 78.0);
     let free = (width - pin - name - impedance - (3.0 + count) * GAP - EDGE).max(120.0);
     // Where room is short, words need it more than pictures.
-    let pictures = if free < 500.0 { (0.14, 0.27) } else { (0.19, 0.32) };
+    let pictures = if free < 500.0 { (0.14, 0.24) } else { (0.19, 0.32) };
     let wave = (pictures.0 * free).clamp(44.0, 190.0);
     let strip = (pictures.1 * free / count).clamp(34.0, 180.0);
     let gauge = free - wave - count * strip;

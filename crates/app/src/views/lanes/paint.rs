@@ -4,9 +4,11 @@ use eframe::egui::epaint::Mesh;
 use eframe::egui::text::LayoutJob;
 use eframe::egui::{self, Pos2, Rect, Shape, Stroke, StrokeKind, TextStyle, pos2, vec2};
 use sheet::tokens::{Ground, Ink, Pattern, Pen};
+use station::report::VerdictKind;
 use station::units;
 
 use super::layout;
+use super::model::Ends;
 use super::row::Row;
 use crate::theme::{color, color_with_opacity};
 use crate::views::marks::{self, piece, text_in};
@@ -17,6 +19,13 @@ const CURRENT_FILL: f32 = 0.38;
 const AFTER_FILL: f32 = 0.28;
 /// Half the side of a channel's mark.
 const CHANNEL_MARK: f32 = 2.5;
+/// How strongly the watts of the earth show.
+const EARTH_FILL: f32 = 0.75;
+/// Where a gauge's words begin, right of its letter and sign, and what they keep from its watts.
+const WORDS_LEFT: f32 = 29.0;
+const WORDS_GAP: f32 = 6.0;
+/// Least room for a verdict's reason.
+const LEAST_REASON: f32 = 150.0;
 
 /// Name and frequencies.
 pub(super) fn name(ui: &egui::Ui, row: &Row<'_>) {
@@ -164,7 +173,6 @@ pub(super) fn gauge(ui: &egui::Ui, row: &Row<'_>, feed: usize) {
     let ground = row.snapshot.ground;
     let rect = layout::gauge(row.rect, row.columns.gauge, feed, row.names.len());
     let kind = found.verdict.kind;
-    let power_w = row.snapshot.plan.transmitter.power_w;
     let painter = ui.painter();
     let text = layout::gauge_text(rect);
     let style = ui.style();
@@ -172,12 +180,21 @@ pub(super) fn gauge(ui: &egui::Ui, row: &Row<'_>, feed: usize) {
     let small = |ink: Ink| piece(TextStyle::Small.resolve(style), color(ink, ground));
 
     let Some(ends) = row.lane.ends(feed) else { return };
-    let mut watts = LayoutJob::default();
-    if ends.earth_w >= 0.5 {
-        watts.append(&format!("earth {}", units::watts(ends.earth_w)), 0.0, small(Ink::Faint));
-    }
-    watts.append(&units::watts(ends.sky_w), 6.0, body(Ink::Text));
-    let watts = marks::one_line(painter, watts, text.width());
+    let mut words = LayoutJob::default();
+    words.append(kind.words(), 0.0, body(Ink::Text));
+    words.append(&row.lane.covered(feed), 8.0, small(Ink::Text));
+    // The verdict comes before the earth's watts: the bar and the hover sentence tell those, too.
+    let taken = WORDS_LEFT + painter.layout_job(words.clone()).size().x + WORDS_GAP;
+    let sky = LayoutJob::single_section(units::watts(ends.sky_w), body(Ink::Text));
+    let mut both = LayoutJob::default();
+    both.append(&format!("earth {}", units::watts(ends.earth_w)), 0.0, small(Ink::Faint));
+    both.append(&units::watts(ends.sky_w), 6.0, body(Ink::Text));
+    let both = painter.layout_job(both);
+    let watts = if ends.earth_w >= 0.5 && taken + both.size().x <= text.width() {
+        both
+    } else {
+        marks::one_line(painter, sky, text.width())
+    };
     let watts_left = text.right() - watts.size().x;
     painter.galley(
         pos2(watts_left, text.center().y - 0.5 * watts.size().y),
@@ -187,20 +204,30 @@ pub(super) fn gauge(ui: &egui::Ui, row: &Row<'_>, feed: usize) {
     let letter = LayoutJob::single_section(marks::letter(feed).to_string(), body(Ink::feed(feed)));
     text_in(painter, text, letter);
     marks::verdict(painter, pos2(text.left() + 19.0, text.center().y), 4.8, kind, ground);
-    let mut words = LayoutJob::default();
-    words.append(kind.words(), 0.0, body(Ink::Text));
-    words.append(&row.lane.covered(feed), 8.0, small(Ink::Text));
-    if !found.verdict.reason.is_empty() {
+    // A reason cut to a few letters says nothing.
+    if !found.verdict.reason.is_empty() && watts_left - text.left() - taken > LEAST_REASON {
         words.append(&found.verdict.reason, 8.0, small(Ink::Faint));
     }
-    text_in(painter, Rect::from_x_y_ranges(text.left() + 29.0..=watts_left - 6.0, text.y_range()), words);
+    let words_box = Rect::from_x_y_ranges(text.left() + WORDS_LEFT..=watts_left - WORDS_GAP, text.y_range());
+    text_in(painter, words_box, words);
+    watts_bar(painter, row, (rect, at.watts_to_wire, ends), kind);
+}
 
-    let track = layout::gauge_track(rect);
+/// A bar as long as the transmitter's watts: filled what leaves for the sky, brown what the earth takes, outlined what
+/// the wire itself turns into heat.
+fn watts_bar(
+    painter: &egui::Painter,
+    row: &Row<'_>,
+    (gauge, to_wire_w, ends): (Rect, f64, Ends),
+    kind: VerdictKind,
+) {
+    let ground = row.snapshot.ground;
+    let power_w = row.snapshot.plan.transmitter.power_w;
+    let track = layout::gauge_track(gauge);
     let least = layout::filled(track, row.snapshot.plan.least_share_to_wire, 1.0).right();
     painter.rect_filled(track, 1.0, color(Ink::Raised, ground));
-    // To the wire; of it to the soil and the sky; of it to the sky.
     let ink = color(marks::verdict_ink(kind), ground);
-    let arrived = layout::filled(track, at.watts_to_wire, power_w);
+    let arrived = layout::filled(track, to_wire_w, power_w);
     painter.rect_stroke(
         arrived,
         1.0,
@@ -208,7 +235,7 @@ pub(super) fn gauge(ui: &egui::Ui, row: &Row<'_>, feed: usize) {
         StrokeKind::Inside,
     );
     let away = layout::filled(track, ends.sky_w + ends.earth_w, power_w);
-    painter.rect_filled(away, 1.0, color(Ink::Earth, ground));
+    painter.rect_filled(away, 1.0, color_with_opacity(Ink::Support, ground, EARTH_FILL));
     painter.rect_filled(layout::filled(track, ends.sky_w, power_w), 1.0, ink);
     painter.vline(least, track.y_range(), marks::stroke(Pen::Curve, Ink::Text, ground));
 }

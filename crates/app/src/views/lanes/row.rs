@@ -39,7 +39,7 @@ pub(super) fn header(
     };
     title(
         columns.wave,
-        "standing wave".into(),
+        if columns.wave.span() < 84.0 { "wave" } else { "standing wave" }.into(),
         Ink::Faint,
         "The wire stretched out: filled, the current at the moment it peaks; the line, the voltage a quarter of a \
          cycle later; the ring, the feedpoint.",

@@ -10,14 +10,19 @@ use crate::views::soil;
 
 /// Room for the pick list and both buttons, px.
 const ROOM_PX: [f32; 2] = [330.0, 24.0];
-/// Distance from the plot's edge, px.
+/// Distance from the plot's right and lower edge, px.
 const EDGE_PX: f32 = 8.0;
+const LOWER_EDGE_PX: f32 = 3.0;
+
+/// Where it stands in the plot.
+pub fn place(plot: Rect) -> Rect {
+    let size = vec2(ROOM_PX[0].min(plot.width() - 2.0 * EDGE_PX), ROOM_PX[1]);
+    let corner = pos2(plot.right() - EDGE_PX - size.x, plot.bottom() - LOWER_EDGE_PX - size.y);
+    Rect::from_min_size(corner, size)
+}
 
 /// Shows the soil and listens.
-pub fn show(ui: &mut Ui, plot: Rect, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {
-    let size = vec2(ROOM_PX[0].min(plot.width() - 2.0 * EDGE_PX), ROOM_PX[1]);
-    let corner = pos2(plot.right() - EDGE_PX - size.x, plot.bottom() - EDGE_PX - size.y);
-    let place = Rect::from_min_size(corner, size);
+pub fn show(ui: &mut Ui, place: Rect, snapshot: &Snapshot<'_>, out: &mut Vec<Command>) {
     let earth = &snapshot.plan.site.earth;
     ui.scope_builder(UiBuilder::new().max_rect(place).layout(Layout::right_to_left(Align::Center)), |ui| {
         for (name, step, sentence) in [

@@ -9,6 +9,7 @@ use station::units::Units;
 use sheet::model::LoadKind;
 
 use super::grip::Grip;
+use super::ground;
 use super::model::Model;
 use super::rulers::{self, Tick};
 use super::side_view::SideView;
@@ -134,6 +135,8 @@ pub struct Layout<'a> {
     pub legend: Option<Rect>,
     /// Where the buttons go.
     pub buttons: Rect,
+    /// Where the soil is chosen.
+    pub soil: Rect,
 }
 
 /// The plot between the rulers.
@@ -150,7 +153,7 @@ pub fn stage(plot: Rect) -> Rect {
     let side = (0.07 * plot.width()).clamp(40.0, 110.0);
     Rect::from_min_max(
         pos2(plot.left() + side, plot.top() + top),
-        pos2(plot.right() - side, plot.bottom() - 38.0),
+        pos2(plot.right() - side, ground::place(plot).top() - 27.0),
     )
 }
 
@@ -206,6 +209,7 @@ impl<'a> Layout<'a> {
             texts: Vec::new(),
             legend: None,
             buttons: Rect::from_min_size(corner, asking.buttons),
+            soil: ground::place(plot),
             view,
         };
         layout.lay_waves(model, asking);
@@ -252,6 +256,24 @@ impl<'a> Layout<'a> {
         }
     }
 
+    /// Where a grip stands beside the others: at its thing, else off it the usual way, else where the plot has room.
+    fn free_place(&self, anchor: Pos2, away: Vec2, taken: &[Pos2]) -> Pos2 {
+        const FARTHEST: u8 = 5;
+        let is_free = |at: Pos2| taken.iter().all(|t| t.distance(at) > GRIP_GAP_PX - 0.5);
+        if is_free(anchor) {
+            return anchor;
+        }
+        // What the hand has moved out of the plot has no place in it.
+        let room = self.view.frame.shrink(0.5 * GRIP_PX);
+        let in_room = |at: Pos2| !room.contains(anchor) || (room.contains(at) && !self.soil.contains(at));
+        let ways = [away, away.rot90(), -away.rot90(), -away];
+        let places = ways
+            .into_iter()
+            .flat_map(|way| (1..=FARTHEST).map(move |step| anchor + way * GRIP_GAP_PX * f32::from(step)));
+        let mut free = places.filter(|at| is_free(*at) && in_room(*at));
+        free.next().unwrap_or(anchor + away * GRIP_GAP_PX * f32::from(FARTHEST))
+    }
+
     fn lay_handles(&mut self, model: &Model<'_>) {
         let grips = model.grips();
         // Those that are taken hold of most stand at their things; the others give way.
@@ -262,13 +284,7 @@ impl<'a> Layout<'a> {
         for n in order {
             let Some(place) = model.place(grips[n]) else { continue };
             let anchor = self.view.at(place);
-            let away = way_out(model, &self.view, grips[n]);
-            let mut at = anchor;
-            let mut tries = 0;
-            while tries < 5 && taken.iter().any(|t| t.distance(at) < GRIP_GAP_PX - 0.5) {
-                at += away * GRIP_GAP_PX;
-                tries += 1;
-            }
+            let at = self.free_place(anchor, way_out(model, &self.view, grips[n]), &taken);
             taken.push(at);
             places[n] = Some((anchor, at));
         }

@@ -108,7 +108,7 @@ pub fn show(ui: &mut Ui, snapshot: &Snapshot<'_>, state: &mut YardState, out: &m
         state.by_hand = false;
         state.camera = None;
     }
-    ground::show(ui, plot, snapshot, out);
+    ground::show(ui, layout.soil, snapshot, out);
     hints(ui, &bench, &look, state);
     let_go(ui, &backdrop, state);
 }

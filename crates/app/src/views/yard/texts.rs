@@ -51,6 +51,7 @@ impl<'a> Layout<'a> {
     pub(super) fn lay_texts(&mut self, model: &Model<'_>, asking: &Asking<'a>, measure: &Measure<'_>) {
         let mut writer = Writer { board: Board::new(self.view.frame), measure, texts: Vec::new() };
         writer.board.block(self.buttons);
+        writer.board.block(self.soil);
         self.write_heading(&mut writer, asking);
         self.block_things(&mut writer.board);
         self.write_legend(&mut writer, asking);
@@ -83,14 +84,17 @@ impl<'a> Layout<'a> {
         writer.texts.push(Text { rect, text: text.clone(), ink: Ink::Text, size: Type::Body });
     }
 
-    /// The legend goes under the heading, if nothing else is there.
+    /// The legend goes under the heading or, if something else is there, into the earth beside the soil.
     fn write_legend(&mut self, writer: &mut Writer<'_, '_>, asking: &Asking<'_>) {
         let Some(heading) = writer.texts.first().map(|text| text.rect) else { return };
+        if asking.band.is_none() || self.marks.is_empty() {
+            return;
+        }
         let beside_buttons = heading.left() + LEGEND.x < self.buttons.left();
         let top = if beside_buttons { heading.bottom() } else { self.buttons.bottom().max(heading.bottom()) };
-        let legend = Rect::from_min_size(pos2(heading.left(), top + 4.0), LEGEND);
-        let wanted = asking.band.is_some() && !self.marks.is_empty();
-        self.legend = (wanted && writer.board.take(legend)).then_some(legend);
+        let tops = [top + 4.0, self.soil.center().y - 0.5 * LEGEND.y];
+        let mut places = tops.map(|top| Rect::from_min_size(pos2(heading.left(), top), LEGEND)).into_iter();
+        self.legend = places.find(|place| writer.board.take(*place));
     }
 
     /// Labels keep out of the wave, the lines, the supports and the grips.
@@ -116,6 +120,9 @@ impl<'a> Layout<'a> {
         }
         for handle in self.handles.iter().filter(|h| !h.grip.is_new_point()) {
             board.block(Rect::from_center_size(handle.at, Vec2::splat(14.0)));
+            if handle.at != handle.anchor {
+                block_line(board, handle.anchor, handle.at);
+            }
         }
     }
 
@@ -126,7 +133,7 @@ impl<'a> Layout<'a> {
                 anchor,
                 std::slice::from_ref(&support.name),
                 (Ink::Text, Type::Small),
-                &[Side::Below],
+                &[Side::Below, Side::BelowRight, Side::BelowLeft],
                 (11.0, 26.0),
             );
         }

@@ -6,7 +6,9 @@ use station::evaluate::Evaluator;
 use station::plan::Plan;
 use station::units::Units;
 
-use super::{bent, closed, ell, end_fed, end_fed_with_bends, fan, flat, loaded, vee, vertical, view};
+use super::{
+    bent, closed, ell, end_fed, end_fed_low, end_fed_with_bends, fan, flat, loaded, vee, vertical, view,
+};
 use crate::views::yard::grip::Grip;
 use crate::views::yard::layout::{Asking, GRIP_PX, Layout, Type};
 use crate::views::yard::model::Model;
@@ -21,13 +23,14 @@ fn measure(text: &str, size: Type) -> Vec2 {
     vec2(0.52 * em * text.chars().count() as f32, 1.2 * em)
 }
 
-fn plans() -> [(&'static str, Plan); 10] {
+fn plans() -> [(&'static str, Plan); 11] {
     [
         ("flat", flat()),
         ("vee", vee()),
         ("bent", bent()),
         ("end-fed", end_fed()),
         ("end-fed with bends", end_fed_with_bends()),
+        ("end-fed close to the earth", end_fed_low()),
         ("fan", fan()),
         ("ell", ell()),
         ("closed", closed()),
@@ -62,6 +65,7 @@ fn texts_never_overlap() {
         for (n, a) in layout.texts.iter().enumerate() {
             assert!(layout.view.frame.contains_rect(a.rect), "{what}: {a:?} is cut");
             assert!(!a.rect.intersects(layout.buttons), "{what}: {a:?} under the buttons");
+            assert!(!a.rect.intersects(layout.soil), "{what}: {a:?} under the soil's pick list");
             for b in &layout.texts[n + 1..] {
                 assert!(!a.rect.intersects(b.rect), "{what}: {a:?} over {b:?}");
             }
@@ -87,6 +91,7 @@ fn grips_stand_apart_and_in_view() {
         let handles: Vec<_> = layout.handles.iter().filter(|h| !h.grip.is_new_point()).collect();
         for (n, a) in handles.iter().enumerate() {
             assert!(layout.view.frame.contains(a.at), "{what}: {} is out of view", a.name);
+            assert!(!layout.soil.contains(a.at), "{what}: {} is under the soil's pick list", a.name);
             for b in &handles[n + 1..] {
                 assert!(a.at.distance(b.at) > 1.5 * GRIP_PX, "{what}: {} on {}", a.name, b.name);
             }

@@ -99,6 +99,14 @@ pub fn end_fed_with_bends() -> Plan {
     plan
 }
 
+/// 80 m fed at an end that hangs down at a mast to a metre over the earth, the entrance beside it.
+pub fn end_fed_low() -> Plan {
+    let mut plan = end_fed();
+    plan.wires[0].start_m = -9.0;
+    plan.site.entrance = Point::new(0.5, -2.0, 1.2);
+    plan
+}
+
 fn free(x_m: f64, z_m: f64) -> PathPoint {
     PathPoint::Free(Point::new(x_m, 0.0, z_m))
 }
