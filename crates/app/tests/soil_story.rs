@@ -19,15 +19,19 @@ fn soil(window: &Window) -> String {
 fn watts(window: &Window, band: &str) -> (f64, f64) {
     let lane = window.lane(band);
     let before = |words: &str| {
-        let text = lane.split(words).next().unwrap().trim_end().trim_end_matches(" W");
-        text.rsplit(' ').next().unwrap().parse().unwrap_or_else(|_| panic!("no watts in {lane}"))
+        let text = lane.split(words).next().unwrap_or_default().trim_end().trim_end_matches(" W");
+        text.rsplit(' ').next().unwrap_or_default().parse().unwrap_or_else(|_| panic!("no watts in {lane}"))
     };
     (before("of them to the sky"), before("into the earth"))
 }
 
 /// What the first feed path reads out.
 fn path(window: &Window) -> String {
-    window.harness.get_by_role_and_label(Role::Button, "feed A open line").value().unwrap()
+    window
+        .harness
+        .get_by_role_and_label(Role::Button, "feed A open line")
+        .value()
+        .expect("the feed says its watts")
 }
 
 #[test]
