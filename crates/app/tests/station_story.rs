@@ -5,7 +5,7 @@ mod common;
 use app::command::{Command, Show, View};
 use app::start;
 use common::Window;
-use eframe::egui::Key;
+use eframe::egui::{Key, Modifiers};
 use station::file;
 use station::plan::{BandRange, Earth};
 
@@ -83,6 +83,31 @@ fn the_earth_is_picked_by_what_one_sees() {
     window.settle();
     window.command(Command::Show(Show::View(View::Yard)));
     assert_ne!(window.lane("80 m"), before);
+}
+
+#[test]
+fn the_user_s_own_soil_is_typed() {
+    let mut window = open();
+    window.click("earth");
+    window.click("own figures");
+    let Earth::Own(begun) = window.plan().site.earth else { panic!("{:?}", window.plan().site.earth) };
+    assert!(begun.conductivity_s_per_m > 0.0);
+    window.type_into("relative permittivity", "22");
+    window.key(Modifiers::NONE, Key::Tab);
+    window.type_into("conductivity", "31.5");
+    window.key(Modifiers::NONE, Key::Tab);
+    let Earth::Own(soil) = window.plan().site.earth else { panic!("{:?}", window.plan().site.earth) };
+    assert!(
+        (soil.relative_permittivity - 22.0).abs() < 1e-9 && (soil.conductivity_s_per_m - 0.0315).abs() < 1e-9
+    );
+    // Out of the field, which has an undo of its own.
+    window.command(Command::Show(Show::View(View::Yard)));
+    window.settle();
+    window.ctrl(Key::Z);
+    assert_eq!(
+        window.plan().site.earth,
+        Earth::Own(station::plan::Soil { relative_permittivity: 22.0, ..begun })
+    );
 }
 
 #[test]

@@ -2,6 +2,8 @@
 
 use std::mem::Discriminant;
 
+use station::plan::Earth;
+
 use crate::command::Edit;
 
 /// What an edit takes hold of: edits of one handle in a row are one step of undo until the hand lets go.
@@ -29,6 +31,7 @@ impl Handle {
             Edit::RenameFeed { feed, .. } => (*feed, 0),
             Edit::RenameSupport { support, .. } => (*support, 0),
             Edit::FeedFraction(_)
+            | Edit::Earth(Earth::Own(_))
             | Edit::Entrance(_)
             | Edit::Transmitter(_)
             | Edit::Bands(_)

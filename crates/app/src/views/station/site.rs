@@ -49,6 +49,7 @@ pub(super) fn earth_and_entrance(ui: &mut Ui, snapshot: &Snapshot<'_>, out: &mut
         let label = ui.label("earth").id;
         soil::picker(ui, "earth", &snapshot.plan.site.earth, out).labelled_by(label);
         ui.end_row();
+        soil::own_figures(ui, &snapshot.plan.site.earth, out);
         entrance(ui, snapshot, out);
     });
 }
